@@ -1,5 +1,5 @@
-import type { Gas } from './gases/gas.ts';
 import type { PlanarGap } from './gap/geometry.ts';
+import type { Gas } from './gases/gas.ts';
 import type { SupplySettings } from './supply/settings.ts';
 import type { Surface } from './surfaces/surface.ts';
 
