@@ -1,0 +1,7 @@
+import { argon } from './argon.ts';
+import type { GasData } from './gas.ts';
+
+/** The built-in gases by the name a case uses. A new gas is one file and one line here. */
+export const gases: Readonly<Record<string, GasData>> = {
+  argon,
+};
