@@ -5,7 +5,7 @@ import { type SteadyGap, steadyAtCurrent, steadyOnLoadLine, voltageCurrentCurve 
 const load = { supplyVoltage: openCase.supplyVoltage, resistance: openCase.seriesResistance };
 const withoutDiffusion: SteadyGap = { ...openCase, electronEnergy: 0, ionEnergy: 0 };
 
-/** Independent of the collocation: D = 0, classical Runge-Kutta from the cathode, its field found by bisection on Γ_e(d) = Γ.
+/** Independent of the collocation: D = 0, classical Runge-Kutta from the cathode, its field found by bisection, to the last bit, on Γ_e(d) = Γ.
  *  A stronger cathode field multiplies more, so the flux at the anode tells which way to go. */
 function byShooting(gap: typeof openCase, current: number, steps: number): { voltage: number; cathodeField: number } {
   const flux = current / (ELEMENTARY_CHARGE * gap.area);
@@ -33,7 +33,7 @@ function byShooting(gap: typeof openCase, current: number, steps: number): { vol
     return { electrons, voltage };
   };
   let [low, high] = [1e4, 1e6];
-  for (let i = 0; i < 50; i++) {
+  for (let i = 0; i < 60; i++) {
     const middle = Math.sqrt(low * high);
     if (march(middle).electrons < flux) low = middle;
     else high = middle;
