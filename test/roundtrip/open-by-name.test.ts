@@ -5,7 +5,8 @@ import { fileURLToPath } from 'node:url';
 import { describe, expect, test } from 'vitest';
 import { fieldVariables, scalarVariables } from '../../src/results/variables.ts';
 import { openRunFile } from '../../src/results/write.ts';
-import { cellCentres, documents, folder, snapshot } from './sample.ts';
+import { folder } from './folder.ts';
+import { cellCentres, documents, snapshot } from './snapshots.ts';
 
 /** Debian's own Python has the packages; another may come first on the path. */
 const python = existsSync('/usr/bin/python3') ? '/usr/bin/python3' : 'python3';

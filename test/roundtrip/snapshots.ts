@@ -1,16 +1,5 @@
-import { mkdtempSync, rmSync } from 'node:fs';
-import { tmpdir } from 'node:os';
-import { join } from 'node:path';
-import { onTestFinished } from 'vitest';
 import type { Snapshot } from '../../src/results/variables.ts';
 import type { RunDocuments } from '../../src/results/write.ts';
-
-/** An empty folder that goes when the test ends. */
-export function folder(): string {
-  const path = mkdtempSync(join(tmpdir(), 'gapwake-results-'));
-  onTestFinished(() => rmSync(path, { recursive: true, force: true }));
-  return path;
-}
 
 export const documents: RunDocuments = {
   title: 'Prüfling at 1.2 Torr',
