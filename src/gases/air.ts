@@ -55,7 +55,8 @@ export const air: GasData = {
       note:
         'Morrow and Lowke fitted streamers in dense air; at the 1000 Td and more of the Paschen minimum their α is 35 % below Raizer’s, and the minimum would ' +
         'come out 40 % above the measured 327 V, which is unsafe. So Raizer’s constants take over where the two cross, at 466 Td. The joint at 150 Td has a ' +
-        'step of 0.3 %; both joints are smoothed over 10 % of the field. At 300 Td Raizer’s α is a third lower than the one used here. ' +
+        'step of 0.3 %; both joints are smoothed over 10 % of the field. At 300 Td Raizer’s α is a third lower than the one used here; a third source, Badaloni and Gallimberti ' +
+        '(1972, from memory, M), lies between −4 and +25 % of it from 150 to 730 Td. ' +
         'Raizer’s pressure taken at 20 °C; at 0 °C its α/N and B would be 7 % smaller.',
     },
     // η/N = 6.089e-4 x − 2.893e-19 cm² below 1.05e-15 V cm², 8.889e-5 x + 2.567e-19 above, x = E/N in V cm²
@@ -75,7 +76,7 @@ export const air: GasData = {
       note:
         'Zero below 48 Td. The pieces meet within 1e-4; the slope is smoothed over 5 % of the field. Three-body attachment (∝ N²) is left out: at low pressure it is ' +
         'small, and leaving attachment out lowers V_s, which is safe. Detachment is left out too: that raises V_s, which is unsafe, but above 500 Td ' +
-        'attachment is below 2 % of ionisation; the doubt is largest near 120 Td, at large pd. The fit keeps growing with the field where real attachment falls, still below 1 % of α.',
+        'attachment is below 2 % of ionisation; the doubt is largest near 120 Td, at large pd. The fit keeps growing with the field where real attachment falls: below 1 % of α from 1000 to 2000 Td, 20 % at 1e5 Td.',
     },
     electronMobility: {
       form: {

@@ -61,8 +61,8 @@ export const argon: GasData = {
       status: 'from memory (H)',
       uncertainty: 0.1,
       note:
-        'K0 = 1.49 cm²/(V s) at zero field; measurements give 1.53 to 1.63. Within 10 % of the values of Ellis et al. ' +
-        '(At. Data Nucl. Data Tables 17, 177, 1976) from 10 to 1000 Td.',
+        'K0 = 1.49 cm²/(V s) at zero field; measurements give 1.53 to 1.63. Within 4 % of the values of Ellis et al. ' +
+        '(At. Data Nucl. Data Tables 17, 177, 1976; from memory, M) from 10 to 1000 Td.',
     },
     ionEnergy: thermalIonEnergy,
     negativeIonMobility: null,

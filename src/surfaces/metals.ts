@@ -30,10 +30,10 @@ const argon: IonYield = {
 const nitrogen: IonYield = {
   typical: 0.03,
   low: 1e-3,
-  high: 0.1,
+  high: 0.15,
   source:
     'gives, with the α of nitrogen here, the minimum of 275 V for nitrogen on iron (von Engel, Ionized Gases, 1965); low: DeBitetto and Fisher, 1956, nickel near 40 V/(cm Torr); ' +
-    'high: potential emission of N2+ on clean metal, 0.032 (0.78 E_i − 2 φ)',
+    'high: normal cathode falls in nitrogen (180 V on aluminium) by the relation of von Engel and Steenbeck; potential emission on clean metal gives 0.10',
   status: 'from memory (M)',
   uncertainty: null,
 };
