@@ -1,0 +1,198 @@
+import type { Case } from '../case.ts';
+import { curveOf } from '../gases/curves.ts';
+import { BOLTZMANN, ELEMENTARY_CHARGE, TOWNSEND } from '../units/constants.ts';
+import { threshold } from './breakdown-voltage.ts';
+import { layerCurrentDensity, normalCathodeLayer } from './cathode-fall.ts';
+import { breakdownProbability, meanStatisticalLag } from './chance.ts';
+import { growthRate, ionDelay } from './growth-rate.ts';
+import { lowCurrentSlope } from './low-current-slope.ts';
+import { type Multiplication, uniformFeedback } from './multiplication.ts';
+import { lowestOverPaths, paschenMinimum } from './paschen.ts';
+import { emissionThatDistorts, riseTime } from './rise-time.ts';
+import { steadyAmplification } from './steady-current.ts';
+import { streamerIntegral } from './streamer.ts';
+import { driftSpeed, transitTime } from './transit.ts';
+
+/** The `theory` block of an outcome: closed forms of the space-charge-free gap at one voltage. SI, unit in the key. */
+export interface Theory {
+  /** V_s for the polarity of the voltage; null when none exists up to 1e4 Td */
+  readonly static_breakdown_voltage_V: number | null;
+  /** where the feedback falls back below 1 above V_s */
+  readonly upper_breakdown_voltage_V: number | null;
+  /** lowest V_s of the paths from the spacing to the longest path, at the same density */
+  readonly lowest_over_paths_V: number | null;
+  readonly paschen_minimum_V: number | null;
+  readonly paschen_minimum_pd_Pa_m: number | null;
+  /** |V|/V_s − 1 */
+  readonly overvoltage: number | null;
+  readonly pd_Pa_m: number;
+  readonly reduced_field_Td: number;
+  readonly alpha_d: number;
+  /** q */
+  readonly feedback: number;
+  /** exact for negligible diffusion; null where nothing feeds back */
+  readonly growth_rate_per_s: number | null;
+  /** I/I₀; null at and above threshold */
+  readonly steady_amplification: number | null;
+}
+
+/** What else theory says of a case at one voltage; SI. */
+export interface Prospects {
+  /** E/N at V_s [V m²] */
+  readonly breakdownReducedField: number | null;
+  /** the path that breaks down at the lowest voltage [m] */
+  readonly lowestPath: number | null;
+  /** E/N at the Paschen minimum [V m²] */
+  readonly minimumReducedField: number | null;
+  /** [s]; null without a field */
+  readonly electronTransit: number | null;
+  readonly ionTransit: number | null;
+  /** that one electron from the cathode leads to breakdown */
+  readonly breakdownProbability: number;
+  /** [s]; null when no seed or no chance */
+  readonly meanStatisticalLag: number | null;
+  /** ∫(α − η) dx */
+  readonly streamerIntegral: number;
+  /** [s] from a sudden step to a cathode field changed by a tenth, grown from the seed current; null at or below threshold or unseeded */
+  readonly timeToSpaceCharge: number | null;
+  readonly lowCurrentSlope: 'falls' | 'rises' | null;
+  readonly normalCathodeFall: {
+    /** [V] */
+    readonly voltage: number;
+    /** [m] */
+    readonly thickness: number;
+    /** [V/m] */
+    readonly cathodeField: number;
+    /** [A/m²] */
+    readonly currentDensity: number;
+  } | null;
+}
+
+/** What multiplies charge in this case, in front of the wall that is the cathode at this polarity (positive: the left one). */
+export function multiplicationOf(settings: Case, polarity: number): Multiplication {
+  const { ionisation, attachment } = settings.gas.coefficients;
+  const alpha = curveOf(ionisation.form);
+  const eta = attachment === null ? null : curveOf(attachment.form);
+  const cathode = polarity < 0 ? settings.electrodes.right : settings.electrodes.left;
+  const ionYield = cathode.ionYield.typical;
+  return {
+    ionisation: (x) => alpha.valueAt(x),
+    attachment: (x) => (eta === null ? 0 : eta.valueAt(x)),
+    ionYield: () => ionYield,
+  };
+}
+
+/** The feedback q of the space-charge-free gap as a function of its voltage [V], for either polarity. */
+export function feedbackOf(settings: Case): (voltage: number) => number {
+  const { density } = settings.gas;
+  const { spacing } = settings.gap;
+  const column = density * spacing;
+  const [positive, negative] = [multiplicationOf(settings, 1), multiplicationOf(settings, -1)];
+  return (voltage) => uniformFeedback(voltage < 0 ? negative : positive, Math.abs(voltage) / column, column);
+}
+
+/** The `theory` block of the outcome.
+ *  @param voltage  [V]; its sign sets the polarity, positive makes the left electrode the cathode */
+export function predict(settings: Case, voltage: number): Theory {
+  const { gap, gas } = settings;
+  const here = localState(settings, voltage);
+  const limits = threshold(here.multiplication, gas.density, gap.spacing);
+  const minimum = paschenMinimum(here.multiplication);
+  return {
+    static_breakdown_voltage_V: limits.breakdown,
+    upper_breakdown_voltage_V: limits.upper,
+    lowest_over_paths_V: lowestOverPaths(here.multiplication, gas.density, gap.spacing, gap.longestPath)?.voltage ?? null,
+    paschen_minimum_V: minimum?.voltage ?? null,
+    paschen_minimum_pd_Pa_m: minimum === null ? null : minimum.column * BOLTZMANN * gas.temperature,
+    overvoltage: limits.breakdown === null ? null : Math.abs(voltage) / limits.breakdown - 1,
+    pd_Pa_m: gas.pressure * gap.spacing,
+    reduced_field_Td: here.reducedField / TOWNSEND,
+    alpha_d: here.alpha * gap.spacing,
+    feedback: here.feedback,
+    growth_rate_per_s: here.growthRate,
+    steady_amplification: steadyAmplification(here.alpha, here.eta, gap.spacing, here.ionYield),
+  };
+}
+
+/** What else theory says of a case at one voltage, for `check` to print. */
+export function prospects(settings: Case, voltage: number): Prospects {
+  const { gap, gas, seed } = settings;
+  const here = localState(settings, voltage);
+  const { multiplication, ionSpeed, electronSpeed } = here;
+  const breakdown = threshold(multiplication, gas.density, gap.spacing).breakdown;
+  const breakdownReducedField = breakdown === null ? null : breakdown / (gas.density * gap.spacing);
+  const probability = breakdownProbability(here.feedback);
+  return {
+    breakdownReducedField,
+    lowestPath: lowestOverPaths(multiplication, gas.density, gap.spacing, gap.longestPath)?.path ?? null,
+    minimumReducedField: paschenMinimum(multiplication)?.reducedField ?? null,
+    electronTransit: electronSpeed > 0 ? transitTime(gap.spacing, electronSpeed) : null,
+    ionTransit: ionSpeed > 0 ? transitTime(gap.spacing, ionSpeed) : null,
+    breakdownProbability: probability,
+    meanStatisticalLag: meanStatisticalLag(seed.cathodeCurrent / ELEMENTARY_CHARGE, probability),
+    streamerIntegral: streamerIntegral(here.alpha, here.eta, gap.spacing),
+    timeToSpaceCharge: timeToSpaceCharge(settings, here),
+    lowCurrentSlope: breakdownReducedField === null ? null : lowCurrentSlope(multiplication.ionisation, breakdownReducedField),
+    normalCathodeFall: normalFall(settings, here),
+  };
+}
+
+/** coefficients in the uniform field of one voltage */
+interface LocalState {
+  readonly multiplication: Multiplication;
+  readonly reducedField: number;
+  readonly alpha: number;
+  readonly eta: number;
+  readonly ionYield: number;
+  readonly electronSpeed: number;
+  readonly ionSpeed: number;
+  readonly feedback: number;
+  readonly growthRate: number | null;
+}
+
+function localState(settings: Case, voltage: number): LocalState {
+  const { gap, gas } = settings;
+  const multiplication = multiplicationOf(settings, voltage);
+  const column = gas.density * gap.spacing;
+  const reducedField = Math.abs(voltage) / column;
+  const alpha = gas.density * multiplication.ionisation(reducedField);
+  const eta = gas.density * multiplication.attachment(reducedField);
+  const ionYield = multiplication.ionYield(reducedField);
+  const electronSpeed = driftSpeed(curveOf(gas.coefficients.electronMobility.form).valueAt(reducedField), reducedField);
+  const ionSpeed = driftSpeed(curveOf(gas.coefficients.ionMobility.form).valueAt(reducedField), reducedField);
+  return {
+    multiplication,
+    reducedField,
+    alpha,
+    eta,
+    ionYield,
+    electronSpeed,
+    ionSpeed,
+    feedback: uniformFeedback(multiplication, reducedField, column),
+    growthRate: growthRate(alpha, eta, gap.spacing, [{ yield: ionYield, delay: ionDelay(electronSpeed, ionSpeed) }]),
+  };
+}
+
+function timeToSpaceCharge(settings: Case, here: LocalState): number | null {
+  const { gap, gas, seed } = settings;
+  const { alpha, eta, electronSpeed, ionSpeed } = here;
+  if (here.growthRate === null || !(here.growthRate > 0) || !(seed.cathodeCurrent > 0)) return null;
+  const tenth = 0.1 * here.reducedField * gas.density;
+  const emission = emissionThatDistorts(alpha, eta, gap.spacing, electronSpeed, ionSpeed, here.growthRate, tenth);
+  const ratio = (emission * gap.area) / seed.cathodeCurrent;
+  return riseTime(alpha, eta, gap.spacing, [{ yield: here.ionYield, delay: ionDelay(electronSpeed, ionSpeed) }], ratio);
+}
+
+function normalFall(settings: Case, here: LocalState): Prospects['normalCathodeFall'] {
+  const { gas } = settings;
+  const layer = normalCathodeLayer(here.multiplication.ionisation, here.ionYield);
+  if (layer === null) return null;
+  const x = layer.cathodeReducedField;
+  const ionSpeed = driftSpeed(curveOf(gas.coefficients.ionMobility.form).valueAt(x), x);
+  return {
+    voltage: layer.voltage,
+    thickness: layer.column / gas.density,
+    cathodeField: x * gas.density,
+    currentDensity: layerCurrentDensity(layer, here.ionYield, gas.density, ionSpeed),
+  };
+}
