@@ -1,0 +1,363 @@
+import type { Grid } from '../gap/grid.ts';
+import type { Layout } from '../gap/layout.ts';
+import type { Curve } from '../gases/curves.ts';
+import { ELEMENTARY_CHARGE } from '../units/constants.ts';
+import { fluxAtFaces, linearFluxAtFaces, makeStencils, type Stencils } from './drift-diffusion.ts';
+import { emissionShare, emissionShareSlope } from './emission.ts';
+import { cellFactor } from './production.ts';
+
+/** One kind of charge carrier. Order everywhere: electrons, positive ions, negative ions. */
+export interface Species {
+  readonly name: 'electrons' | 'positive ions' | 'negative ions';
+  readonly charge: 1 | -1;
+  /** μN [1/(m V s)] and D/μ [V] against E/N */
+  readonly mobility: Curve;
+  readonly energy: Curve;
+}
+
+/** Everything the gas and the walls contribute, ready for evaluation. */
+export interface GapLaws {
+  readonly species: readonly Species[];
+  /** α/N [m²] */
+  readonly ionisation: Curve;
+  /** η/N [m²] */
+  readonly attachment: Curve | null;
+  /** β [m³/s] */
+  readonly electronIonRecombination: number;
+  readonly ionIonRecombination: number;
+  /** N [1/m³] */
+  readonly density: number;
+  readonly leftYield: number;
+  readonly rightYield: number;
+  /** seed electrons that leave the cathode [1/(m² s)] */
+  readonly seedFlux: number;
+}
+
+/** μ [m²/(V s)] and D [m²/s] of one species at the faces, and their derivatives by E. */
+interface FaceCoefficients {
+  readonly mobility: Float64Array;
+  readonly mobilitySlope: Float64Array;
+  readonly diffusion: Float64Array;
+  readonly diffusionSlope: Float64Array;
+}
+
+/** Everything evaluated at the faces for one state. Arrays have cells + 1 entries. */
+export interface FaceValues {
+  /** E/N [V m²] */
+  readonly reducedField: Float64Array;
+  /** α, η [1/m] */
+  readonly alpha: Float64Array;
+  readonly eta: Float64Array;
+  readonly coefficients: readonly FaceCoefficients[];
+  /** Γ of each species [1/(m² s)] */
+  readonly flux: readonly Float64Array[];
+  /** share of the wall's ion flux that leaves as electrons, −∂Γ_e/∂Γ_i, at the left and right wall */
+  emissionLeft: number;
+  emissionRight: number;
+  /** seed electrons leaving the left and right wall [1/(m² s)] */
+  seedLeft: number;
+  seedRight: number;
+}
+
+/** The continuity equations of all species in one gap, discretised in space, and their exact derivatives.
+ *
+ *  ∂n/∂t + ∂Γ/∂x = source, with the drift–diffusion flux, ionisation and attachment in flux form, recombination, emission
+ *  at both walls. Nothing is allocated after construction. */
+export class GapEquations {
+  readonly grid: Grid;
+  readonly layout: Layout;
+  readonly laws: GapLaws;
+  readonly charges: readonly number[];
+  readonly #stencils: Stencils;
+  readonly #energy: Float64Array;
+  readonly #energySlope: Float64Array;
+  /** values at the state last linearised, and at the one last given to `rates` */
+  readonly at: FaceValues;
+  readonly #stage: FaceValues;
+  /** dα/dE, dη/dE [1/V] */
+  readonly alphaSlope: Float64Array;
+  readonly etaSlope: Float64Array;
+  /** ∂Γ/∂n of cells f−2 … f+1 at [4f …], and ∂Γ/∂E, at the state last linearised */
+  readonly byDensity: readonly Float64Array[];
+  readonly byField: readonly Float64Array[];
+  /** does the field last linearised point one way everywhere (+1, −1), or not (0)? */
+  direction = 0;
+
+  constructor(grid: Grid, layout: Layout, laws: GapLaws) {
+    this.grid = grid;
+    this.layout = layout;
+    this.laws = laws;
+    this.charges = laws.species.map((s) => s.charge);
+    this.#stencils = makeStencils(grid);
+    const array = (): Float64Array => new Float64Array(grid.cells + 1);
+    this.#energy = array();
+    this.#energySlope = array();
+    this.at = faceValues(grid.cells + 1, laws);
+    this.#stage = faceValues(grid.cells + 1, laws);
+    this.alphaSlope = array();
+    this.etaSlope = array();
+    this.byDensity = laws.species.map(() => new Float64Array(4 * (grid.cells + 1)));
+    this.byField = laws.species.map(array);
+  }
+
+  /** dn/dt of every species into `out`, from the densities and field in y. @returns the conduction current [A] */
+  rates(y: Float64Array, out: Float64Array): number {
+    const v = this.#stage;
+    this.#coefficients(y, v);
+    const { first, row, field } = this.layout;
+    for (let k = 0; k < this.charges.length; k++) {
+      const c = v.coefficients[k];
+      fluxAtFaces(this.#stencils, this.charges[k], y, k * row + first, y, field, c.mobility, c.diffusion, v.flux[k]);
+    }
+    this.#emit(y, v);
+    this.#sources(y, v, out);
+    return this.conductionCurrent(v);
+  }
+
+  /** As `rates`, and leaves the values in `at` and every derivative in the public arrays. */
+  linearise(y: Float64Array, out: Float64Array): number {
+    const v = this.at;
+    this.#coefficientsWithSlopes(y, v);
+    const { first, row, field } = this.layout;
+    for (let k = 0; k < this.charges.length; k++) {
+      const c = v.coefficients[k];
+      linearFluxAtFaces(
+        this.#stencils,
+        this.charges[k],
+        y,
+        k * row + first,
+        y,
+        field,
+        c.mobility,
+        c.mobilitySlope,
+        c.diffusion,
+        c.diffusionSlope,
+        v.flux[k],
+        this.byDensity[k],
+        this.byField[k],
+      );
+    }
+    this.#emitWithSlopes(y, v);
+    this.#sources(y, v, out);
+    return this.conductionCurrent(v);
+  }
+
+  /** I = (e/d) ∫ A (Γ_e + Γ_− − Γ_+) dx [A], by Shockley and Ramo. */
+  conductionCurrent(v: FaceValues = this.at): number {
+    const { faceWeights, area, spacing, cells } = this.grid;
+    let sum = 0;
+    for (let k = 0; k < this.charges.length; k++) {
+      const flux = v.flux[k];
+      let s = 0;
+      for (let f = 0; f <= cells; f++) s += faceWeights[f] * flux[f];
+      sum -= this.charges[k] * s;
+    }
+    return (ELEMENTARY_CHARGE * area * sum) / spacing;
+  }
+
+  /** Σ q Γ [1/(m² s)] at face f of the state last given to `rates` or `linearise`. */
+  netFlux(f: number, linearised: boolean): number {
+    const flux = linearised ? this.at.flux : this.#stage.flux;
+    let sum = 0;
+    for (let k = 0; k < this.charges.length; k++) sum += this.charges[k] * flux[k][f];
+    return sum;
+  }
+
+  #reduce(y: Float64Array, x: Float64Array): void {
+    const { field, cells } = this.layout;
+    const perDensity = 1 / this.laws.density;
+    for (let f = 0; f <= cells; f++) x[f] = Math.abs(y[field + f]) * perDensity;
+  }
+
+  #coefficients(y: Float64Array, v: FaceValues): void {
+    const x = v.reducedField;
+    this.#reduce(y, x);
+    const faces = this.layout.cells + 1;
+    const N = this.laws.density;
+    this.laws.ionisation.fill(x, faces, v.alpha);
+    scale(v.alpha, faces, N);
+    if (this.laws.attachment) {
+      this.laws.attachment.fill(x, faces, v.eta);
+      scale(v.eta, faces, N);
+    }
+    for (let k = 0; k < this.charges.length; k++) {
+      const s = this.laws.species[k];
+      const c = v.coefficients[k];
+      if (s.mobility.constant && s.energy.constant) continue; // filled once, at construction
+      s.mobility.fill(x, faces, c.mobility);
+      scale(c.mobility, faces, 1 / N);
+      s.energy.fill(x, faces, c.diffusion);
+      multiply(c.diffusion, c.mobility, faces);
+    }
+  }
+
+  #coefficientsWithSlopes(y: Float64Array, v: FaceValues): void {
+    const x = v.reducedField;
+    this.#reduce(y, x);
+    const { field, cells } = this.layout;
+    const faces = cells + 1;
+    const N = this.laws.density;
+    let forward = 0;
+    for (let f = 0; f < faces; f++) if (y[field + f] > 0) forward++;
+    this.direction = forward === 0 ? -1 : forward === faces ? 1 : 0;
+    this.laws.ionisation.fillWithSlope(x, faces, v.alpha, this.alphaSlope);
+    scale(v.alpha, faces, N);
+    signed(this.alphaSlope, y, field, faces, 1);
+    if (this.laws.attachment) {
+      this.laws.attachment.fillWithSlope(x, faces, v.eta, this.etaSlope);
+      scale(v.eta, faces, N);
+      signed(this.etaSlope, y, field, faces, 1);
+    }
+    for (let k = 0; k < this.charges.length; k++) {
+      const s = this.laws.species[k];
+      if (s.mobility.constant && s.energy.constant) continue;
+      const c = v.coefficients[k];
+      s.mobility.fillWithSlope(x, faces, c.mobility, c.mobilitySlope);
+      scale(c.mobility, faces, 1 / N);
+      signed(c.mobilitySlope, y, field, faces, 1 / (N * N));
+      s.energy.fillWithSlope(x, faces, this.#energy, this.#energySlope);
+      signed(this.#energySlope, y, field, faces, 1 / N);
+      for (let f = 0; f < faces; f++) {
+        c.diffusion[f] = c.mobility[f] * this.#energy[f];
+        c.diffusionSlope[f] = c.mobilitySlope[f] * this.#energy[f] + c.mobility[f] * this.#energySlope[f];
+      }
+    }
+  }
+
+  /** Emission of both walls: γ × the ions that arrive, and the seed of the wall that draws electrons off. */
+  #emit(y: Float64Array, v: FaceValues): void {
+    const { field, cells } = this.layout;
+    const { density, leftYield, rightYield, seedFlux } = this.laws;
+    const leftShare = emissionShare(-y[field] / density);
+    v.emissionLeft = leftYield * leftShare;
+    v.seedLeft = seedFlux * leftShare;
+    v.flux[0][0] += v.seedLeft - v.emissionLeft * v.flux[1][0];
+    const rightShare = emissionShare(y[field + cells] / density);
+    v.emissionRight = rightYield * rightShare;
+    v.seedRight = seedFlux * rightShare;
+    v.flux[0][cells] -= v.seedRight + v.emissionRight * v.flux[1][cells];
+  }
+
+  #emitWithSlopes(y: Float64Array, v: FaceValues): void {
+    this.#emit(y, v);
+    const { field, cells } = this.layout;
+    const { density, leftYield, rightYield, seedFlux } = this.laws;
+    const ions = v.flux[1];
+    const left = -emissionShareSlope(-y[field] / density) / density;
+    this.byField[0][0] += (seedFlux - leftYield * ions[0]) * left - v.emissionLeft * this.byField[1][0];
+    const right = emissionShareSlope(y[field + cells] / density) / density;
+    this.byField[0][cells] -= (seedFlux + rightYield * ions[cells]) * right + v.emissionRight * this.byField[1][cells];
+  }
+
+  #sources(y: Float64Array, v: FaceValues, out: Float64Array): void {
+    const { row, first } = this.layout;
+    if (this.charges.length === 2 && !this.laws.attachment) {
+      ionisedRates(this.grid.widths, v.alpha, v.flux[0], v.flux[1], out, first, row + first);
+    } else {
+      attachedRates(this.grid.widths, v.alpha, v.eta, v.flux, out, first, row);
+    }
+    const ei = this.laws.electronIonRecombination;
+    if (ei > 0) recombine(ei, y, first, row + first, this.grid.cells, out);
+    const ii = this.laws.ionIonRecombination;
+    if (ii > 0 && this.charges.length > 2) recombine(ii, y, 2 * row + first, row + first, this.grid.cells, out);
+  }
+}
+
+function faceValues(faces: number, laws: GapLaws): FaceValues {
+  const array = (): Float64Array => new Float64Array(faces);
+  const anywhere = array();
+  return {
+    reducedField: array(),
+    alpha: array(),
+    eta: array(),
+    coefficients: laws.species.map((s) => {
+      const c = { mobility: array(), mobilitySlope: array(), diffusion: array(), diffusionSlope: array() };
+      s.mobility.fill(anywhere, faces, c.mobility);
+      scale(c.mobility, faces, 1 / laws.density);
+      s.energy.fill(anywhere, faces, c.diffusion);
+      multiply(c.diffusion, c.mobility, faces);
+      return c;
+    }),
+    flux: laws.species.map(array),
+    emissionLeft: 0,
+    emissionRight: 0,
+    seedLeft: 0,
+    seedRight: 0,
+  };
+}
+
+/** dn/dt of electrons and positive ions from the fluxes and ionisation. */
+function ionisedRates(
+  widths: Float64Array,
+  alpha: Float64Array,
+  electrons: Float64Array,
+  ions: Float64Array,
+  out: Float64Array,
+  first: number,
+  firstIon: number,
+): void {
+  let leftElectrons = electrons[0];
+  let leftIons = ions[0];
+  let leftAlpha = alpha[0];
+  let leftMade = leftAlpha * Math.abs(leftElectrons);
+  for (let i = 0; i < widths.length; i++) {
+    const e = electrons[i + 1];
+    const p = ions[i + 1];
+    const a = alpha[i + 1];
+    const made = a * Math.abs(e);
+    const width = widths[i];
+    const source = 0.5 * cellFactor(0.5 * (leftAlpha + a) * width) * (leftMade + made);
+    const per = 1 / width;
+    out[first + i] = source - (e - leftElectrons) * per;
+    out[firstIon + i] = source - (p - leftIons) * per;
+    leftElectrons = e;
+    leftIons = p;
+    leftAlpha = a;
+    leftMade = made;
+  }
+}
+
+/** The same with attachment, and negative ions as third species if there are any. */
+function attachedRates(
+  widths: Float64Array,
+  alpha: Float64Array,
+  eta: Float64Array,
+  flux: readonly Float64Array[],
+  out: Float64Array,
+  first: number,
+  row: number,
+): void {
+  const electrons = flux[0];
+  for (let i = 0; i < widths.length; i++) {
+    const width = widths[i];
+    const left = Math.abs(electrons[i]);
+    const right = Math.abs(electrons[i + 1]);
+    const half = 0.5 * cellFactor(0.5 * (alpha[i] + alpha[i + 1] - eta[i] - eta[i + 1]) * width);
+    const ionised = half * (alpha[i] * left + alpha[i + 1] * right);
+    const attached = half * (eta[i] * left + eta[i + 1] * right);
+    out[first + i] = ionised - attached - (electrons[i + 1] - electrons[i]) / width;
+    out[row + first + i] = ionised - (flux[1][i + 1] - flux[1][i]) / width;
+    if (flux.length > 2) out[2 * row + first + i] = attached - (flux[2][i + 1] - flux[2][i]) / width;
+  }
+}
+
+function recombine(beta: number, y: Float64Array, one: number, other: number, cells: number, out: Float64Array): void {
+  for (let i = 0; i < cells; i++) {
+    const lost = beta * y[one + i] * y[other + i];
+    out[one + i] -= lost;
+    out[other + i] -= lost;
+  }
+}
+
+function scale(a: Float64Array, n: number, factor: number): void {
+  for (let i = 0; i < n; i++) a[i] *= factor;
+}
+
+function multiply(a: Float64Array, b: Float64Array, n: number): void {
+  for (let i = 0; i < n; i++) a[i] *= b[i];
+}
+
+/** Turns a derivative by |E|/N into one by E: times `factor` and the sign of E. */
+function signed(slope: Float64Array, y: Float64Array, field: number, n: number, factor: number): void {
+  for (let i = 0; i < n; i++) slope[i] *= y[field + i] < 0 ? -factor : factor;
+}

@@ -1,0 +1,158 @@
+import { type Gauss, gaussOf } from '../gap/gauss.ts';
+import type { Grid } from '../gap/grid.ts';
+import type { Layout } from '../gap/layout.ts';
+import type { GapEquations } from '../laws/gap-equations.ts';
+import type { Circuit } from '../supply/circuit.ts';
+import { ELEMENTARY_CHARGE, VACUUM_PERMITTIVITY } from '../units/constants.ts';
+import { LinearSystem } from './linear-system.ts';
+
+/** Gap and circuit as one set of ordinary differential equations y' = f(t, y) in the unknowns of `Layout`.
+ *
+ *  densities: continuity. field at the left wall: ε0 dE/dt = j − e Σ q Γ. voltage: (C_p + C_gap) dV/dt = I_s − I.
+ *  j = −(I + C_gap dV/dt)/A is the total current density along +x, the same at every x; I counts positive when it discharges a
+ *  positive V. The field elsewhere follows by Gauss's
+ *  law; Σ w E = −V is a linear invariant of these equations. */
+export class GapSystem {
+  readonly equations: GapEquations;
+  readonly grid: Grid;
+  readonly layout: Layout;
+  readonly circuit: Circuit;
+  readonly gapCapacitance: number;
+  readonly #linear: LinearSystem;
+  readonly #gauss: Gauss;
+  readonly #capacitance: number;
+  #columnSum = 0;
+  #a = 0;
+  /** slope of the supply over the step that began with the last linearisation [V/s] */
+  #supplySlope = 0;
+  /** conduction current [A], dV/dt [V/s], j [A/m²], supply current [A] of the last evaluation */
+  current = 0;
+  voltageRate = 0;
+  totalCurrentDensity = 0;
+  supplyCurrent = 0;
+
+  constructor(equations: GapEquations, circuit: Circuit) {
+    this.equations = equations;
+    this.grid = equations.grid;
+    this.layout = equations.layout;
+    this.circuit = circuit;
+    this.gapCapacitance = (VACUUM_PERMITTIVITY * this.grid.area) / this.grid.spacing;
+    this.#capacitance = circuit.parallelCapacitance + this.gapCapacitance;
+    this.#linear = new LinearSystem(equations);
+    this.#gauss = gaussOf(this.grid, this.layout, equations.charges);
+  }
+
+  /** C_p + C_gap [F] */
+  get capacitance(): number {
+    return this.#capacitance;
+  }
+
+  /** The field from the densities and the voltage. */
+  settle(y: Float64Array): void {
+    this.#gauss.settle(y);
+  }
+
+  /** f(t, y) for a y whose E(0) obeys the invariant; completes y's field. */
+  rates(t: number, y: Float64Array, out: Float64Array): void {
+    this.#gauss.fillField(y);
+    this.#complete(t, y, out, this.equations.rates(y, out), false);
+  }
+
+  /** As `rates` for a settled y, and prepares `factor`. */
+  linearise(t: number, y: Float64Array, out: Float64Array): void {
+    this.#supplySlope = this.circuit.supplySlope(t);
+    this.#complete(t, y, out, this.equations.linearise(y, out), true);
+  }
+
+  /** Prepares `solve` for a = 1/(hγ) at the state last linearised. @returns the cell that cannot be solved, or −1 */
+  factor(y: Float64Array, a: number): number {
+    this.#a = a;
+    const bad = this.#linear.factor(y, a);
+    if (bad >= 0) return bad;
+    const column = this.#linear.column;
+    column[this.layout.leftField] = this.#linear.fieldAtLeftWall(column, 0, 1);
+    this.#columnSum = this.#gauss.integral(column);
+    return -1;
+  }
+
+  /** U ← (a − J)⁻¹ r. Σ w r_E = −r_V must hold, as it does for rates and their combinations. */
+  solve(r: Float64Array, U: Float64Array): void {
+    const { layout } = this;
+    const { voltage, leftField } = layout;
+    const linear = this.#linear;
+    const { parallelCapacitance, conductance, feed } = this.circuit;
+    const area = this.grid.area;
+    const a = this.#a;
+    linear.solveDensities(r, U);
+    U[leftField] = linear.fieldAtLeftWall(U, r[leftField], 0);
+    const sum = this.#gauss.integral(U);
+    let deltaJ: number;
+    let deltaV: number;
+    if (feed === 'ideal') {
+      deltaV = r[voltage] / a;
+      deltaJ = -(sum + deltaV) / this.#columnSum;
+    } else {
+      const k = (conductance + parallelCapacitance * a) / area;
+      const m = (parallelCapacitance * r[voltage]) / area;
+      deltaV = -(sum - m * this.#columnSum) / (1 + k * this.#columnSum);
+      deltaJ = k * deltaV - m;
+    }
+    addScaled(U, linear.column, deltaJ, leftField + 1);
+    U[voltage] = deltaV;
+    this.#countCharges(r, U, deltaJ, deltaV);
+  }
+
+  /** ∂f/∂t per unit of the supply's slope, only where it is not zero: writes r += factor × ∂f/∂t. */
+  addTimeSlope(r: Float64Array, factor: number): void {
+    if (this.circuit.feed !== 'resistor') return;
+    const slope = this.#supplySlope;
+    if (slope === 0) return;
+    const { layout, grid } = this;
+    const currentRate = (slope * factor) / this.circuit.resistance;
+    const voltageRate = currentRate / this.#capacitance;
+    r[layout.voltage] += voltageRate;
+    r[layout.leftField] -= voltageRate / grid.spacing;
+    r[layout.terminalCharge] += this.gapCapacitance * voltageRate;
+    r[layout.supplyCharge] += currentRate;
+  }
+
+  #complete(t: number, y: Float64Array, out: Float64Array, current: number, linearised: boolean): void {
+    const { layout, grid, circuit, equations } = this;
+    const V = y[layout.voltage];
+    const slope = circuit.feed === 'ideal' ? this.#supplySlope : 0;
+    const supply = circuit.sourceCurrent(t, V, current + this.#capacitance * slope);
+    const rate = circuit.feed === 'ideal' ? slope : (supply - current) / this.#capacitance;
+    const terminal = current + this.gapCapacitance * rate;
+    const j = -terminal / grid.area;
+    this.current = current;
+    this.voltageRate = rate;
+    this.totalCurrentDensity = j;
+    this.supplyCurrent = supply;
+    const left = ELEMENTARY_CHARGE * equations.netFlux(0, linearised);
+    out[layout.leftField] = (j - left) / VACUUM_PERMITTIVITY;
+    out[layout.voltage] = rate;
+    out[layout.terminalCharge] = terminal;
+    out[layout.supplyCharge] = supply;
+    out[layout.leftWallCharge] = grid.area * left;
+    out[layout.rightWallCharge] = ELEMENTARY_CHARGE * grid.area * equations.netFlux(layout.cells, linearised);
+  }
+
+  #countCharges(r: Float64Array, U: Float64Array, deltaJ: number, deltaV: number): void {
+    const { layout, grid, circuit } = this;
+    const per = 1 / this.#a;
+    const terminal = r[layout.terminalCharge] - grid.area * deltaJ;
+    U[layout.terminalCharge] = terminal * per;
+    // an ideal feed delivers what gap and capacitance take; any other answers to the voltage alone
+    U[layout.supplyCharge] =
+      circuit.feed === 'ideal'
+        ? U[layout.terminalCharge] + circuit.parallelCapacitance * deltaV
+        : (r[layout.supplyCharge] - circuit.conductance * deltaV) * per;
+    U[layout.leftWallCharge] = (r[layout.leftWallCharge] + grid.area * this.#linear.netCurrentAtLeftWall(U)) * per;
+    U[layout.rightWallCharge] =
+      (r[layout.rightWallCharge] + grid.area * this.#linear.netCurrentAtRightWall(U, this.#gauss.rightField(U))) * per;
+  }
+}
+
+function addScaled(target: Float64Array, source: Float64Array, factor: number, n: number): void {
+  for (let i = 0; i < n; i++) target[i] += factor * source[i];
+}

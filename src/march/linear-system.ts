@@ -1,0 +1,394 @@
+import type { Layout } from '../gap/layout.ts';
+import type { GapEquations } from '../laws/gap-equations.ts';
+import { cellFactor, cellFactorSlope } from '../laws/production.ts';
+import { BandMatrix } from '../numerics/band.ts';
+import { ELEMENTARY_CHARGE, VACUUM_PERMITTIVITY } from '../units/constants.ts';
+
+/** (a − J) U = r for the densities and the field of one gap, a = 1/(hγ), with the exact Jacobian J of the discrete equations.
+ *
+ *  Instead of Gauss's law, which couples every cell, each face carries the conservation of total current,
+ *  ε0 dE/dt + e Σ q Γ = j (the time derivative of Gauss's law). Its linearised form gives δE at a face from the densities of the
+ *  four cells around it and from δj, one number for the whole gap. δE is eliminated face by face and what is left is a banded
+ *  matrix for the densities alone, bordered by δj, which the circuit supplies (`GapSystem`).
+ *
+ *  Rows and columns: cell by cell, species in an order that keeps the band narrow for the direction of the field. */
+export class LinearSystem {
+  readonly #equations: GapEquations;
+  readonly #tight: BandMatrix;
+  readonly #wide: BandMatrix;
+  #matrix: BandMatrix;
+  /** place of each species within a cell's block, for the field of either direction */
+  readonly #slotsForward: readonly number[];
+  readonly #slotsBackward: readonly number[];
+  #slots: readonly number[];
+  /** 1/(a + σ/ε0) at faces, σ the differential conductivity */
+  readonly #response: Float64Array;
+  /** coefficient of δE in row (species, cell) from the left face at [2i], right face at [2i + 1] */
+  readonly #fieldInRow: readonly Float64Array[];
+  readonly #b: Float64Array;
+  /** answer of all unknowns to δj = 1 */
+  readonly column: Float64Array;
+
+  constructor(equations: GapEquations) {
+    this.#equations = equations;
+    const { cells, species, size } = equations.layout;
+    const rows = cells * species;
+    const wide = 3 * species - 1;
+    this.#tight = species === 2 ? new BandMatrix(rows, 4, 4) : new BandMatrix(rows, wide, wide);
+    this.#wide = species === 2 ? new BandMatrix(rows, wide, wide) : this.#tight;
+    this.#matrix = this.#tight;
+    // electrons drift against the field: with E < 0 their stencils reach left, the ions' reach right
+    this.#slotsBackward = species === 2 ? [1, 0] : [1, 0, 2];
+    this.#slotsForward = species === 2 ? [0, 1] : [1, 2, 0];
+    this.#slots = this.#slotsBackward;
+    this.#response = new Float64Array(cells + 1);
+    this.#fieldInRow = equations.charges.map(() => new Float64Array(2 * cells));
+    this.#b = new Float64Array(rows);
+    this.column = new Float64Array(size);
+  }
+
+  /** Assembles and factors for a = 1/(hγ), from the derivatives that `equations.linearise` left.
+   *  @returns the cell whose pivot is unusable, or −1 */
+  factor(y: Float64Array, a: number): number {
+    const direction = this.#equations.direction;
+    this.#matrix = direction === 0 ? this.#wide : this.#tight;
+    this.#slots = direction > 0 ? this.#slotsForward : this.#slotsBackward;
+    this.#respond(a);
+    this.#assemble(y, a);
+    const bad = this.#matrix.factor();
+    if (bad >= 0) return Math.floor(bad / this.#equations.charges.length);
+    this.#solveColumn();
+    return -1;
+  }
+
+  #respond(a: number): void {
+    const { byField, charges, layout } = this.#equations;
+    const c = ELEMENTARY_CHARGE / VACUUM_PERMITTIVITY;
+    const g = this.#response;
+    for (let f = 0; f <= layout.cells; f++) {
+      let sigma = 0;
+      for (let k = 0; k < charges.length; k++) sigma += charges[k] * byField[k][f];
+      g[f] = 1 / (a + c * sigma);
+    }
+  }
+
+  #assemble(y: Float64Array, a: number): void {
+    const eq = this.#equations;
+    this.#matrix.clear();
+    if (eq.charges.length === 2 && !eq.laws.attachment) assembleTwo(eq, a, this.#response, this.#fieldInRow, this.#slots, this.#matrix);
+    else this.#assembleAny(a);
+    const ei = eq.laws.electronIonRecombination;
+    if (ei > 0) this.#addRecombination(y, 0, 1, ei);
+    const ii = eq.laws.ionIonRecombination;
+    if (ii > 0 && eq.charges.length > 2) this.#addRecombination(y, 2, 1, ii);
+  }
+
+  /** Any number of species, with or without attachment; `assembleTwo` is the same for the common case, twice as fast. */
+  #addRecombination(y, 0, 1, ei);
+    const ii = eq.laws.ionIonRecombination;
+    if (ii > 0 && eq.charges.length > 2) this.#addRecombination(y, 2, 1, ii);
+  }
+
+  /** Any number of species, with or without attachment; `assembleTwo` is the same for the common case, twice as fast. */
+  #assembleAny(a: number): void {
+    const eq = this.#equations;
+    const { cells } = eq.layout;
+    const { widths } = eq.grid;
+    const species = eq.charges.length;
+    const c = ELEMENTARY_CHARGE / VACUUM_PERMITTIVITY;
+    const { entries, stride, lower } = this.#matrix;
+    const byField = eq.byField;
+    const { alpha, eta } = eq.at;
+    const electronFlux = eq.at.flux[0];
+    const B = new Float64Array(species * species);
+    const G = new Float64Array(species);
+    for (let i = 0; i < cells; i++) {
+      const width = widths[i];
+      const z = 0.5 * (eq.alpha[i] + eq.alpha[i + 1] - eq.eta[i] - eq.eta[i + 1]) * width;
+      const half = 0.5 * cellFactor(z);
+      const left = Math.abs(electronFlux[i]);
+      const right = Math.abs(electronFlux[i + 1]);
+      const bend = 0.25 * cellFactorSlope(z) * width;
+      const ionBend = bend * (eq.alpha[i] * left + eq.alpha[i + 1] * right);
+      const attachBend = bend * (eq.eta[i] * left + eq.eta[i + 1] * right);
+      for (let k = 0; k < species; k++) {
+        const diagonal = (species * i + this.#slots[k]) * stride + lower;
+        entries[diagonal] += a;
+      }
+      for (let side = 0; side < 2; side++) {
+        const f = i + side;
+        const s = (side === 0 ? -1 : 1) / width;
+        const sign = electronFlux[f] < 0 ? -1 : 1;
+        const made = half * eq.alpha[f] * sign;
+        const lost = half * eq.eta[f] * sign;
+        const netSlope = eq.alphaSlope[f] - eq.etaSlope[f];
+        const madeByField = half * eq.alphaSlope[f] * Math.abs(electronFlux[f]) + ionBend * netSlope;
+        const lostByField = half * eq.etaSlope[f] * Math.abs(electronFlux[f]) + attachBend * netSlope;
+        B.fill(0);
+        for (let k = 0; k < species; k++) {
+          const fromElectrons = k === 0 ? -made + lost : k === 1 ? -made : -lost;
+          const fromField = k === 0 ? -madeByField + lostByField : k === 1 ? -madeByField : -lostByField;
+          B[k * species + k] += s;
+          B[k * species] += fromElectrons;
+          G[k] = s * byField[k][f] + fromElectrons * byField[0][f] + fromField;
+          const reach = G[k] * this.#response[f];
+          this.#fieldInRow[k][2 * i + side] = reach;
+          for (let m = 0; m < species; m++) B[k * species + m] -= reach * c * eq.charges[m];
+          if (f === 0) B[k * species + 1] -= B[k * species] * emissionLeft;
+          if (f === cells) B[k * species + 1] -= B[k * species] * emissionRight;
+        }
+        for (let k = 0; k < species; k++) {
+          const rowIndex = species * i + this.#slots[k];
+          const diagonal = rowIndex * stride + lower - rowIndex;
+          for (let m = 0; m < species; m++) {
+            const b = B[k * species + m];
+            const p = eq.byDensity[m];
+            for (let j = 0; j < 4; j++) {
+              const cell = f - 2 + j;
+              const v = p[4 * f + j];
+              if (v === 0 || cell < 0 || cell >= cells) continue;
+              entries[diagonal + species * cell + this.#slots[m]] += b * v;
+            }
+          }
+        }
+      }
+    }
+  }
+
+  #addRecombination(y: Float64Array, one: number, other: number, beta: number): void {
+    const { cells, row, first } = this.#equations.layout;
+    const species = this.#equations.charges.length;
+    const { entries, stride, lower } = this.#matrix;
+    const p = this.#slots[one];
+    const q = this.#slots[other];
+    for (let i = 0; i < cells; i++) {
+      const lossOne = beta * y[other * row + first + i];
+      const lossOther = beta * y[one * row + first + i];
+      const rowOne = (species * i + p) * stride + lower;
+      const rowOther = (species * i + q) * stride + lower;
+      entries[rowOne] += lossOne;
+      entries[rowOne + q - p] += lossOther;
+      entries[rowOther] += lossOther;
+      entries[rowOther + p - q] += lossOne;
+    }
+  }
+
+  /** U ← densities for right-hand side r (δj = 0).
+   *  r holds rates of densities and of E(0); that of E elsewhere follows by Gauss's law, which rates obey too. */
+  solveDensities(r: Float64Array, U: Float64Array): void {
+    const { layout, charges, grid } = this.#equations;
+    const { cells, row, first } = layout;
+    const b = this.#b;
+    const species = charges.length;
+    if (species === 2) {
+      gatherTwo(r, layout, grid.widths, this.#fieldInRow[0], this.#fieldInRow[1], b, this.#slots[0], this.#slots[1]);
+    } else {
+      gatherAny(r, layout, grid.widths, charges, this.#fieldInRow, b, this.#slots);
+    }
+    this.#matrix.solve(b);
+    for (let k = 0; k < species; k++) scatter(b, species, this.#slots[k], U, k * row + first, cells);
+  }
+
+  /** δE at the left wall for densities U, field right-hand side rE there and δj [A/m²]. */
+  fieldAtLeftWall(U: Float64Array, rE: number, deltaJ: number): number {
+    const { byDensity, charges, layout } = this.#equations;
+    const { emissionLeft } = this.#equations.at;
+    let net = 0;
+    let ions = 0;
+    for (let k = charges.length - 1; k >= 0; k--) {
+      const p = byDensity[k];
+      const n = k * layout.row + layout.first;
+      let d = p[2] * U[n] + p[3] * U[n + 1];
+      if (k === 1) ions = d;
+      if (k === 0) d -= emissionLeft * ions;
+      net += charges[k] * d;
+    }
+    return this.#response[0] * (rE + (deltaJ - ELEMENTARY_CHARGE * net) / VACUUM_PERMITTIVITY);
+  }
+
+  /** Linear change of e Σ q Γ [A/m²] at the right wall for densities U and field `rightField` there. */
+  netCurrentAtRightWall(U: Float64Array, rightField: number): number {
+    const { byDensity, byField, charges, layout } = this.#equations;
+    const { emissionRight } = this.#equations.at;
+    const f = layout.cells;
+    let net = 0;
+    let ions = 0;
+    for (let k = charges.length - 1; k >= 0; k--) {
+      const p = byDensity[k];
+      const n = k * layout.row + layout.first + f;
+      let d = p[4 * f] * U[n - 2] + p[4 * f + 1] * U[n - 1];
+      if (k === 1) ions = d;
+      if (k === 0) d -= emissionRight * ions;
+      net += charges[k] * (d + byField[k][f] * rightField);
+    }
+    return ELEMENTARY_CHARGE * net;
+  }
+
+  /** The same at the left wall. */
+  netCurrentAtLeftWall(U: Float64Array): number {
+    const { byDensity, byField, charges, layout } = this.#equations;
+    const { emissionLeft } = this.#equations.at;
+    let net = 0;
+    let ions = 0;
+    for (let k = charges.length - 1; k >= 0; k--) {
+      const p = byDensity[k];
+      const n = k * layout.row + layout.first;
+      let d = p[2] * U[n] + p[3] * U[n + 1];
+      if (k === 1) ions = d;
+      if (k === 0) d -= emissionLeft * ions;
+      net += charges[k] * (d + byField[k][0] * U[layout.leftField]);
+    }
+    return ELEMENTARY_CHARGE * net;
+  }
+
+  #solveColumn(): void {
+    const { layout, charges } = this.#equations;
+    const species = charges.length;
+    const b = this.#b;
+    for (let k = 0; k < species; k++) {
+      const reach = this.#fieldInRow[k];
+      const slot = this.#slots[k];
+      for (let i = 0; i < layout.cells; i++) b[species * i + slot] = -(reach[2 * i] + reach[2 * i + 1]) / VACUUM_PERMITTIVITY;
+    }
+    this.#matrix.solve(b);
+    for (let k = 0; k < species; k++) scatter(b, species, this.#slots[k], this.column, k * layout.row + layout.first, layout.cells);
+  }
+}
+
+/** b ← right-hand sides of electrons and ions with the eliminated field taken out. */
+function gatherTwo(
+  r: Float64Array,
+  layout: Layout,
+  widths: Float64Array,
+  reachE: Float64Array,
+  reachI: Float64Array,
+  b: Float64Array,
+  slotE: number,
+  slotI: number,
+): void {
+  const { cells, row, first, leftField } = layout;
+  const c = ELEMENTARY_CHARGE / VACUUM_PERMITTIVITY;
+  let left = r[leftField];
+  for (let i = 0; i < cells; i++) {
+    const e = r[first + i];
+    const p = r[row + first + i];
+    const right = left + c * widths[i] * (p - e);
+    b[2 * i + slotE] = e - reachE[2 * i] * left - reachE[2 * i + 1] * right;
+    b[2 * i + slotI] = p - reachI[2 * i] * left - reachI[2 * i + 1] * right;
+    left = right;
+  }
+}
+
+function gatherAny(
+  r: Float64Array,
+  layout: Layout,
+  widths: Float64Array,
+  charges: readonly number[],
+  reach: readonly Float64Array[],
+  b: Float64Array,
+  slots: readonly number[],
+): void {
+  const { cells, row, first, leftField } = layout;
+  const c = ELEMENTARY_CHARGE / VACUUM_PERMITTIVITY;
+  const species = charges.length;
+  let left = r[leftField];
+  for (let i = 0; i < cells; i++) {
+    let rho = 0;
+    for (let k = 0; k < species; k++) rho += charges[k] * r[k * row + first + i];
+    const right = left + c * widths[i] * rho;
+    for (let k = 0; k < species; k++) {
+      b[species * i + slots[k]] = r[k * row + first + i] - reach[k][2 * i] * left - reach[k][2 * i + 1] * right;
+    }
+    left = right;
+  }
+}
+
+function scatter(b: Float64Array, species: number, slot: number, U: Float64Array, base: number, cells: number): void {
+  for (let i = 0, at = slot; i < cells; i++, at += species) U[base + i] = b[at];
+}
+
+/** The matrix for electrons and one kind of ion without attachment: `#assembleAny` written out. */
+function assembleTwo(
+  eq: GapEquations,
+  a: number,
+  response: Float64Array,
+  fieldInRow: readonly Float64Array[],
+  slots: readonly number[],
+  matrix: BandMatrix,
+): void {
+  const cells = eq.layout.cells;
+  const widths = eq.grid.widths;
+  const c = ELEMENTARY_CHARGE / VACUUM_PERMITTIVITY;
+  const { entries, stride, lower } = matrix;
+  const { alphaSlope, direction } = eq;
+  const { alpha, emissionLeft, emissionRight } = eq.at;
+  const electronFlux = eq.at.flux[0];
+  const pe = eq.byDensity[0];
+  const pi = eq.byDensity[1];
+  const eByField = eq.byField[0];
+  const iByField = eq.byField[1];
+  const reachE = fieldInRow[0];
+  const reachI = fieldInRow[1];
+  const se = slots[0];
+  const si = slots[1];
+  // stencils that the field's direction leaves empty: electrons use cells f−2 … f when they move right, else f−1 … f+1
+  const eFrom = direction > 0 ? 1 : 0;
+  const eTo = direction < 0 ? 3 : 4;
+  const iFrom = direction < 0 ? 1 : 0;
+  const iTo = direction > 0 ? 3 : 4;
+  for (let i = 0; i < cells; i++) {
+    const width = widths[i];
+    const z = 0.5 * (alpha[i] + alpha[i + 1]) * width;
+    const half = 0.5 * cellFactor(z);
+    const bend =
+      0.25 * cellFactorSlope(z) * width * (alpha[i] * Math.abs(electronFlux[i]) + alpha[i + 1] * Math.abs(electronFlux[i + 1]));
+    const rowE = 2 * i + se;
+    const rowI = 2 * i + si;
+    const diagonalE = rowE * stride + lower;
+    const diagonalI = rowI * stride + lower;
+    entries[diagonalE] += a;
+    entries[diagonalI] += a;
+    for (let side = 0; side < 2; side++) {
+      const f = i + side;
+      const s = (side === 0 ? -1 : 1) / width;
+      const flux = electronFlux[f];
+      const made = flux < 0 ? -half * alpha[f] : half * alpha[f];
+      const madeByField = half * alphaSlope[f] * Math.abs(flux) + bend * alphaSlope[f];
+      const ge = ((s - made) * eByField[f] - madeByField) * response[f];
+      const gi = (s * iByField[f] - made * eByField[f] - madeByField) * response[f];
+      reachE[2 * i + side] = ge;
+      reachI[2 * i + side] = gi;
+      const bee = s - made + ge * c;
+      const bie = -made + gi * c;
+      let bei = -ge * c;
+      let bii = s - gi * c;
+      if (f === 0) {
+        bei -= bee * emissionLeft;
+        bii -= bie * emissionLeft;
+      } else if (f === cells) {
+        bei -= bee * emissionRight;
+        bii -= bie * emissionRight;
+      }
+      const cell0 = f - 2;
+      const firstJ = cell0 < 0 ? -cell0 : 0;
+      const lastJ = cells - cell0 < 4 ? cells - cell0 : 4;
+      const shift = 2 * (cell0 - i);
+      const fromE = eFrom > firstJ ? eFrom : firstJ;
+      const toE = eTo < lastJ ? eTo : lastJ;
+      for (let j = fromE; j < toE; j++) {
+        const p = pe[4 * f + j];
+        const at = shift + 2 * j;
+        entries[diagonalE + at] += bee * p;
+        entries[diagonalI + at + se - si] += bie * p;
+      }
+      const fromI = iFrom > firstJ ? iFrom : firstJ;
+      const toI = iTo < lastJ ? iTo : lastJ;
+      for (let j = fromI; j < toI; j++) {
+        const p = pi[4 * f + j];
+        const at = shift + 2 * j;
+        entries[diagonalE + at + si - se] += bei * p;
+        entries[diagonalI + at] += bii * p;
+      }
+    }
+  }
+}

@@ -1,0 +1,155 @@
+import type { GapSystem } from './gap-system.ts';
+import type { Scheme } from './scheme.ts';
+
+/** One step of a linearly implicit scheme, with error estimate and dense output. All work arrays are made once. */
+export class Stepper {
+  readonly scheme: Scheme;
+  readonly #system: GapSystem;
+  readonly #size: number;
+  readonly #stages: readonly Float64Array[];
+  readonly #r: Float64Array;
+  readonly #stage: Float64Array;
+  readonly #K: Float64Array;
+  readonly #L: Float64Array;
+  #denseReady = false;
+  /** state and rates at the start of the step, state at its end, difference of the embedded solution */
+  readonly start: Float64Array;
+  readonly startRates: Float64Array;
+  readonly end: Float64Array;
+  readonly error: Float64Array;
+  time = 0;
+  span = 0;
+  /** linear solves and factorisations so far */
+  solves = 0;
+  factorisations = 0;
+
+  constructor(system: GapSystem, scheme: Scheme) {
+    this.scheme = scheme;
+    this.#system = system;
+    const n = system.layout.unknowns;
+    this.#size = n;
+    this.#stages = scheme.c.map(() => new Float64Array(n));
+    this.#r = new Float64Array(n);
+    this.#stage = new Float64Array(system.layout.size);
+    this.#K = new Float64Array(n);
+    this.#L = new Float64Array(n);
+    this.start = new Float64Array(system.layout.size);
+    this.startRates = new Float64Array(n);
+    this.end = new Float64Array(system.layout.size);
+    this.error = this.#stages[scheme.c.length - 1];
+  }
+
+  /** Takes `y` as the state at time t and linearises there. */
+  begin(t: number, y: Float64Array): void {
+    this.time = t;
+    this.start.set(y);
+    this.#system.linearise(t, this.start, this.startRates);
+  }
+
+  /** From `start` over h into `end`; `start` and its linearisation stay, so a rejected step is simply tried again.
+   *  @returns the cell whose equations could not be solved, or −1 */
+  attempt(h: number): number {
+    const { a, g, c, d, m, gamma } = this.scheme;
+    const system = this.#system;
+    const n = this.#size;
+    this.span = h;
+    this.#denseReady = false;
+    const bad = system.factor(this.start, 1 / (h * gamma));
+    this.factorisations++;
+    if (bad >= 0) return bad;
+    const stages = this.#stages;
+    for (let i = 0; i < c.length; i++) {
+      const r = this.#r;
+      if (i === 0) r.set(this.startRates);
+      else {
+        combine(this.#stage, this.start, stages, a[i], 1, i, n);
+        system.rates(this.time + c[i] * h, this.#stage, r);
+        combine(r, r, stages, g[i], 1 / h, i, n);
+      }
+      system.addTimeSlope(r, d[i] * h);
+      system.solve(r, stages[i]);
+      this.solves++;
+    }
+    combine(this.end, this.start, stages, m, 1, c.length, n);
+    system.settle(this.end);
+    return -1;
+  }
+
+  /** The state at start + θ·span, 0 ≤ θ ≤ 1, into `out`. Third order. */
+  stateAt(theta: number, out: Float64Array): void {
+    const n = this.#size;
+    if (!this.#denseReady) {
+      const { k, l } = this.scheme;
+      this.#K.fill(0);
+      this.#L.fill(0);
+      combine(this.#K, this.#K, this.#stages, k, 1, k.length, n);
+      combine(this.#L, this.#L, this.#stages, l, 1, l.length, n);
+      this.#denseReady = true;
+    }
+    const rest = 1 - theta;
+    const { start, end } = this;
+    for (let i = 0; i < n; i++) {
+      out[i] = rest * start[i] + theta * (end[i] + rest * (this.#K[i] + theta * this.#L[i]));
+    }
+    this.#system.settle(out);
+  }
+}
+
+/** out ← base + factor Σ weightⱼ Uⱼ over j < count. */
+function combine(
+  out: Float64Array,
+  base: Float64Array,
+  U: readonly Float64Array[],
+  weights: readonly number[],
+  factor: number,
+  count: number,
+  n: number,
+): void {
+  const w = (j: number): number => (j < count ? factor * (weights[j] ?? 0) : 0);
+  const w0 = w(0);
+  const w1 = w(1);
+  const w2 = w(2);
+  const w3 = w(3);
+  const w4 = w(4);
+  const w5 = w(5);
+  const u0 = U[0];
+  switch (count) {
+    case 1:
+      for (let i = 0; i < n; i++) out[i] = base[i] + w0 * u0[i];
+      return;
+    case 2: {
+      const u1 = U[1];
+      for (let i = 0; i < n; i++) out[i] = base[i] + w0 * u0[i] + w1 * u1[i];
+      return;
+    }
+    case 3: {
+      const u1 = U[1];
+      const u2 = U[2];
+      for (let i = 0; i < n; i++) out[i] = base[i] + w0 * u0[i] + w1 * u1[i] + w2 * u2[i];
+      return;
+    }
+    case 4: {
+      const u1 = U[1];
+      const u2 = U[2];
+      const u3 = U[3];
+      for (let i = 0; i < n; i++) out[i] = base[i] + w0 * u0[i] + w1 * u1[i] + w2 * u2[i] + w3 * u3[i];
+      return;
+    }
+    default: {
+      const u1 = U[1];
+      const u2 = U[2];
+      const u3 = U[3];
+      const u4 = U[4];
+      if (count === 5) {
+        for (let i = 0; i < n; i++) {
+          out[i] = base[i] + w0 * u0[i] + w1 * u1[i] + w2 * u2[i] + w3 * u3[i] + w4 * u4[i];
+        }
+        return;
+      }
+      const u5 = U[5];
+      for (let i = 0; i < n; i++) {
+        out[i] = base[i] + w0 * u0[i] + w1 * u1[i] + w2 * u2[i] + w3 * u3[i] + w4 * u4[i] + w5 * u5[i];
+      }
+    }
+  }
+}
