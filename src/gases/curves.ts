@@ -78,7 +78,7 @@ class Exponential implements Curve {
   readonly #B: number;
   constructor(A: number, B: number) {
     this.#A = A;
-    this.#B = B;
+    this.#B = Math.max(B, Number.MIN_VALUE); // B = 0 at x = 0 would be 0/0
   }
   valueAt(x: number): number {
     return x > 0 ? this.#A * Math.exp(-this.#B / x) : 0;
@@ -110,7 +110,7 @@ class ExponentialSum implements Curve {
   readonly #b: Float64Array;
   constructor(terms: readonly { readonly amplitude: number; readonly scale: number }[]) {
     this.#a = Float64Array.from(terms, (t) => t.amplitude);
-    this.#b = Float64Array.from(terms, (t) => t.scale);
+    this.#b = Float64Array.from(terms, (t) => Math.max(t.scale, Number.MIN_VALUE));
   }
   valueAt(x: number): number {
     if (!(x > 0)) return 0;

@@ -84,12 +84,6 @@ export class LinearSystem {
   }
 
   /** Any number of species, with or without attachment; `assembleTwo` is the same for the common case, twice as fast. */
-  #addRecombination(y, 0, 1, ei);
-    const ii = eq.laws.ionIonRecombination;
-    if (ii > 0 && eq.charges.length > 2) this.#addRecombination(y, 2, 1, ii);
-  }
-
-  /** Any number of species, with or without attachment; `assembleTwo` is the same for the common case, twice as fast. */
   #assembleAny(a: number): void {
     const eq = this.#equations;
     const { cells } = eq.layout;
@@ -104,13 +98,13 @@ export class LinearSystem {
     const G = new Float64Array(species);
     for (let i = 0; i < cells; i++) {
       const width = widths[i];
-      const z = 0.5 * (eq.alpha[i] + eq.alpha[i + 1] - eq.eta[i] - eq.eta[i + 1]) * width;
+      const z = 0.5 * (alpha[i] + alpha[i + 1] - eta[i] - eta[i + 1]) * width;
       const half = 0.5 * cellFactor(z);
       const left = Math.abs(electronFlux[i]);
       const right = Math.abs(electronFlux[i + 1]);
       const bend = 0.25 * cellFactorSlope(z) * width;
-      const ionBend = bend * (eq.alpha[i] * left + eq.alpha[i + 1] * right);
-      const attachBend = bend * (eq.eta[i] * left + eq.eta[i + 1] * right);
+      const ionBend = bend * (alpha[i] * left + alpha[i + 1] * right);
+      const attachBend = bend * (eta[i] * left + eta[i + 1] * right);
       for (let k = 0; k < species; k++) {
         const diagonal = (species * i + this.#slots[k]) * stride + lower;
         entries[diagonal] += a;
@@ -119,8 +113,8 @@ export class LinearSystem {
         const f = i + side;
         const s = (side === 0 ? -1 : 1) / width;
         const sign = electronFlux[f] < 0 ? -1 : 1;
-        const made = half * eq.alpha[f] * sign;
-        const lost = half * eq.eta[f] * sign;
+        const made = half * alpha[f] * sign;
+        const lost = half * eta[f] * sign;
         const netSlope = eq.alphaSlope[f] - eq.etaSlope[f];
         const madeByField = half * eq.alphaSlope[f] * Math.abs(electronFlux[f]) + ionBend * netSlope;
         const lostByField = half * eq.etaSlope[f] * Math.abs(electronFlux[f]) + attachBend * netSlope;
@@ -340,8 +334,7 @@ function assembleTwo(
     const width = widths[i];
     const z = 0.5 * (alpha[i] + alpha[i + 1]) * width;
     const half = 0.5 * cellFactor(z);
-    const bend =
-      0.25 * cellFactorSlope(z) * width * (alpha[i] * Math.abs(electronFlux[i]) + alpha[i + 1] * Math.abs(electronFlux[i + 1]));
+    const bend = 0.25 * cellFactorSlope(z) * width * (alpha[i] * Math.abs(electronFlux[i]) + alpha[i + 1] * Math.abs(electronFlux[i + 1]));
     const rowE = 2 * i + se;
     const rowI = 2 * i + si;
     const diagonalE = rowE * stride + lower;
