@@ -128,8 +128,8 @@ export class LinearSystem {
           const reach = G[k] * this.#response[f];
           this.#fieldInRow[k][2 * i + side] = reach;
           for (let m = 0; m < species; m++) B[k * species + m] -= reach * c * eq.charges[m];
-          if (f === 0) B[k * species + 1] -= B[k * species] * emissionLeft;
-          if (f === cells) B[k * species + 1] -= B[k * species] * emissionRight;
+          if (f === 0) B[k * species + 1] -= B[k * species] * eq.at.emissionLeft;
+          if (f === cells) B[k * species + 1] -= B[k * species] * eq.at.emissionRight;
         }
         for (let k = 0; k < species; k++) {
           const rowIndex = species * i + this.#slots[k];
@@ -356,11 +356,11 @@ function assembleTwo(
       let bei = -ge * c;
       let bii = s - gi * c;
       if (f === 0) {
-        bei -= bee * emissionLeft;
-        bii -= bie * emissionLeft;
+        bei -= bee * eq.at.emissionLeft;
+        bii -= bie * eq.at.emissionLeft;
       } else if (f === cells) {
-        bei -= bee * emissionRight;
-        bii -= bie * emissionRight;
+        bei -= bee * eq.at.emissionRight;
+        bii -= bie * eq.at.emissionRight;
       }
       const cell0 = f - 2;
       const firstJ = cell0 < 0 ? -cell0 : 0;
