@@ -18,6 +18,8 @@ export type DimensionName =
   | 'number'
   | 'length'
   | 'area'
+  | 'crossSection'
+  | 'recombination'
   | 'volume'
   | 'mass'
   | 'time'
@@ -57,6 +59,8 @@ export const DIMENSIONS: Readonly<Record<DimensionName, Dimension>> = {
   number: dimension('a number', '0.1 %', '', 0, 0, 0, 0, 0, 0),
   length: dimension('a length', '6 mm', 'm', 1, 0, 0, 0, 0, 0),
   area: dimension('an area', '12 cm^2', 'm^2', 2, 0, 0, 0, 0, 0),
+  /** α/N: the exponents of an area, under the name that a coefficient asks for */
+  crossSection: dimension('a coefficient over density', '1e-20 m^2', 'm^2', 2, 0, 0, 0, 0, 0),
   volume: dimension('a volume', '12 L', 'm^3', 3, 0, 0, 0, 0, 0),
   mass: dimension('a mass', '4 u', 'kg', 0, 1, 0, 0, 0, 0),
   time: dimension('a time', '5 ms', 's', 0, 0, 1, 0, 0, 0),
@@ -79,6 +83,8 @@ export const DIMENSIONS: Readonly<Record<DimensionName, Dimension>> = {
   currentDensity: dimension('a current density', '1 mA/cm^2', 'A/m^2', -2, 0, 0, 1, 0, 0),
   density: dimension('a number density', '1e16 1/cm^3', '1/m^3', -3, 0, 0, 0, 0, 0),
   volumeRate: dimension('a volume per time', '50 L/s', 'm^3/s', 3, 0, -1, 0, 0, 0),
+  /** β */
+  recombination: dimension('a recombination coefficient', '1e-7 cm^3/s', 'm^3/s', 3, 0, -1, 0, 0, 0),
   gasFlow: dimension('a gas flow', '1e-4 mbar L/s', 'Pa m^3/s', 2, 1, -3, 0, 0, 0),
   outgassingRate: dimension('an outgassing rate', '1e-8 Torr L/(s cm^2)', 'Pa m/s', 0, 1, -3, 0, 0, 0),
   pressureLength: dimension('a pressure times a length', '0.7 Torr cm', 'Pa m', 0, 1, -2, 0, 0, 0),

@@ -146,7 +146,7 @@ class Reader {
         ok: false,
         index: start,
         expected: 'a unit',
-        found: `unknown unit ${JSON.stringify(symbol)}`,
+        found: `unknown unit "${clip(symbol)}"`,
         nearest: nearestSpelling(symbol, allSymbols()),
       });
     }

@@ -1,11 +1,12 @@
 import { clip } from './clip.ts';
 import { DIMENSIONS, type DimensionName, describeExponents, type Exponents, sameExponents } from './dimension.ts';
-import { parseUnit } from './expression.ts';
+import { parseUnit, type UnitError } from './expression.ts';
 import type { Unit } from './symbols.ts';
 
 /** Why a text is not the quantity asked for. */
 export interface QuantityError {
   readonly ok: false;
+  readonly code: 'not-a-quantity' | 'not-finite' | 'missing-unit' | 'unknown-unit' | 'bad-unit' | 'wrong-dimension';
   /** 1-based, into the text given */
   readonly column: number;
   readonly expected: string;
@@ -41,7 +42,8 @@ export function parseAnyOf<Name extends DimensionName>(
   for (const name of dimensions)
     if (sameExponents(DIMENSIONS[name].exponents, read.exponents)) return { ok: true, value: read.value, dimension: name };
   const found = read.unitless ? `${clip(text.trim())} without a unit` : `${clip(text.trim())}, ${describeExponents(read.exponents)}`;
-  return { ok: false, column: read.unitIndex + 1, expected, found, nearest: null };
+  const code = read.unitless ? 'missing-unit' : 'wrong-dimension';
+  return { ok: false, code, column: read.unitIndex + 1, expected, found, nearest: null };
 }
 
 /** What a message says is wanted: `a voltage, e.g. 420 V`. */
@@ -53,7 +55,7 @@ export function expectation(dimensions: readonly DimensionName[]): string {
 export function unitFactor(text: string): { readonly ok: true; readonly factor: number; readonly exponents: Exponents } | QuantityError {
   if (text.trim() === '%') return { ok: true, factor: 0.01, exponents: DIMENSIONS.number.exponents };
   const parsed = parseUnit(text);
-  if (!parsed.ok) return { ok: false, column: parsed.index + 1, expected: parsed.expected, found: parsed.found, nearest: parsed.nearest };
+  if (!parsed.ok) return unitError(parsed, 0, parsed.expected);
   return { ok: true, factor: toSi('1', parsed.unit), exponents: parsed.unit.exponents };
 }
 
@@ -67,23 +69,24 @@ interface Read {
 }
 
 function readQuantity(text: string, expected: string): Read | QuantityError {
-  const refuse = (index: number, found: string, nearest: string | null = null, wanted = expected): QuantityError => ({
+  const refuse = (code: QuantityError['code'], index: number, found: string, wanted = expected): QuantityError => ({
     ok: false,
+    code,
     column: index + 1,
     expected: wanted,
     found,
-    nearest,
+    nearest: null,
   });
   const start = text.length - text.trimStart().length;
   const body = text.trimEnd();
   const number = NUMBER.exec(body.slice(start))?.[0];
-  if (number === undefined) return refuse(start, body.length > start ? clip(body.slice(start)) : 'nothing');
+  if (number === undefined) return refuse('not-a-quantity', start, body.length > start ? clip(body.slice(start)) : 'nothing');
   const afterNumber = start + number.length;
   const unitStart = afterNumber + (body.slice(afterNumber).length - body.slice(afterNumber).trimStart().length);
   const unitText = body.slice(unitStart);
-  if (!Number.isFinite(Number(number))) return refuse(start, `${clip(number)}, which is not finite`);
+  if (!Number.isFinite(Number(number))) return refuse('not-finite', start, `${clip(number)}, which is not finite`);
   if (/^[,_']\d/.test(unitText))
-    return refuse(unitStart, clip(body.slice(start)), null, `${expected}, with a decimal point and no separators`);
+    return refuse('not-a-quantity', unitStart, clip(body.slice(start)), `${expected}, with a decimal point and no separators`);
 
   let unit: Unit = { scale: 1, decade: 0, exponents: DIMENSIONS.number.exponents };
   let offset = 0;
@@ -94,15 +97,19 @@ function readQuantity(text: string, expected: string): Read | QuantityError {
   } else if (unitText !== '') {
     const parsed = parseUnit(unitText);
     if (!parsed.ok) {
-      const wanted = parsed.expected === 'a unit' ? expected : parsed.expected;
-      return refuse(unitStart + parsed.index, parsed.found, parsed.nearest, wanted);
+      return unitError(parsed, unitStart, parsed.expected === 'a unit' ? expected : parsed.expected);
     }
     unit = parsed.unit;
   }
   const value = toSi(number, unit) + offset;
   const vanished = value === 0 && offset === 0 && Number(number) !== 0;
-  if (!Number.isFinite(value) || vanished) return refuse(start, `${clip(body.slice(start))}, which no double holds in SI`);
+  if (!Number.isFinite(value) || vanished) return refuse('not-finite', start, `${clip(body.slice(start))}, which no double holds in SI`);
   return { ok: true, value, exponents: unit.exponents, unitless: unitText === '', unitIndex: unitText === '' ? start : unitStart };
+}
+
+function unitError(error: UnitError, start: number, expected: string): QuantityError {
+  const code = error.found.startsWith('unknown unit') ? 'unknown-unit' : 'bad-unit';
+  return { ok: false, code, column: start + error.index + 1, expected, found: error.found, nearest: error.nearest };
 }
 
 /** number × unit; whole decades go into the decimal exponent, so that 20 pF is the double nearest to 2e-11. */

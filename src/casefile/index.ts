@@ -1,0 +1,163 @@
+/** A case's text -> a frozen `Case`, or all its mistakes with line and column.
+ *
+ *  document.ts      YAML within limits; where each entry stands
+ *  overrides.ts     --set PATH=VALUE
+ *  schema.ts        what a case may hold (fields.ts: the building blocks; later.ts: what is refused by name)
+ *  csv.ts           tables
+ *  issues.ts        what the schema found wrong -> problems (problem.ts)
+ *  build.ts         validated input and defaults -> Case (coefficients.ts: the gas)
+ *  resolved.ts      the case as a flat record in SI; hash.ts: its SHA-256
+ *  template.ts      a case to start from
+ *
+ *  No file is opened here: tables are read through the function passed in. */
+import * as z from 'zod';
+import type { Case } from '../case.ts';
+import { gases } from '../gases/index.ts';
+import { surfaces, yieldFor } from '../surfaces/index.ts';
+import { type BuiltIns, buildCase } from './build.ts';
+import { Defaults, type DefaultUsed } from './defaults.ts';
+import { locate, parseSource, type SourceDocument, toPlain } from './document.ts';
+import type { LoadedTable, TableReader } from './fields.ts';
+import { problemsOf } from './issues.ts';
+import { applyOverrides } from './overrides.ts';
+import type { Place, Problem } from './problem.ts';
+import { type ResolvedValue, resolvedOf } from './resolved.ts';
+import { type CaseInput, caseSchema } from './schema.ts';
+
+export type { BuiltIns } from './build.ts';
+export type { DefaultUsed } from './defaults.ts';
+export type { TableReader } from './fields.ts';
+export { hashCase } from './hash.ts';
+export { formatProblem, type Place, type Problem, type ProblemCode } from './problem.ts';
+export type { ResolvedValue } from './resolved.ts';
+export { caseTemplate } from './template.ts';
+
+/** A table that a case named, as it was read. */
+export interface TableUsed {
+  readonly path: string;
+  readonly file: string;
+  readonly text: string;
+}
+
+export type ReadResult =
+  | {
+      readonly ok: true;
+      readonly case: Case;
+      readonly defaults: readonly DefaultUsed[];
+      /** how entries were read, where that is not plain */
+      readonly notes: readonly string[];
+      /** path -> SI value */
+      readonly resolved: Readonly<Record<string, ResolvedValue>>;
+      readonly tables: readonly TableUsed[];
+      /** where the entry at a path stands, or its nearest ancestor */
+      readonly locate: (path: string) => Place;
+    }
+  | { readonly ok: false; readonly problems: readonly Problem[] };
+
+export const BUILT_INS: BuiltIns = { gases, materials: Object.keys(surfaces), surfaceFor: yieldFor };
+
+/** Reads a case.
+ *
+ *  @param text       YAML 1.2, at most 1 MB
+ *  @param fileName   for messages, and the title by default
+ *  @param reader     gives the text of a table's file by its name in the case
+ *  @param overrides  `PATH=VALUE`, applied left to right before validation
+ *  @returns the frozen case with the defaults used, or every problem, in the order of the file. Never throws on any text. */
+export function readCase(
+  text: string,
+  fileName: string,
+  reader: TableReader,
+  overrides: readonly string[] = [],
+  builtIns: BuiltIns = BUILT_INS,
+): ReadResult {
+  const parsed = parseSource(text, fileName);
+  if (!parsed.ok) return { ok: false, problems: parsed.problems };
+  const { document } = parsed;
+  const problems = applyOverrides(document, overrides);
+  const plain = toPlain(document);
+  problems.push(...plain.problems);
+  if (plain.problems.some((p) => p.code === 'aliases' || p.code === 'too-deep')) return { ok: false, problems };
+
+  const schema = caseSchema({ reader: onceEach(reader), gasNames: Object.keys(builtIns.gases), materialNames: builtIns.materials });
+  const validated = schema.safeParse(plain.value, { reportInput: false });
+  if (!validated.success) problems.push(...problemsOf(validated.error.issues, schema, plain.value, document));
+  problems.push(...missingYields(plain.value, builtIns, document));
+  if (!validated.success || problems.length > 0) return { ok: false, problems: inOrder(problems) };
+
+  const defaults = new Defaults();
+  const built = buildCase(validated.data, baseName(fileName), builtIns, defaults);
+  return {
+    ok: true,
+    case: built,
+    defaults: defaults.used,
+    notes: defaults.notes,
+    resolved: resolvedOf(built),
+    tables: tablesOf(validated.data),
+    locate: (path) => locate(document, path === '' ? [] : path.split('.')),
+  };
+}
+
+/** The JSON Schema of a case, generated from the validator. */
+export function caseJsonSchema(builtIns: BuiltIns = BUILT_INS): Record<string, unknown> {
+  const schema = caseSchema({
+    reader: () => ({ ok: false, reason: 'no files are read for a schema' }),
+    gasNames: Object.keys(builtIns.gases),
+    materialNames: builtIns.materials,
+  });
+  return { title: 'gapwake case', ...z.toJSONSchema(schema, { io: 'input', target: 'draft-7' }) };
+}
+
+/** A file named twice is read once. */
+function onceEach(reader: TableReader): TableReader {
+  const read = new Map<string, ReturnType<TableReader>>();
+  return (file) => {
+    const known = read.get(file);
+    if (known) return known;
+    const result = reader(file);
+    read.set(file, result);
+    return result;
+  };
+}
+
+/** Electrodes whose material has no yield in this gas: two sections decide, so it is checked on the data as given. */
+function missingYields(raw: unknown, builtIns: BuiltIns, document: SourceDocument): Problem[] {
+  const at = (value: unknown, key: string): unknown =>
+    typeof value === 'object' && value !== null ? (value as Record<string, unknown>)[key] : undefined;
+  const name = at(at(raw, 'gas'), 'name');
+  const gas = typeof name === 'string' && Object.hasOwn(builtIns.gases, name) ? name : null;
+  return ['left', 'right'].flatMap((side) => {
+    const electrode = at(at(raw, 'electrodes'), side);
+    const material = at(electrode, 'material');
+    if (typeof material !== 'string' || !builtIns.materials.includes(material) || at(electrode, 'ion_yield') !== undefined) return [];
+    if (builtIns.surfaceFor(material, gas) !== null) return [];
+    const path = ['electrodes', side, 'material'];
+    const expected = `a material with a known yield in ${gas ?? 'this gas'}, or an ion_yield beside it`;
+    return [
+      { code: 'inconsistent', ...locate(document, path), path: path.join('.'), expected, found: material, nearest: null } satisfies Problem,
+    ];
+  });
+}
+
+function tablesOf(input: CaseInput): TableUsed[] {
+  const tables: TableUsed[] = [];
+  const add = (path: string, table: LoadedTable | undefined): void => {
+    if (table) tables.push({ path, file: table.file, text: table.text });
+  };
+  add('supply.voltage.table', input.supply.voltage.table);
+  for (const [key, value] of Object.entries(input.gas.coefficients ?? {})) {
+    if (typeof value === 'object' && 'table' in value) add(`gas.coefficients.${key}.table`, value.table);
+  }
+  return tables;
+}
+
+function inOrder(problems: readonly Problem[]): Problem[] {
+  const rank = (p: Problem): number => (p.line === null ? Number.POSITIVE_INFINITY : p.line * 1e6 + (p.column ?? 0));
+  return problems
+    .map((problem, i) => ({ problem, i }))
+    .sort((a, b) => (rank(a.problem) === rank(b.problem) ? a.i - b.i : rank(a.problem) - rank(b.problem)))
+    .map(({ problem }) => problem);
+}
+
+function baseName(file: string): string {
+  return file.split(/[/\\]/).pop() || file;
+}

@@ -1,0 +1,113 @@
+import * as z from 'zod';
+import { clip, nearestSpelling } from '../units/index.ts';
+import { locate, type Path, pathText, type SourceDocument } from './document.ts';
+import type { IssueDetail } from './fields.ts';
+import { isLaterKey, isLaterName } from './later.ts';
+import type { Place, Problem, ProblemCode } from './problem.ts';
+
+/** What the validator found wrong, placed in the document.
+ *
+ *  @param raw  the plain data that was validated */
+export function problemsOf(issues: readonly z.core.$ZodIssue[], schema: z.ZodType, raw: unknown, document: SourceDocument): Problem[] {
+  return issues.flatMap((issue) => convert(issue, [], { schema, raw, document }));
+}
+
+/** unknown keys reported per mapping; placing each costs time in proportion to their number */
+const MAX_KEYS = 100;
+
+interface Context {
+  readonly schema: z.ZodType;
+  readonly raw: unknown;
+  readonly document: SourceDocument;
+}
+
+function convert(issue: z.core.$ZodIssue, base: Path, context: Context): Problem[] {
+  const { raw, document } = context;
+  const path = [...base, ...issue.path];
+  const value = valueAt(raw, path);
+  const make = (code: ProblemCode, place: Place, at: Path, expected: string, found: string, nearest: string | null): Problem => ({
+    code,
+    file: place.file,
+    line: place.line,
+    column: place.column,
+    path: pathText(at),
+    expected,
+    found,
+    nearest,
+  });
+
+  if (issue.code === 'unrecognized_keys') {
+    const known = knownKeys(context.schema, path);
+    return issue.keys.slice(0, MAX_KEYS).map((key) => {
+      const at = [...path, key];
+      const place = locate(document, at, 'key');
+      if (isLaterKey(path, key)) return make('not-supported-yet', place, at, `no such key (${key} is not supported yet)`, clip(key), null);
+      const where = path.length === 0 ? 'a key of a case' : `a key of ${clip(pathText(path))}`;
+      return make('unknown-key', place, at, `${where} (${known.join(', ')})`, clip(key), nearestSpelling(key, known));
+    });
+  }
+  if (issue.code === 'invalid_union') {
+    // the arm that accepts this type of value knows best what is wrong inside it
+    const arms = issue.errors.filter((arm) => !arm.some((inner) => inner.path.length === 0 && inner.code === 'invalid_type'));
+    if (arms.length === 1) return arms[0].flatMap((inner) => convert(inner, path, context));
+  }
+  const place = locate(document, path);
+  if (issue.code === 'custom') {
+    const detail = (issue.params ?? { code: 'wrong-type' }) as unknown as IssueDetail;
+    const found = detail.found ?? describe(value);
+    const where = detail.table ?? locate(document, path, 'value', detail.offset ?? 0);
+    return [make(detail.code, where, path, issue.message, found, detail.nearest ?? null)];
+  }
+  if (issue.code === 'invalid_value' && typeof value === 'string') {
+    if (isLaterName(path, value))
+      return [make('not-supported-yet', place, path, `${issue.message} (${value} is not supported yet)`, clip(value), null)];
+    const names = issue.values.map(String);
+    return [make('unknown-name', place, path, issue.message, clip(value) || 'nothing', nearestSpelling(value, names))];
+  }
+  return [make(codeOf(value), place, path, issue.message, describe(value, issue.message), null)];
+}
+
+/** The code for a value of the wrong type. */
+function codeOf(value: unknown): ProblemCode {
+  if (value === undefined || value === null) return 'missing-key';
+  if (typeof value === 'number') return Number.isFinite(value) ? 'missing-unit' : 'not-finite';
+  return 'wrong-type';
+}
+
+/** What stands there, in at most 40 characters from outside. */
+function describe(value: unknown, expected = ''): string {
+  if (value === undefined || value === null) return 'nothing';
+  if (Array.isArray(value)) return 'a list';
+  if (typeof value === 'object') return 'a mapping';
+  if (typeof value === 'number' && Number.isFinite(value) && expected.includes(', e.g. ')) return `${value} without a unit`;
+  return clip(String(value)) || 'nothing';
+}
+
+function valueAt(raw: unknown, path: Path): unknown {
+  let value = raw;
+  for (const key of path) {
+    if (typeof value !== 'object' || value === null || !Object.hasOwn(value, key)) return undefined;
+    value = (value as Record<PropertyKey, unknown>)[key];
+  }
+  return value;
+}
+
+/** The keys that the schema accepts in the mapping at a path. */
+function knownKeys(schema: z.ZodType, path: Path): string[] {
+  let objects = objectsIn(schema);
+  for (const key of path) {
+    objects = objects.flatMap((object) => {
+      const inner = object.shape[String(key)];
+      return inner ? objectsIn(inner as z.ZodType) : [];
+    });
+  }
+  return [...new Set(objects.flatMap((object) => Object.keys(object.shape)))];
+}
+
+function objectsIn(schema: z.ZodType): z.ZodObject[] {
+  if (schema instanceof z.ZodObject) return [schema];
+  if (schema instanceof z.ZodOptional) return objectsIn(schema.unwrap() as z.ZodType);
+  if (schema instanceof z.ZodPipe) return objectsIn(schema.in as z.ZodType);
+  if (schema instanceof z.ZodUnion) return schema.options.flatMap((option) => objectsIn(option as z.ZodType));
+  return [];
+}

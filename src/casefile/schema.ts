@@ -1,0 +1,415 @@
+import * as z from 'zod';
+import {
+  across,
+  choice,
+  type Dimensioned,
+  exactlyOne,
+  type LoadedTable,
+  NOT_NEGATIVE,
+  POSITIVE,
+  pureNumber,
+  quantity,
+  quantityOf,
+  section,
+  type TableReader,
+  table,
+} from './fields.ts';
+
+/** A case as validated: SI values, entries as they were given, no defaults filled in. */
+export interface CaseInput {
+  readonly title?: string | undefined;
+  readonly gap: {
+    readonly geometry: 'planar';
+    readonly spacing: number;
+    readonly area: number;
+    readonly longest_path?: number | undefined;
+  };
+  readonly gas: {
+    readonly name?: string | undefined;
+    readonly pressure: number;
+    readonly temperature?: number | undefined;
+    readonly coefficients?: CoefficientsInput | undefined;
+  };
+  readonly electrodes: { readonly left: ElectrodeInput; readonly right?: ElectrodeInput | undefined };
+  readonly seed: { readonly cathode_current: number; readonly electrons?: number | undefined };
+  readonly supply: {
+    readonly voltage: {
+      readonly step?: number | undefined;
+      readonly rise_time?: number | undefined;
+      readonly ramp?: { readonly from: number; readonly to: number; readonly rate: number } | undefined;
+      readonly table?: LoadedTable | undefined;
+    };
+    readonly series_resistance: number;
+    readonly parallel_capacitance?: number | undefined;
+    readonly current_limit?: number | undefined;
+    readonly trip?:
+      | {
+          readonly current: number;
+          readonly delay: number;
+          readonly senses?: 'gap' | 'supply' | undefined;
+          readonly action?: 'open' | 'zero' | undefined;
+        }
+      | undefined;
+    readonly initial_gap_voltage?: number | undefined;
+  };
+  readonly electrons?: { readonly closure?: 'local-field' | undefined } | undefined;
+  readonly observe: { readonly until: number; readonly currents?: readonly number[] | undefined };
+  readonly numerics?: { readonly cells?: number | undefined; readonly tolerance?: number | undefined } | undefined;
+}
+
+export interface ElectrodeInput {
+  readonly material?: string | undefined;
+  readonly ion_yield?: number | undefined;
+}
+
+export interface GrowthInput extends Validity {
+  readonly form?: 'exponential' | 'root' | undefined;
+  readonly A?: Dimensioned | undefined;
+  readonly B?: Dimensioned | undefined;
+  readonly C?: Dimensioned | undefined;
+  readonly D?: Dimensioned | undefined;
+  readonly table?: LoadedTable | undefined;
+}
+
+export interface Validity {
+  readonly valid_from?: Dimensioned | undefined;
+  readonly valid_to?: Dimensioned | undefined;
+  readonly reference_temperature?: number | undefined;
+}
+
+/** A coefficient that is not a growth rate: one value, a reduced mobility, or a table. */
+export type PlainInput =
+  | Dimensioned
+  | (Validity & { readonly value?: Dimensioned | undefined; readonly K0?: number | undefined; readonly table?: LoadedTable | undefined });
+
+export interface CoefficientsInput {
+  readonly ionisation?: GrowthInput | undefined;
+  readonly attachment?: GrowthInput | undefined;
+  readonly electron_mobility?: PlainInput | undefined;
+  readonly electron_energy?: PlainInput | undefined;
+  readonly ion_mobility?: PlainInput | undefined;
+  readonly ion_energy?: PlainInput | undefined;
+  readonly negative_ion_mobility?: PlainInput | undefined;
+  readonly negative_ion_energy?: PlainInput | undefined;
+  readonly recombination?: Dimensioned | undefined;
+  readonly reference_temperature?: number | undefined;
+}
+
+/** What the schema is built around. */
+export interface SchemaContext {
+  readonly reader: TableReader;
+  readonly gasNames: readonly string[];
+  readonly materialNames: readonly string[];
+}
+
+const TEMPERATURE = { min: 4, max: 3000, text: 'from 4 K to 3000 K' };
+const VOLTAGE = { min: -1e7, max: 1e7, text: 'of at most 10 MV either way' };
+const EITHER_FIELD = ['fieldOverPressure', 'reducedField'] as const;
+const EITHER_GROWTH = ['growthOverPressure', 'crossSection'] as const;
+const EITHER_MOBILITY = ['mobilityTimesPressure', 'mobilityTimesDensity'] as const;
+
+/** The validator of a case. The JSON Schema is generated from it. */
+export function caseSchema(context: SchemaContext): z.ZodType<CaseInput> {
+  return section(
+    {
+      title: z
+        .string({ error: () => 'text of at most 200 characters' })
+        .max(200)
+        .optional(),
+      gap: gapSchema(),
+      gas: gasSchema(context),
+      electrodes: section(
+        { left: electrodeSchema(context), right: electrodeSchema(context).optional() },
+        'left is at x = 0, right at x = spacing; right is as left by default',
+      ),
+      seed: seedSchema(),
+      supply: supplySchema(context),
+      electrons: section({ closure: choice(['local-field']).optional() }, 'how electrons follow the field').optional(),
+      observe: section(
+        {
+          until: quantity('time', { above: 0, max: 1e9, text: 'above 0 and up to 1e9 s' }),
+          currents: z
+            .array(quantity('current', POSITIVE), { error: () => 'a list of currents, e.g. [1 nA, 1 uA]' })
+            .max(1000, { error: () => 'at most 1000 currents' })
+            .optional(),
+        },
+        'how long, and which conduction currents to report when first crossed',
+      ),
+      numerics: section(
+        {
+          cells: pureNumber('a whole number', { min: 20, max: 5000, text: 'from 20 to 5000' }, 150, true).optional(),
+          tolerance: pureNumber('a number', { min: 1e-8, max: 0.1, text: 'from 1e-8 to 0.1' }, 1e-3).optional(),
+        },
+        'defaults: cells the choice of the program, tolerance 1e-3',
+      ).optional(),
+    },
+    'A gap, its gas and electrodes, what feeds it, and how long to watch it',
+  ) as unknown as z.ZodType<CaseInput>;
+}
+
+function gapSchema(): z.ZodType<CaseInput['gap']> {
+  const length = { above: 0, max: 100, text: 'above 0 and up to 100 m' };
+  return section(
+    {
+      geometry: choice(['planar']),
+      spacing: quantity('length', length),
+      area: quantity('area', { above: 0, max: 1e4, text: 'above 0 and up to 1e4 m^2' }),
+      longest_path: quantity('length', { above: 0, max: 1e3, text: 'above 0 and up to 1 km' }).optional(),
+    },
+    'longest_path: the longest way around the gap that a discharge could take; default the spacing',
+  ).check(
+    across(({ spacing, longest_path }, report) => {
+      if (typeof spacing !== 'number' || typeof longest_path !== 'number' || longest_path >= spacing) return;
+      report(['longest_path'], 'a length not below gap.spacing', { code: 'inconsistent' });
+    }),
+  ) as unknown as z.ZodType<CaseInput['gap']>;
+}
+
+function gasSchema(context: SchemaContext): z.ZodType<CaseInput['gas']> {
+  return section(
+    {
+      name: choice(context.gasNames as [string, ...string[]]).optional(),
+      pressure: quantity('pressure', { min: 1e-3, max: 1e6, text: 'from 1e-3 Pa to 1e6 Pa' }),
+      temperature: quantity('temperature', TEMPERATURE).optional(),
+      coefficients: coefficientsSchema(context).optional(),
+    },
+    'name: built-in data; coefficients: your own, alone or in place of single built-in ones',
+  ).check(
+    across(({ name, coefficients }, report) => {
+      if (name === undefined && coefficients === undefined)
+        report([], 'a name, coefficients, or both', { code: 'missing-key', found: 'neither' });
+      if (name !== undefined || typeof coefficients !== 'object' || coefficients === null || Array.isArray(coefficients)) return;
+      for (const key of ['ionisation', 'electron_mobility', 'ion_mobility']) {
+        if (!(key in coefficients))
+          report(['coefficients', key], `${key}, required without gas.name`, { code: 'missing-key', found: 'nothing' });
+      }
+    }),
+  ) as unknown as z.ZodType<CaseInput['gas']>;
+}
+
+function coefficientsSchema({ reader }: SchemaContext): z.ZodType<CoefficientsInput> {
+  const mobility = (): z.ZodType<PlainInput> => mobilitySchema(reader);
+  const energy = (): z.ZodType<PlainInput> => energySchema(reader);
+  return section(
+    {
+      ionisation: growthSchema(reader).optional(),
+      attachment: growthSchema(reader).optional(),
+      electron_mobility: mobility().optional(),
+      electron_energy: energy().optional(),
+      ion_mobility: mobility().optional(),
+      ion_energy: energy().optional(),
+      negative_ion_mobility: mobility().optional(),
+      negative_ion_energy: energy().optional(),
+      recombination: quantityOf(['recombination'], NOT_NEGATIVE).optional(),
+      reference_temperature: quantity('temperature', TEMPERATURE).optional(),
+    },
+    'against pressure at reference_temperature, or against density: the dimension of each unit decides',
+  ) as unknown as z.ZodType<CoefficientsInput>;
+}
+
+const validity = (): Record<'valid_from' | 'valid_to' | 'reference_temperature', z.ZodType> => ({
+  valid_from: quantityOf(EITHER_FIELD, NOT_NEGATIVE).optional(),
+  valid_to: quantityOf(EITHER_FIELD, POSITIVE).optional(),
+  reference_temperature: quantity('temperature', TEMPERATURE).optional(),
+});
+
+const validityInOrder = (): z.core.$ZodCheck<unknown> =>
+  across(({ valid_from, valid_to }, report) => {
+    const from = valid_from as Dimensioned | undefined;
+    const to = valid_to as Dimensioned | undefined;
+    if (from?.dimension === undefined || to?.dimension === undefined) return;
+    if (from.dimension !== to.dimension) report(['valid_to'], 'the same kind of field as valid_from', { code: 'inconsistent' });
+    else if (!(to.value > from.value)) report(['valid_to'], 'a field above valid_from', { code: 'inconsistent' });
+  });
+
+/** α or η: an exponential, a root form, or a table. */
+function growthSchema(reader: TableReader): z.ZodType<GrowthInput> {
+  const growth = quantityOf(EITHER_GROWTH, POSITIVE);
+  return section(
+    {
+      form: choice(['exponential', 'root']).optional(),
+      A: growth.optional(),
+      B: quantityOf(EITHER_FIELD, POSITIVE).optional(),
+      C: growth.optional(),
+      D: quantityOf(['rootFieldOverPressure', 'rootReducedField'], POSITIVE).optional(),
+      table: table(reader, [
+        { key: 'reduced_field', dimensions: EITHER_FIELD, bounds: NOT_NEGATIVE },
+        { key: 'coefficient', dimensions: EITHER_GROWTH, bounds: NOT_NEGATIVE },
+      ]).optional(),
+      ...validity(),
+    },
+    'exponential: A exp(-B p/E); root: C exp(-D sqrt(p/E)); or a table',
+  )
+    .check(exactlyOne(['form', 'table']))
+    .check(
+      across((value, report) => {
+        const own = value.form === 'exponential' ? ['A', 'B'] : value.form === 'root' ? ['C', 'D'] : [];
+        for (const key of own)
+          if (value[key] === undefined)
+            report([key], `${key}, required with form: ${value.form}`, { code: 'missing-key', found: 'nothing' });
+        if (own.length === 0 && value.table === undefined) return;
+        for (const key of ['A', 'B', 'C', 'D'].filter((k) => !own.includes(k) && value[k] !== undefined)) {
+          report([key], own.length > 0 ? `only ${own.join(' and ')} with form: ${value.form}` : 'no constants beside a table', {
+            code: 'either-or',
+            found: key,
+          });
+        }
+      }),
+    )
+    .check(
+      across((value, report) => {
+        const loaded = value.table as LoadedTable | undefined;
+        if (loaded?.columns?.length !== 2) return;
+        const [field, coefficient] = loaded.columns;
+        const firstPositive = coefficient.values.findIndex((y) => y > 0);
+        const zeroAbove = firstPositive >= 0 && coefficient.values.slice(firstPositive).some((y) => y === 0);
+        if (firstPositive < 0 || firstPositive > coefficient.values.length - 2) {
+          report(['table', 'coefficient'], 'at least two rows above 0', { code: 'table', found: firstPositive < 0 ? 'none' : 'one' });
+        } else if (zeroAbove)
+          report(['table', 'coefficient'], 'zeros only below the first row above 0 (its logarithm is interpolated)', {
+            code: 'table',
+            found: '0 in a later row',
+          });
+        else if (field.values[firstPositive] === 0)
+          report(['table', 'coefficient'], '0 at no field', { code: 'table', found: `${coefficient.values[0]}` });
+      }),
+    )
+    .check(validityInOrder()) as unknown as z.ZodType<GrowthInput>;
+}
+
+const BARE_MOBILITY = {
+  on: 'mobility',
+  expected:
+    'a mobility times a pressure, e.g. 1.5e3 cm^2 Torr/(V s), or times a density, e.g. 1e24 1/(m V s); a reduced mobility (at 273.15 K and 760 Torr) is written { K0: 1.5 cm^2/(V s) }',
+} as const;
+
+function mobilitySchema(reader: TableReader): z.ZodType<PlainInput> {
+  const value = quantityOf(EITHER_MOBILITY, POSITIVE, BARE_MOBILITY);
+  const parts = section(
+    {
+      value: value.optional(),
+      K0: quantity('mobility', POSITIVE).optional(),
+      table: table(reader, [
+        { key: 'reduced_field', dimensions: EITHER_FIELD, bounds: NOT_NEGATIVE },
+        { key: 'coefficient', dimensions: EITHER_MOBILITY, bounds: POSITIVE },
+      ]).optional(),
+      ...validity(),
+    },
+    'K0: the reduced mobility, at 273.15 K and 760 Torr',
+  )
+    .check(exactlyOne(['value', 'K0', 'table']))
+    .check(validityInOrder());
+  return z.union([value, parts], {
+    error: () => 'a mobility times a pressure, e.g. 1.5e3 cm^2 Torr/(V s), or { K0: … } or { table: … }',
+  }) as unknown as z.ZodType<PlainInput>;
+}
+
+function energySchema(reader: TableReader): z.ZodType<PlainInput> {
+  const bounds = { min: 0, max: 1e4, text: 'from 0 to 10 kV' };
+  const value = quantityOf(['voltage'], bounds);
+  const parts = section(
+    {
+      value: value.optional(),
+      table: table(reader, [
+        { key: 'reduced_field', dimensions: EITHER_FIELD, bounds: NOT_NEGATIVE },
+        { key: 'coefficient', dimensions: ['voltage'], bounds },
+      ]).optional(),
+      ...validity(),
+    },
+    'D/mu',
+  )
+    .check(exactlyOne(['value', 'table']))
+    .check(validityInOrder());
+  return z.union([value, parts], { error: () => 'a voltage (D/mu), e.g. 1 V, or { table: … }' }) as unknown as z.ZodType<PlainInput>;
+}
+
+function electrodeSchema({ materialNames }: SchemaContext): z.ZodType<ElectrodeInput> {
+  return section(
+    {
+      material: choice(materialNames as [string, ...string[]]).optional(),
+      ion_yield: pureNumber('electrons per ion', { min: 0, max: 10, text: 'from 0 to 10' }, 0.02).optional(),
+    },
+    'material: its built-in yield; ion_yield: electrons per arriving ion, wins over it',
+  ).check(
+    across(({ material, ion_yield }, report) => {
+      if (material === undefined && ion_yield === undefined)
+        report([], 'a material or an ion_yield', { code: 'missing-key', found: 'neither' });
+    }),
+  ) as unknown as z.ZodType<ElectrodeInput>;
+}
+
+function seedSchema(): z.ZodType<CaseInput['seed']> {
+  return section(
+    { cathode_current: quantity('current', NOT_NEGATIVE), electrons: pureNumber('a number of electrons', NOT_NEGATIVE, 1).optional() },
+    'cathode_current leaves whichever wall is the cathode; electrons are released there at t = 0',
+  ).check(
+    across(({ cathode_current, electrons }, report) => {
+      if (cathode_current !== 0 || (electrons !== undefined && electrons !== 0)) return;
+      report(['cathode_current'], 'a current above 0, or electrons above 0 beside it', { code: 'inconsistent' });
+    }),
+  ) as unknown as z.ZodType<CaseInput['seed']>;
+}
+
+function supplySchema({ reader }: SchemaContext): z.ZodType<CaseInput['supply']> {
+  const voltage = section(
+    {
+      step: quantity('voltage', VOLTAGE).optional(),
+      rise_time: quantity('time', NOT_NEGATIVE).optional(),
+      ramp: section(
+        { from: quantity('voltage', VOLTAGE), to: quantity('voltage', VOLTAGE), rate: quantity('voltageRate', POSITIVE) },
+        'from `from` at t = 0 at `rate` towards `to`, then held',
+      ).optional(),
+      table: table(reader, [
+        { key: 'time', dimensions: ['time'] },
+        { key: 'voltage', dimensions: ['voltage'], bounds: VOLTAGE },
+      ]).optional(),
+    },
+    'a step, a ramp or a table; positive makes the left electrode the cathode',
+  )
+    .check(exactlyOne(['step', 'ramp', 'table']))
+    .check(
+      across(({ step, rise_time }, report) => {
+        if (rise_time !== undefined && step === undefined)
+          report(['rise_time'], 'rise_time only with step', { code: 'either-or', found: 'rise_time' });
+      }),
+    );
+  return section(
+    {
+      voltage,
+      series_resistance: quantity('resistance', { min: 0, max: 1e18, text: 'from 0 ohm to 1e18 ohm' }),
+      parallel_capacitance: quantity('capacitance', { min: 0, max: 1e3, text: 'from 0 to 1 kF' }).optional(),
+      current_limit: quantity('current', POSITIVE).optional(),
+      trip: section(
+        {
+          current: quantity('current', POSITIVE),
+          delay: quantity('time', NOT_NEGATIVE),
+          senses: choice(['gap', 'supply']).optional(),
+          action: choice(['open', 'zero']).optional(),
+        },
+        'acts `delay` after the current first exceeds `current`, once',
+      ).optional(),
+      initial_gap_voltage: quantity('voltage', VOLTAGE).optional(),
+    },
+    'parallel_capacitance default 0; current_limit and trip default none; initial_gap_voltage default 0',
+  ).check(across(checkSupply)) as unknown as z.ZodType<CaseInput['supply']>;
+}
+
+function checkSupply(
+  value: Readonly<Record<string, unknown>>,
+  report: (path: readonly PropertyKey[], expected: string, detail: { code: 'inconsistent'; found?: string }) => void,
+): void {
+  const { voltage, trip } = value as Partial<CaseInput['supply']>;
+  if (value.series_resistance === 0 && trip?.action === 'zero' && value.current_limit === undefined) {
+    report(['trip', 'action'], 'open, or a series_resistance or current_limit to take up the jump of the supply to 0 V', {
+      code: 'inconsistent',
+      found: 'zero behind 0 ohm',
+    });
+  }
+  if (value.initial_gap_voltage !== undefined && value.initial_gap_voltage !== 0) return;
+  const nowhere = 'a voltage that differs from 0 V at some time';
+  if (voltage?.step === 0) report(['voltage', 'step'], nowhere, { code: 'inconsistent' });
+  if (voltage?.ramp?.from === 0 && voltage.ramp.to === 0) report(['voltage', 'ramp', 'to'], nowhere, { code: 'inconsistent' });
+  const column = voltage?.table?.columns?.[1];
+  if (column?.values.every((v) => v === 0))
+    report(['voltage', 'table', 'voltage'], nowhere, { code: 'inconsistent', found: '0 V in every row' });
+}

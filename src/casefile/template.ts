@@ -1,0 +1,52 @@
+/** A commented case to start from; it validates as it stands. */
+export function caseTemplate(): string {
+  return TEMPLATE;
+}
+
+const TEMPLATE = `# Every quantity carries its unit: 6 mm, 1.2 Torr, 100 kohm, 12 1/(cm Torr). Units are case-sensitive; a/(b c) needs its parentheses.
+# Lines that start with "# " show optional entries; what they default to stands beside them.
+
+title: Bias feedthrough during an argon backfill
+
+gap:
+  geometry: planar
+  spacing: 4 mm                 # between the electrodes
+  area: 3 cm^2                  # that faces the other electrode
+  longest_path: 25 mm           # the longest way around that a discharge could take; default: the spacing
+
+gas:
+  name: argon                   # built-in data; \`gapwake gas\` lists them
+  pressure: 2 mbar
+  temperature: 20 °C            # default 293.15 K
+  # coefficients:               # your own, alone or in place of single built-in ones
+  #   ionisation: { form: exponential, A: 12 1/(cm Torr), B: 180 V/(cm Torr), valid_from: 100 V/(cm Torr), valid_to: 600 V/(cm Torr) }
+  #   electron_mobility: 3.3e5 cm^2 Torr/(V s)
+  #   ion_mobility: { K0: 1.5 cm^2/(V s) }      # reduced mobility; or mobility times pressure or density
+  #   reference_temperature: 293.15 K           # at which data against pressure hold
+
+electrodes:                     # left is at x = 0, right at x = spacing
+  left: { ion_yield: 0.02 }     # electrons per arriving ion; or { material: NAME } for a built-in yield
+  # right: { ion_yield: 0.02 }  # default: same as left
+
+seed:
+  cathode_current: 1 pA         # leaves whichever electrode is the cathode
+  # electrons: 1                # released at the cathode at t = 0; default 0
+
+supply:
+  voltage: { step: 350 V, rise_time: 10 us }    # positive: the left electrode is the cathode; rise_time: default 0 s
+  # voltage: { ramp: { from: 0 V, to: 500 V, rate: 50 V/s } }
+  # voltage: { table: { file: bias.csv, time: t, voltage: bias } }
+  series_resistance: 220 kohm   # 0 ohm is allowed
+  parallel_capacitance: 15 pF   # default 0 F
+  # current_limit: 2 mA         # default none
+  # trip: { current: 1 mA, delay: 50 us, senses: gap, action: open }   # default none; senses: gap or supply; action: open or zero
+  # initial_gap_voltage: 0 V    # what the gap holds at t = 0
+
+electrons: { closure: local-field }
+
+observe:
+  until: 20 ms                  # ends earlier when steady or died out
+  currents: [10 nA, 1 uA, 100 uA]   # report when the conduction current first crosses each
+
+# numerics: { cells: 150, tolerance: 1e-3 }     # cells: default the program's choice
+`;
