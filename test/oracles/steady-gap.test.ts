@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { ELEMENTARY_CHARGE, openCase, VACUUM_PERMITTIVITY } from './open-case.ts';
-import { type SteadyGap, steadyAtCurrent, steadyOnLoadLine, voltageCurrentCurve } from './steady-gap.ts';
+import { type SteadyGap, steadyAtCurrent, steadyAtVoltage, steadyOnLoadLine, voltageCurrentCurve } from './steady-gap.ts';
 
 const load = { supplyVoltage: openCase.supplyVoltage, resistance: openCase.seriesResistance };
 const withoutDiffusion: SteadyGap = { ...openCase, electronEnergy: 0, ionEnergy: 0 };
@@ -87,6 +87,16 @@ describe('the steady discharge (oracle)', () => {
     const multiplication = Math.exp(openCase.alpha(state.voltage / openCase.spacing) * openCase.spacing);
     const feedback = openCase.ionYield * (multiplication - 1);
     expect((multiplication / (1 - feedback)) * 1e-14).toBeCloseTo(1e-12, 17);
+  });
+
+  it('has one state of 190 V on the falling branch and one in the abnormal glow', () => {
+    const falling = steadyAtVoltage(openCase, 190, [1e-5, 1e-3]);
+    const abnormal = steadyAtVoltage(openCase, 190, [1e-3, 3e-2]);
+    expect(falling.voltage).toBeCloseTo(190, 5);
+    expect(abnormal.voltage).toBeCloseTo(190, 5);
+    expect(falling.current).toBeLessThan(5e-4);
+    expect(abnormal.current).toBeGreaterThan(5e-3);
+    expect(() => steadyAtVoltage(openCase, 190, [1e-5, 2e-5])).toThrow('bracket');
   });
 
   it('takes mobilities and energies as functions of the field', () => {

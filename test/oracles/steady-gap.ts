@@ -1,6 +1,6 @@
 /** Oracle: the steady discharge of a planar gap, with space charge and diffusion.
  *
- *  Contains: V, cathode field and profiles for a given current, the state on a load line, and a V(j) curve, as a boundary value
+ *  Contains: V, cathode field and profiles for a given current, a given voltage or a load line, and a V(j) curve, as a boundary value
  *  problem in x solved by fourth-order collocation with continuation in the current:
  *      Γ_e = μ_e n_e E − D_e n_e′,   Γ_p = μ_p n_p E + D_p n_p′,   Γ_e′ = α(|E|) |Γ_e|,   Γ_e + Γ_p = J/e,
  *      E′ = −(e/ε0)(n_p − n_e),
@@ -92,26 +92,53 @@ export function steadyOnLoadLine(
   };
   // a gap voltage of zero would take all of the supply, so the root lies below this current
   let high = load.supplyVoltage / load.resistance;
-  let low = high;
   let atHigh = excess(high);
-  let atLow = atHigh;
-  while (atLow > 0) {
-    high = low;
-    atHigh = atLow;
-    low = high / 1.2;
+  for (;;) {
+    const low = high / 1.2;
     if (low < 1e-16) throw new Error('steady gap: no state on this load line');
-    atLow = excess(low);
+    const atLow = excess(low);
+    if (atLow <= 0) {
+      closeIn(excess, [low, atLow], [high, atHigh], 1e-8 * load.supplyVoltage);
+      return branch.refined(accuracy);
+    }
+    [high, atHigh] = [low, atLow];
   }
-  // secant kept inside the bracket
-  for (let i = 0; i < 60 && high / low - 1 > 1e-10; i++) {
-    let next = low - (atLow * (high - low)) / (atHigh - atLow);
-    if (i % 3 === 2) next = (low + high) / 2;
-    const value = excess(next);
-    if (Math.abs(value) < 1e-8 * load.supplyVoltage) break;
+}
+
+/** The state of a given voltage whose current lies between two currents on either side of it: V(j) is not monotone, so the
+ *  caller says which branch.
+ *  @param voltage  [V]   @param between  two currents [A] whose voltages bracket it */
+export function steadyAtVoltage(
+  gap: SteadyGap,
+  voltage: number,
+  between: readonly [number, number],
+  options: SteadyOptions = {},
+): SteadyState {
+  const accuracy = options.accuracy ?? 1e-6;
+  const branch = new Branch(gap);
+  const excess = (current: number): number => {
+    branch.goTo(current);
+    return branch.refined(accuracy).voltage - voltage;
+  };
+  const ends = between.map((current): [number, number] => [current, excess(current)]);
+  const [low, high] = ends[0][1] < ends[1][1] ? ends : [ends[1], ends[0]];
+  if (low[1] > 0 || high[1] < 0) throw new Error('steady gap: these currents do not bracket the voltage');
+  closeIn(excess, low, high, 1e-8 * voltage);
+  return branch.refined(accuracy);
+}
+
+/** Secant steps kept inside a bracket [place, value]; leaves the function evaluated at the root last. */
+function closeIn(f: (x: number) => number, below: readonly [number, number], above: readonly [number, number], tolerance: number): void {
+  let [low, atLow] = below;
+  let [high, atHigh] = above;
+  for (let i = 0; i < 60; i++) {
+    const next = i % 3 === 2 ? (low + high) / 2 : low - (atLow * (high - low)) / (atHigh - atLow);
+    const value = f(next);
+    if (Math.abs(value) < tolerance) return;
     if (value > 0) [high, atHigh] = [next, value];
     else [low, atLow] = [next, value];
   }
-  return branch.refined(accuracy);
+  throw new Error('steady gap: the current did not settle');
 }
 
 /** One branch of states, followed in the current from the dark discharge upwards. */

@@ -39,6 +39,11 @@ describe('feedback', () => {
     expect(feedback(100, 300, 10, 0.07)).toBeCloseTo(0.07 / 2, 12);
     const attaching: Multiplication = { ionisation: () => 1e-22, attachment: () => 3e-22, ionYield: () => 0.07 };
     expect(sustainingColumn(attaching, 1e-19)).toBeNull();
+    // the limit decides: γ α/(η − α) = 2/3 never reaches 1, 2 does
+    const strongCathode = { ...attaching, ionYield: () => 0.5 };
+    expect(sustainingColumn({ ...strongCathode, attachment: () => 1.75e-22 }, 1e-19)).toBeNull();
+    const column = sustainingColumn({ ...strongCathode, attachment: () => 1.25e-22 }, 1e-19) as number;
+    expect(feedback(1e-22, 1.25e-22, column, 0.5)).toBeCloseTo(1, 12);
   });
 });
 
