@@ -29,7 +29,9 @@ export function openHdf5(path: string): Hdf5Reader {
   if (size > largestFile) throw new ResultFileError('too-large', path, `is ${size} bytes long; at most ${largestFile} are read`);
   const file = decoding(path, () => {
     const bytes = readFileSync(path);
-    return new File(bytes.buffer.slice(bytes.byteOffset, bytes.byteOffset + bytes.byteLength) as ArrayBuffer);
+    const whole = bytes.byteLength === bytes.buffer.byteLength;
+    // A small file is a slice of a pool of Node's: jsfive counts from the start of the buffer.
+    return new File((whole ? bytes.buffer : bytes.buffer.slice(bytes.byteOffset, bytes.byteOffset + bytes.byteLength)) as ArrayBuffer);
   });
   const names = new Set(decoding(path, () => file.keys));
 

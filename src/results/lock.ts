@@ -41,6 +41,10 @@ function create(lockPath: string): boolean {
     const descriptor = openSync(lockPath, 'wx');
     try {
       writeSync(descriptor, `${process.pid}\n`);
+    } catch (thrown) {
+      // A full disk: the file was made, its content was not.
+      removeIfThere(lockPath);
+      throw thrown;
     } finally {
       closeSync(descriptor);
     }

@@ -247,12 +247,11 @@ describe('one writer', () => {
     expect(readFileSync(path, 'utf8')).toBe('packages:\n  - one 1.2.3\n');
   });
 
-  test('what a killed process left is recognised and replaced', async () => {
+  test.each([0, 300])('what a process killed after %i snapshots left is recognised and replaced', async (count) => {
     const place = folder();
     const path = join(place, 'run.h5');
-    const child = spawn(process.execPath, ['--import', 'tsx/esm', fileURLToPath(new URL('killed-writer.ts', import.meta.url)), path], {
-      stdio: ['ignore', 'pipe', 'inherit'],
-    });
+    const script = fileURLToPath(new URL('killed-writer.ts', import.meta.url));
+    const child = spawn(process.execPath, ['--import', 'tsx/esm', script, path, `${count}`], { stdio: ['ignore', 'pipe', 'inherit'] });
     await once(child.stdout, 'data');
     child.kill('SIGKILL');
     await once(child, 'exit');
