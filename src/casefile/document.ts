@@ -72,7 +72,7 @@ export function parseSource(text: string, file: string): ParsedDocument {
       merge: false,
       lineCounter: lines,
       prettyErrors: false,
-      logLevel: 'silent',
+      logLevel: 'error',
     });
   } catch (error) {
     // the YAML library recurses into nested flow collections
@@ -137,7 +137,7 @@ function scan(text: string): 'depth' | 'length' | null {
   const parser = new Parser();
   let tokens = 0;
   for (const lexeme of new Lexer().lex(text)) {
-    for (const _ of parser.next(lexeme)) continue;
+    for (const _ of parser.next(lexeme));
     if (parser.stack.length > 3 * MAX_DEPTH) return 'depth';
     if (++tokens > MAX_TOKENS) return 'length';
   }

@@ -137,32 +137,50 @@ export function section<Shape extends z.core.$ZodLooseShape>(shape: Shape, descr
   return z.strictObject(shape, { error: () => `a mapping with the keys ${keys}` }).meta({ description });
 }
 
-/** A check across the keys of a mapping. It runs even if single keys are wrong, so that every mistake is reported at once:
- *  what it sees of a wrong key is not of the key's type, so it must test before it uses. */
-export function across(check: (value: Readonly<Record<string, unknown>>, report: Report) => void): z.core.$ZodCheck<unknown> {
+type Entries = Readonly<Record<string, unknown>>;
+
+/** A check across the keys of a mapping. It runs even if single keys are wrong, so that every mistake is reported at once.
+ *
+ *  @param check  sees the entries without the wrong ones (`sound`), and which are there at all (`given`) */
+export function across(check: (sound: Entries, report: Report, given: Entries) => void): z.core.$ZodCheck<unknown> {
   return z.core._check<unknown>(
     (payload) => {
-      check(payload.value as Readonly<Record<string, unknown>>, (path, expected, detail) => {
-        payload.issues.push({
-          code: 'custom',
-          input: payload.value,
-          path: [...path],
-          message: expected,
-          params: { ...detail },
-          continue: true,
-        } as never);
-      });
+      const given = payload.value as Entries;
+      const sound = payload.issues.reduce((value, issue) => without(value, issue.path ?? []), given);
+      check(
+        sound,
+        (path, expected, detail) => {
+          payload.issues.push({
+            code: 'custom',
+            input: payload.value,
+            path: [...path],
+            message: expected,
+            params: { ...detail },
+            continue: true,
+          } as never);
+        },
+        given,
+      );
     },
     { when: (payload) => typeof payload.value === 'object' && payload.value !== null && !Array.isArray(payload.value) },
   );
+}
+
+/** A copy without the entry at a path. */
+function without(value: Entries, path: readonly PropertyKey[]): Entries {
+  if (path.length === 0 || typeof value !== 'object' || value === null || Array.isArray(value)) return value;
+  const key = String(path[0]);
+  const { [key]: inner, ...rest } = value;
+  if (path.length === 1 || typeof inner !== 'object' || inner === null || Array.isArray(inner)) return rest;
+  return { ...rest, [key]: without(inner as Entries, path.slice(1)) };
 }
 
 export type Report = (path: readonly PropertyKey[], expected: string, detail: IssueDetail) => void;
 
 /** Reports unless exactly one of the arms is there. */
 export function exactlyOne(arms: readonly string[]): z.core.$ZodCheck<unknown> {
-  return across((value, report) => {
-    const given = arms.filter((arm) => value[arm] !== undefined);
+  return across((_, report, entries) => {
+    const given = arms.filter((arm) => entries[arm] !== undefined);
     const expected = `exactly one of ${arms.slice(0, -1).join(', ')} and ${arms[arms.length - 1]}`;
     if (given.length === 0) report([], expected, { code: 'either-or', found: 'none of them' });
     if (given.length > 1) report([given[1]], expected, { code: 'either-or', found: given.join(' and ') });

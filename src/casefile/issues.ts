@@ -64,13 +64,16 @@ function convert(issue: z.core.$ZodIssue, base: Path, context: Context): Problem
     const names = issue.values.map(String);
     return [make('unknown-name', place, path, issue.message, clip(value) || 'nothing', nearestSpelling(value, names))];
   }
-  return [make(codeOf(value), place, path, issue.message, describe(value, issue.message), null)];
+  return [make(codeOf(value, issue.message), place, path, issue.message, describe(value, issue.message), null)];
 }
 
 /** The code for a value of the wrong type. */
-function codeOf(value: unknown): ProblemCode {
+function codeOf(value: unknown, expected: string): ProblemCode {
   if (value === undefined || value === null) return 'missing-key';
-  if (typeof value === 'number') return Number.isFinite(value) ? 'missing-unit' : 'not-finite';
+  if (typeof value === 'number') {
+    if (!Number.isFinite(value)) return 'not-finite';
+    return isOfQuantity(expected) ? 'missing-unit' : 'wrong-type';
+  }
   return 'wrong-type';
 }
 
@@ -79,8 +82,13 @@ function describe(value: unknown, expected = ''): string {
   if (value === undefined || value === null) return 'nothing';
   if (Array.isArray(value)) return 'a list';
   if (typeof value === 'object') return 'a mapping';
-  if (typeof value === 'number' && Number.isFinite(value) && expected.includes(', e.g. ')) return `${value} without a unit`;
+  if (typeof value === 'number' && Number.isFinite(value) && isOfQuantity(expected)) return `${value} without a unit`;
   return clip(String(value)) || 'nothing';
+}
+
+/** an expectation that shows how a quantity is written */
+function isOfQuantity(expected: string): boolean {
+  return expected.includes(', e.g. ');
 }
 
 function valueAt(raw: unknown, path: Path): unknown {

@@ -59,7 +59,7 @@ function parseValue(text: string): Value {
   const expected = 'one YAML flow value, as in 420 V, {step: 420 V} or [1 nA, 1 uA]';
   if (text.length > 100_000) return { ok: false, expected: 'at most 100000 characters' };
   try {
-    const document = parseDocument(text, { version: '1.2', schema: 'core', merge: false, prettyErrors: false, logLevel: 'silent' });
+    const document = parseDocument(text, { version: '1.2', schema: 'core', merge: false, prettyErrors: false, logLevel: 'error' });
     const { contents } = document;
     if (document.errors.length > 0 || document.warnings.length > 0 || document.directives?.yaml.version !== '1.2')
       return { ok: false, expected };

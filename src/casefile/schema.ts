@@ -175,7 +175,7 @@ function gasSchema(context: SchemaContext): z.ZodType<CaseInput['gas']> {
     },
     'name: built-in data; coefficients: your own, alone or in place of single built-in ones',
   ).check(
-    across(({ name, coefficients }, report) => {
+    across((_, report, { name, coefficients }) => {
       if (name === undefined && coefficients === undefined)
         report([], 'a name, coefficients, or both', { code: 'missing-key', found: 'neither' });
       if (name !== undefined || typeof coefficients !== 'object' || coefficients === null || Array.isArray(coefficients)) return;
@@ -242,7 +242,7 @@ function growthSchema(reader: TableReader): z.ZodType<GrowthInput> {
   )
     .check(exactlyOne(['form', 'table']))
     .check(
-      across((value, report) => {
+      across((_, report, value) => {
         const own = value.form === 'exponential' ? ['A', 'B'] : value.form === 'root' ? ['C', 'D'] : [];
         for (const key of own)
           if (value[key] === undefined)
@@ -331,7 +331,7 @@ function electrodeSchema({ materialNames }: SchemaContext): z.ZodType<ElectrodeI
     },
     'material: its built-in yield; ion_yield: electrons per arriving ion, wins over it',
   ).check(
-    across(({ material, ion_yield }, report) => {
+    across((_, report, { material, ion_yield }) => {
       if (material === undefined && ion_yield === undefined)
         report([], 'a material or an ion_yield', { code: 'missing-key', found: 'neither' });
     }),
@@ -343,8 +343,8 @@ function seedSchema(): z.ZodType<CaseInput['seed']> {
     { cathode_current: quantity('current', NOT_NEGATIVE), electrons: pureNumber('a number of electrons', NOT_NEGATIVE, 1).optional() },
     'cathode_current leaves whichever wall is the cathode; electrons are released there at t = 0',
   ).check(
-    across(({ cathode_current, electrons }, report) => {
-      if (cathode_current !== 0 || (electrons !== undefined && electrons !== 0)) return;
+    across(({ cathode_current, electrons }, report, given) => {
+      if (cathode_current !== 0 || (given.electrons !== undefined && electrons !== 0)) return;
       report(['cathode_current'], 'a current above 0, or electrons above 0 beside it', { code: 'inconsistent' });
     }),
   ) as unknown as z.ZodType<CaseInput['seed']>;
@@ -368,7 +368,7 @@ function supplySchema({ reader }: SchemaContext): z.ZodType<CaseInput['supply']>
   )
     .check(exactlyOne(['step', 'ramp', 'table']))
     .check(
-      across(({ step, rise_time }, report) => {
+      across((_, report, { step, rise_time }) => {
         if (rise_time !== undefined && step === undefined)
           report(['rise_time'], 'rise_time only with step', { code: 'either-or', found: 'rise_time' });
       }),
@@ -397,15 +397,16 @@ function supplySchema({ reader }: SchemaContext): z.ZodType<CaseInput['supply']>
 function checkSupply(
   value: Readonly<Record<string, unknown>>,
   report: (path: readonly PropertyKey[], expected: string, detail: { code: 'inconsistent'; found?: string }) => void,
+  given: Readonly<Record<string, unknown>>,
 ): void {
   const { voltage, trip } = value as Partial<CaseInput['supply']>;
-  if (value.series_resistance === 0 && trip?.action === 'zero' && value.current_limit === undefined) {
+  if (value.series_resistance === 0 && trip?.action === 'zero' && given.current_limit === undefined) {
     report(['trip', 'action'], 'open, or a series_resistance or current_limit to take up the jump of the supply to 0 V', {
       code: 'inconsistent',
       found: 'zero behind 0 ohm',
     });
   }
-  if (value.initial_gap_voltage !== undefined && value.initial_gap_voltage !== 0) return;
+  if (given.initial_gap_voltage !== undefined && value.initial_gap_voltage !== 0) return;
   const nowhere = 'a voltage that differs from 0 V at some time';
   if (voltage?.step === 0) report(['voltage', 'step'], nowhere, { code: 'inconsistent' });
   if (voltage?.ramp?.from === 0 && voltage.ramp.to === 0) report(['voltage', 'ramp', 'to'], nowhere, { code: 'inconsistent' });
