@@ -41,27 +41,60 @@ const scalarChunk = 512;
 const smallestFloat32 = 2 ** -126;
 const longestTitle = 1000;
 
-/** Starts a run file at `path`.
+/** A run file that is claimed, locked and open, before its layout is known: whatever speaks against it is known before a run begins. */
+export interface PreparedRunFile {
+  /** @throws ResultFileError */
+  begin(layout: RunLayout): RunWriter;
+  /** Removes what was written; does nothing after {@link PreparedRunFile.begin}, whose writer then answers for the file. */
+  abandon(): void;
+}
+
+/** Claims a run file at `path`.
  *  @throws ResultFileError when it cannot be written there: no such folder, no permission, a foreign file of this name, another writer */
-export async function openRunFile(path: string, layout: RunLayout): Promise<RunWriter> {
+export async function prepareRunFile(path: string): Promise<PreparedRunFile> {
   const output = claimOutput(path);
-  const fields = fieldVariables.filter(({ key }) => layout.negativeIons || !negativeIonFields.has(key));
-  const cells = layout.x.length;
-  const blockRows = Math.max(1, Math.min(longestBlock, Math.floor(blockValues / cells)));
   let file: Hdf5Writer | undefined;
   try {
     file = await createHdf5(output.partPath);
-    declare(file, layout.x, fields, blockRows);
+    // First and to disk: a part file is recognised as such even if the process is killed.
+    file.attribute('format', runFormat);
+    file.flush();
   } catch (thrown) {
     discard(output, file);
     throw typed(path, thrown);
   }
-  return runWriter(path, output, file, new Block(fields, cells, blockRows));
+  return preparedRunFile(path, output, file);
 }
 
-/** Dimensions, variables and the format first, and to disk: a part file is recognised as such even if the process is killed. */
+function preparedRunFile(path: string, output: Output, file: Hdf5Writer): PreparedRunFile {
+  let begun = false;
+  return {
+    begin: ({ x, negativeIons }) => {
+      begun = true;
+      const fields = fieldVariables.filter(({ key }) => negativeIons || !negativeIonFields.has(key));
+      const blockRows = Math.max(1, Math.min(longestBlock, Math.floor(blockValues / x.length)));
+      try {
+        declare(file, x, fields, blockRows);
+      } catch (thrown) {
+        discard(output, file);
+        throw typed(path, thrown);
+      }
+      return runWriter(path, output, file, new Block(fields, x.length, blockRows));
+    },
+    abandon: () => {
+      if (!begun) discard(output, file);
+    },
+  };
+}
+
+/** Starts a run file at `path`.
+ *  @throws ResultFileError as {@link prepareRunFile} */
+export async function openRunFile(path: string, layout: RunLayout): Promise<RunWriter> {
+  return (await prepareRunFile(path)).begin(layout);
+}
+
+/** Dimensions and variables. */
 function declare(file: Hdf5Writer, x: Float64Array, fields: readonly Variable<FieldKey>[], blockRows: number): void {
-  file.attribute('format', runFormat);
   file.scale(timeVariable.name, { chunk: scalarChunk });
   file.scale(xVariable.name, { data: x });
   for (const { name } of scalarVariables) {
