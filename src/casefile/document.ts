@@ -9,7 +9,6 @@ import {
   isScalar,
   isSeq,
   Lexer,
-  LineCounter,
   type Node,
   type ParsedNode,
   Parser,
@@ -39,7 +38,8 @@ export interface SourceDocument {
   readonly file: string;
   readonly text: string;
   readonly yaml: Document<ParsedNode>;
-  readonly lines: LineCounter;
+  /** where each line starts; the library's own counter loses count after some errors */
+  readonly lineStarts: readonly number[];
   /** nodes that a `--set` put in, with the argument's path; they stand in no file */
   readonly set: Map<Node, string>;
   /** paths that a `--set` removed */
@@ -63,14 +63,12 @@ export function parseSource(text: string, file: string): ParsedDocument {
   if (excess === 'depth') return deep;
   if (excess === 'length') return whole('too-large', `at most ${MAX_TOKENS} words and signs`, 'more');
 
-  const lines = new LineCounter();
   let yaml: Document<ParsedNode>;
   try {
     yaml = parseDocument(text, {
       version: '1.2',
       schema: 'core',
       merge: false,
-      lineCounter: lines,
       prettyErrors: false,
       logLevel: 'error',
     });
@@ -79,7 +77,7 @@ export function parseSource(text: string, file: string): ParsedDocument {
     if (error instanceof RangeError) return deep;
     throw error;
   }
-  const document: SourceDocument = { file, text, yaml, lines, set: new Map(), removed: new Set() };
+  const document: SourceDocument = { file, text, yaml, lineStarts: startsOfLines(text), set: new Map(), removed: new Set() };
   const at = (offset: number): Place => place(document, offset);
   const problems: Problem[] = [];
   const add = (code: ProblemCode, offset: number, expected: string, found: string): void => {
@@ -260,8 +258,22 @@ function placeOfNode(document: SourceDocument, node: Node): Place {
 }
 
 function place(document: SourceDocument, offset: number): Place {
-  const { line, col } = document.lines.linePos(offset);
-  return { file: document.file, line: Math.max(1, line), column: Math.max(1, col) };
+  const { lineStarts, text, file } = document;
+  const at = Math.max(0, Math.min(offset, text.length));
+  let low = 0;
+  let high = lineStarts.length - 1;
+  while (low < high) {
+    const middle = Math.ceil((low + high) / 2);
+    if (lineStarts[middle] <= at) low = middle;
+    else high = middle - 1;
+  }
+  return { file, line: low + 1, column: at - lineStarts[low] + 1 };
+}
+
+function startsOfLines(text: string): number[] {
+  const starts = [0];
+  for (let i = text.indexOf('\n'); i >= 0; i = text.indexOf('\n', i + 1)) starts.push(i + 1);
+  return starts;
 }
 
 /** A library message that may quote text from outside, on one line and shortened. */

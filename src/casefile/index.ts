@@ -79,7 +79,7 @@ export function readCase(
   if (plain.problems.some((p) => p.code === 'aliases' || p.code === 'too-deep')) return { ok: false, problems };
 
   const schema = caseSchema({ reader: onceEach(reader), gasNames: Object.keys(builtIns.gases), materialNames: builtIns.materials });
-  const validated = schema.safeParse(plain.value, { reportInput: false });
+  const validated = schema.safeParse(plain.value, { reportInput: false, jitless: true });
   if (!validated.success) problems.push(...problemsOf(validated.error.issues, schema, plain.value, document));
   problems.push(...missingYields(plain.value, builtIns, document));
   if (!validated.success || problems.length > 0) return { ok: false, problems: inOrder(problems) };
