@@ -30,6 +30,8 @@ export class GapSystem {
   voltageRate = 0;
   totalCurrentDensity = 0;
   supplyCurrent = 0;
+  /** what the gap and the capacitances would draw from an ideal supply [A] */
+  neededCurrent = 0;
 
   constructor(equations: GapEquations, circuit: Circuit) {
     this.equations = equations;
@@ -120,7 +122,8 @@ export class GapSystem {
     const { layout, grid, circuit, equations } = this;
     const V = y[layout.voltage];
     const slope = circuit.feed === 'ideal' ? this.#supplySlope : 0;
-    const supply = circuit.sourceCurrent(t, V, current + this.#capacitance * slope);
+    this.neededCurrent = current + this.#capacitance * slope;
+    const supply = circuit.sourceCurrent(t, V, this.neededCurrent);
     const rate = circuit.feed === 'ideal' ? slope : (supply - current) / this.#capacitance;
     const terminal = current + this.gapCapacitance * rate;
     const j = -terminal / grid.area;

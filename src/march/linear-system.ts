@@ -356,26 +356,26 @@ function assembleTwo(
       let bei = -ge * c;
       let bii = s - gi * c;
       if (f === 0) {
-        bei -= bee * eq.at.emissionLeft;
-        bii -= bie * eq.at.emissionLeft;
+        bei -= bee * emissionLeft;
+        bii -= bie * emissionLeft;
       } else if (f === cells) {
-        bei -= bee * eq.at.emissionRight;
-        bii -= bie * eq.at.emissionRight;
+        bei -= bee * emissionRight;
+        bii -= bie * emissionRight;
       }
       const cell0 = f - 2;
-      const firstJ = cell0 < 0 ? -cell0 : 0;
-      const lastJ = cells - cell0 < 4 ? cells - cell0 : 4;
+      const firstJ = Math.max(-cell0, 0);
+      const lastJ = Math.min(cells - cell0, 4);
       const shift = 2 * (cell0 - i);
-      const fromE = eFrom > firstJ ? eFrom : firstJ;
-      const toE = eTo < lastJ ? eTo : lastJ;
+      const fromE = Math.max(eFrom, firstJ);
+      const toE = Math.min(eTo, lastJ);
       for (let j = fromE; j < toE; j++) {
         const p = pe[4 * f + j];
         const at = shift + 2 * j;
         entries[diagonalE + at] += bee * p;
         entries[diagonalI + at + se - si] += bie * p;
       }
-      const fromI = iFrom > firstJ ? iFrom : firstJ;
-      const toI = iTo < lastJ ? iTo : lastJ;
+      const fromI = Math.max(iFrom, firstJ);
+      const toI = Math.min(iTo, lastJ);
       for (let j = fromI; j < toI; j++) {
         const p = pi[4 * f + j];
         const at = shift + 2 * j;

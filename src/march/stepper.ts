@@ -13,12 +13,17 @@ export class Stepper {
   readonly #L: Float64Array;
   #denseReady = false;
   /** state and rates at the start of the step, state at its end, difference of the embedded solution */
-  readonly start: Float64Array;
+  start: Float64Array;
   readonly startRates: Float64Array;
-  readonly end: Float64Array;
+  end: Float64Array;
   readonly error: Float64Array;
+  /** where the last attempt began [s] and how far it went [s] */
   time = 0;
   span = 0;
+  /** the two ends of the last attempt, for dense output; they stay valid after `proceed` until the next attempt */
+  #from: Float64Array;
+  #to: Float64Array;
+  #before: Float64Array;
   /** linear solves and factorisations so far */
   solves = 0;
   factorisations = 0;
@@ -36,23 +41,36 @@ export class Stepper {
     this.start = new Float64Array(system.layout.size);
     this.startRates = new Float64Array(n);
     this.end = new Float64Array(system.layout.size);
+    this.#before = new Float64Array(system.layout.size);
+    this.#from = this.start;
+    this.#to = this.end;
     this.error = this.#stages[scheme.c.length - 1];
   }
 
-  /** Takes `y` as the state at time t and linearises there. */
-  begin(t: number, y: Float64Array): void {
-    this.time = t;
-    this.start.set(y);
+  /** Linearises at `start`, the state at time t, after it was set or changed from outside. */
+  begin(t: number): void {
+    this.#system.linearise(t, this.start, this.startRates);
+  }
+
+  /** Makes the end of the last attempt the start of the next, at time t. */
+  proceed(t: number): void {
+    const spare = this.#before;
+    this.#before = this.start;
+    this.start = this.end;
+    this.end = spare;
     this.#system.linearise(t, this.start, this.startRates);
   }
 
   /** From `start` over h into `end`; `start` and its linearisation stay, so a rejected step is simply tried again.
    *  @returns the cell whose equations could not be solved, or −1 */
-  attempt(h: number): number {
+  attempt(t: number, h: number): number {
     const { a, g, c, d, m, gamma } = this.scheme;
     const system = this.#system;
     const n = this.#size;
+    this.time = t;
     this.span = h;
+    this.#from = this.start;
+    this.#to = this.end;
     this.#denseReady = false;
     const bad = system.factor(this.start, 1 / (h * gamma));
     this.factorisations++;
@@ -63,7 +81,7 @@ export class Stepper {
       if (i === 0) r.set(this.startRates);
       else {
         combine(this.#stage, this.start, stages, a[i], 1, i, n);
-        system.rates(this.time + c[i] * h, this.#stage, r);
+        system.rates(t + c[i] * h, this.#stage, r);
         combine(r, r, stages, g[i], 1 / h, i, n);
       }
       system.addTimeSlope(r, d[i] * h);
@@ -75,7 +93,7 @@ export class Stepper {
     return -1;
   }
 
-  /** The state at start + θ·span, 0 ≤ θ ≤ 1, into `out`. Third order. */
+  /** The state at time + θ·span of the last attempt, 0 ≤ θ ≤ 1, into `out`. Third order. */
   stateAt(theta: number, out: Float64Array): void {
     const n = this.#size;
     if (!this.#denseReady) {
@@ -87,9 +105,10 @@ export class Stepper {
       this.#denseReady = true;
     }
     const rest = 1 - theta;
-    const { start, end } = this;
+    const from = this.#from;
+    const to = this.#to;
     for (let i = 0; i < n; i++) {
-      out[i] = rest * start[i] + theta * (end[i] + rest * (this.#K[i] + theta * this.#L[i]));
+      out[i] = rest * from[i] + theta * (to[i] + rest * (this.#K[i] + theta * this.#L[i]));
     }
     this.#system.settle(out);
   }

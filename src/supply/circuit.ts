@@ -37,6 +37,11 @@ export class Circuit {
     return this.#voltage.nextCorner(t);
   }
 
+  /** Does the supply's slope change at t? */
+  isCorner(t: number): boolean {
+    return this.#voltage.isCorner(t);
+  }
+
   largestSupplyFrom(t: number): number {
     return this.feed === 'open' ? 0 : this.#voltage.largestFrom(t);
   }

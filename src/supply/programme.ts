@@ -56,6 +56,10 @@ export class Voltage {
     return x[this.#piece(t) + 1];
   }
 
+  isCorner(t: number): boolean {
+    return this.#times.includes(t);
+  }
+
   /** The largest |voltage| from time t [s] on. */
   largestFrom(t: number): number {
     let largest = Math.abs(this.at(t));

@@ -1,0 +1,9 @@
+import { formatQuantity } from '../units/format.ts';
+
+/** Quantities in sentences, in engineering units. */
+export const volts = (V: number): string => formatQuantity(V, 'V');
+export const seconds = (t: number): string => formatQuantity(t, 's');
+export const amperes = (I: number): string => formatQuantity(I, 'A');
+export const metres = (x: number): string => formatQuantity(x, 'm');
+/** a share or a relative change, in per cent with two or three digits */
+export const percent = (x: number): string => `${Number((100 * x).toPrecision(x !== 0 && Math.abs(x) < 0.1 ? 2 : 3))} %`;
