@@ -70,6 +70,16 @@ describe('--set PATH=VALUE', () => {
     const text = GOOD.replace('left: { ion_yield: 0.02 }', 'left: &e { ion_yield: 0.02 }\n  right: *e');
     const { left, right } = good(text, ['electrodes.right.ion_yield=0.05']).case.electrodes;
     expect([left.ionYield.typical, right.ionYield.typical]).toEqual([0.02, 0.05]);
+    // the entries that are not set stay as the anchor has them
+    const alike = OWN_GAS.replace('ionisation: {', 'ionisation: &i {').replace(
+      '    electron_mobility',
+      '    attachment: *i\n    electron_mobility',
+    );
+    const before = good(alike).case.gas.coefficients;
+    const after = good(alike, ['gas.coefficients.attachment.A=6 1/(cm Torr)']).case.gas.coefficients;
+    expect(after.ionisation).toEqual(before.ionisation);
+    if (before.ionisation.form.kind !== 'exponential') throw new Error('form');
+    expect(after.attachment?.form).toEqual({ ...before.ionisation.form, A: before.ionisation.form.A / 2 });
   });
 
   it('problems are placed at the argument', () => {
