@@ -10,7 +10,7 @@ export interface Gauss {
   settle(y: Float64Array): void;
   /** Σ weights·E of densities and E(0) in y, without storing E. */
   integral(y: Float64Array): number;
-  /** E at the right wall from densities and E(0) in y. */
+  /** E at the right wall from densities and E(0) in y; of rates as well. */
   rightField(y: Float64Array): number;
 }
 

@@ -152,7 +152,7 @@ export class GapSystem {
         : (r[layout.supplyCharge] - circuit.conductance * deltaV) * per;
     U[layout.leftWallCharge] = (r[layout.leftWallCharge] + grid.area * this.#linear.netCurrentAtLeftWall(U)) * per;
     U[layout.rightWallCharge] =
-      (r[layout.rightWallCharge] + grid.area * this.#linear.netCurrentAtRightWall(U, this.#gauss.rightField(U))) * per;
+      (r[layout.rightWallCharge] + grid.area * this.#linear.netCurrentAtRightWall(U, this.#gauss.rightField(r), deltaJ)) * per;
   }
 }
 

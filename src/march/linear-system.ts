@@ -200,12 +200,14 @@ export class LinearSystem {
     return this.#response[0] * (rE + (deltaJ - ELEMENTARY_CHARGE * net) / VACUUM_PERMITTIVITY);
   }
 
-  /** Linear change of e Σ q Γ [A/m²] at the right wall for densities U and field `rightField` there. */
-  netCurrentAtRightWall(U: Float64Array, rightField: number): number {
+  /** Linear change of e Σ q Γ [A/m²] at the right wall for densities U, field right-hand side rE there and δj [A/m²].
+   *  The change of the field is the one eliminated from the rows of the last cell, so that walls and cells balance to rounding. */
+  netCurrentAtRightWall(U: Float64Array, rE: number, deltaJ: number): number {
     const { byDensity, byField, charges, layout } = this.#equations;
     const { emissionRight } = this.#equations.at;
     const f = layout.cells;
     let net = 0;
+    let sigma = 0;
     let ions = 0;
     for (let k = charges.length - 1; k >= 0; k--) {
       const p = byDensity[k];
@@ -213,9 +215,11 @@ export class LinearSystem {
       let d = p[4 * f] * U[n - 2] + p[4 * f + 1] * U[n - 1];
       if (k === 1) ions = d;
       if (k === 0) d -= emissionRight * ions;
-      net += charges[k] * (d + byField[k][f] * rightField);
+      net += charges[k] * d;
+      sigma += charges[k] * byField[k][f];
     }
-    return ELEMENTARY_CHARGE * net;
+    const field = this.#response[f] * (rE + (deltaJ - ELEMENTARY_CHARGE * net) / VACUUM_PERMITTIVITY);
+    return ELEMENTARY_CHARGE * (net + sigma * field);
   }
 
   /** The same at the left wall. */

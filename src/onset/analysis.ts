@@ -116,6 +116,7 @@ export class Analysis {
       current,
       voltage: V,
       largestOpenGap: largest,
+      largestGapVoltage: this.#events.largestGapVoltage,
       feedback: q,
       growthOverTransit: this.#sustain.growthOverTransit(now.time, now.current),
       ionTransit: this.#context.ionTransit,

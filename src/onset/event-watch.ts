@@ -22,6 +22,7 @@ export class EventWatch implements Observer {
   aboveThreshold = 0;
   largestOpenGap = 0;
   largestOpenGapSign = 0;
+  largestGapVoltage = 0;
   largestDistortion = 0;
   readonly levels: { level: number; time: number | null; voltage: number | null }[];
   peak: { current: number; time: number; voltage: number };
@@ -65,6 +66,7 @@ export class EventWatch implements Observer {
   }
 
   #open(step: Step): void {
+    this.largestGapVoltage = Math.max(this.largestGapVoltage, Math.abs(this.#voltage(step.end.y)));
     for (const t of [step.start.time, step.end.time]) {
       const open = step.openGapAt(t);
       if (Math.abs(open) <= this.largestOpenGap) continue;

@@ -14,6 +14,8 @@ export interface Findings {
   readonly current: number;
   readonly voltage: number;
   readonly largestOpenGap: number;
+  /** largest |V| the gap itself saw [V] */
+  readonly largestGapVoltage: number;
   /** q_L at the end */
   readonly feedback: number;
   /** ln growth of the current over the last ion transit */
@@ -111,5 +113,8 @@ function holds(f: Findings): string {
   }
   const V_s = f.theory.static_breakdown_voltage_V;
   if (V_s === null) return `No voltage breaks this gap down by the Townsend criterion; the highest was ${volts(f.largestOpenGap)}.`;
+  if (f.largestOpenGap >= V_s) {
+    return `Loaded by the current that the seed draws, the gap sees at most ${volts(f.largestGapVoltage)} of ${volts(f.largestOpenGap)}, below the breakdown voltage of ${volts(V_s)}.`;
+  }
   return `The highest voltage, ${volts(f.largestOpenGap)}, stays ${percent(1 - f.largestOpenGap / V_s)} below the breakdown voltage of ${volts(V_s)}.`;
 }
