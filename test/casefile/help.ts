@@ -22,7 +22,7 @@ observe:
 `;
 
 /** A case with its own gas data. */
-export const OWN_GAS = GOOD.replace(
+export const OWN_GAS: string = GOOD.replace(
   '  name: argon\n',
   `  coefficients:
     ionisation: { form: exponential, A: 12 1/(cm Torr), B: 180 V/(cm Torr) }
