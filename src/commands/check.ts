@@ -1,0 +1,34 @@
+import { caseJsonSchema, caseTemplate } from '../casefile/index.ts';
+import { prognosisCautions } from '../onset/prognosis.ts';
+import { predict, prospects } from '../theory/predict.ts';
+import { VERSION } from '../version.ts';
+import { loadCase } from './case-source.ts';
+import { checkText } from './check-text.ts';
+import type { CheckOptions } from './cli.ts';
+import { highestOpenGapVoltage } from './highest-voltage.ts';
+import { printableJson } from './printable.ts';
+import type { Terminal } from './terminal.ts';
+
+/** Reads a case and says what it means and what theory expects; simulates nothing. */
+export function check(path: string, options: CheckOptions, terminal: Terminal): void {
+  const loaded = loadCase(path, options.set);
+  const settings = loaded.case;
+  const voltage = highestOpenGapVoltage(settings);
+  const theory = predict(settings, voltage);
+  const cautions = prognosisCautions(settings);
+  if (options.json) {
+    const { title, sha256 } = settings;
+    const answer = { format: 'gapwake.check/1', title, version: VERSION, case_sha256: sha256, case: loaded.resolved, theory, cautions };
+    terminal.out(printableJson(answer));
+  } else if (!options.quiet) {
+    terminal.out(checkText({ loaded, path, voltage, theory, prospects: prospects(settings, voltage), cautions }, terminal));
+  }
+}
+
+export function printTemplate(terminal: Terminal): void {
+  terminal.out(caseTemplate());
+}
+
+export function printSchema(terminal: Terminal): void {
+  terminal.out(`${JSON.stringify(caseJsonSchema(), null, 2)}\n`);
+}

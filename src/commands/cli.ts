@@ -1,0 +1,172 @@
+import { Command, CommanderError, Option } from 'commander';
+import { VERSION } from '../version.ts';
+import { EXIT } from './exit-codes.ts';
+import { Failure, problemWithoutPlace } from './failure.ts';
+import { wrap } from './layout.ts';
+import { printable, printableJson } from './printable.ts';
+import { processTerminal, type Terminal } from './terminal.ts';
+
+/** The command line: arguments -> a command -> an exit code. What a command needs is loaded when it is called, so that `--help` answers at once. */
+export async function start(argv: readonly string[]): Promise<void> {
+  let outputFailed = false;
+  for (const stream of [process.stdout, process.stderr]) {
+    stream.on('error', (error: NodeJS.ErrnoException) => {
+      // whoever reads the pipe has seen enough
+      if (error.code === 'EPIPE' || outputFailed) return;
+      outputFailed = true;
+      process.exitCode = EXIT.file;
+      if (stream === process.stdout) process.stderr.write(`gapwake: the output could not be written: ${error.code ?? 'unknown reason'}\n`);
+    });
+  }
+  const code = await exitCodeOf(argv, processTerminal());
+  if (!outputFailed) process.exitCode = code;
+}
+
+/** Runs the command that the arguments name, whatever it throws. */
+export async function exitCodeOf(argv: readonly string[], terminal: Terminal): Promise<number> {
+  try {
+    return await dispatch(argv, terminal);
+  } catch (thrown) {
+    if (thrown instanceof Failure) return reportFailure(thrown, argv.includes('--json'), terminal);
+    const message = thrown instanceof Error ? thrown.message : String(thrown);
+    const trace = process.env.GAPWAKE_TRACE === '1' && thrown instanceof Error ? `\n${thrown.stack}` : '; GAPWAKE_TRACE=1 shows where';
+    terminal.err(`gapwake: internal fault: ${printable(message.split('\n', 1)[0].slice(0, 200))}${trace}\n`);
+    return EXIT.fault;
+  }
+}
+
+function reportFailure(failure: Failure, json: boolean, terminal: Terminal): number {
+  if (json) terminal.out(printableJson({ format: 'gapwake.problems/1', problems: failure.problems }));
+  for (const line of failure.lines) terminal.err(`${wrap(line, terminal.errWidth, '', '    ').join('\n')}\n`);
+  return failure.exitCode;
+}
+
+async function dispatch(argv: readonly string[], terminal: Terminal): Promise<number> {
+  let exitCode: number = EXIT.done;
+  const program = programOf(terminal, (code) => {
+    exitCode = code;
+  });
+  if (argv.length === 0) {
+    program.outputHelp();
+    return EXIT.done;
+  }
+  try {
+    await program.parseAsync(argv, { from: 'user' });
+  } catch (thrown) {
+    if (!(thrown instanceof CommanderError)) throw thrown;
+    if (thrown.exitCode === 0) return EXIT.done; // help and version
+    // `help` with a name that is no command
+    const message = thrown.code === 'commander.help' ? `unknown command '${argv[argv.length - 1]}'` : thrown.message;
+    throw usageFailure(message, helpFor(program, argv));
+  }
+  return exitCode;
+}
+
+function programOf(terminal: Terminal, done: (exitCode: number) => void): Command {
+  const program = new Command('gapwake');
+  // before the sub-commands, which take these settings over
+  program
+    .exitOverride()
+    .showSuggestionAfterError(true)
+    .configureOutput({
+      writeOut: (text) => terminal.out(text),
+      writeErr: () => undefined, // problems are reported in one place, as text or JSON
+      getOutHelpWidth: () => terminal.width,
+      getErrHelpWidth: () => terminal.width,
+      getOutHasColors: () => false,
+    });
+  program
+    .description('Does a gas gap hold this voltage, and if not, how long until it breaks down and\nwhat does the supply then feed into it?')
+    .version(VERSION, '-V, --version', 'print the version')
+    .helpOption('-h, --help', 'print this help')
+    .helpCommand('help [command]', 'print help on a command')
+    .addHelpText('after', EXAMPLES);
+
+  program
+    .command('check')
+    .argument('[case]', 'case file (YAML)')
+    .description('say what a case means, with every default used, and what theory predicts; simulate nothing')
+    .addOption(setOption())
+    .option('--json', 'one JSON object on stdout')
+    .option('--quiet', 'print problems only')
+    .addOption(new Option('--template', 'print a commented case to start from').conflicts(['schema']))
+    .option('--schema', 'print the JSON Schema of case files')
+    .helpOption('-h, --help', 'print this help')
+    .action(async (path: string | undefined, options: CheckOptions) => {
+      if (path !== undefined && (options.template || options.schema))
+        throw usageFailure('a case is not read with --template or --schema', 'check');
+      if (path === undefined && !options.template && !options.schema) throw usageFailure("missing required argument 'case'", 'check');
+      const { check, printSchema, printTemplate } = await import('./check.ts');
+      if (options.template) printTemplate(terminal);
+      else if (options.schema) printSchema(terminal);
+      else await check(path ?? '', options, terminal);
+      done(EXIT.done);
+    });
+
+  program
+    .command('run')
+    .argument('<case>', 'case file (YAML)')
+    .description('simulate a case in time: does the gap hold, and what happens if it does not')
+    .option('-o, --output <file.h5>', 'write the result; replaces an older result, nothing else')
+    .addOption(setOption())
+    .option('--json', 'one JSON object on stdout')
+    .option('--quiet', 'print problems only')
+    .addOption(new Option('--expect <verdict>', 'exit with 1 when the verdict differs').choices(['holds', 'breaks-down']))
+    .helpOption('-h, --help', 'print this help')
+    .action(async (path: string, options: RunOptions) => {
+      const { run } = await import('./run.ts');
+      done(await run(path, options, terminal));
+    });
+
+  return program;
+}
+
+export interface CheckOptions {
+  readonly set: readonly string[];
+  readonly json?: boolean;
+  readonly quiet?: boolean;
+  readonly template?: boolean;
+  readonly schema?: boolean;
+}
+
+export interface RunOptions {
+  readonly output?: string;
+  readonly set: readonly string[];
+  readonly json?: boolean;
+  readonly quiet?: boolean;
+  readonly expect?: 'holds' | 'breaks-down';
+}
+
+function setOption(): Option {
+  return new Option('--set <path=value>', 'change an entry, as in gas.pressure="2 Torr"; an empty value or null removes it; repeatable')
+    .argParser((value: string, before: string[]) => [...before, value])
+    .default([], 'none');
+}
+
+const EXAMPLES = `
+Examples:
+  gapwake check --template > gap.yaml     a case to start from
+  gapwake check gap.yaml                  what it means and what theory expects
+  gapwake run gap.yaml -o gap.h5          whether it holds, and what if not
+  gapwake run gap.yaml --set supply.voltage.step="500 V" --expect holds
+
+Exit codes: 0 done, 1 --expect not met, 2 wrong input, 3 a simulation could not
+be completed, 4 a file could not be read or written, 70 internal fault,
+130 and 143 interrupted.`;
+
+function usageFailure(message: string, command: string): Failure {
+  const text = printable(message.replace(/^error: /, '').replace(/\s*\n\s*/g, ' ')).trim();
+  const help = `gapwake ${command}`.trim();
+  const nearest = /\(Did you mean (?:one of )?(.+)\?\)/.exec(text)?.[1] ?? null;
+  return new Failure(
+    EXIT.wrongInput,
+    [`gapwake: ${text}`, `${help} --help shows what it takes.`],
+    [problemWithoutPlace('usage', 'arguments', `what ${help} --help shows`, text, nearest)],
+  );
+}
+
+/** the command whose help explains a usage error */
+function helpFor(program: Command, argv: readonly string[]): string {
+  const word = argv.find((argument) => !argument.startsWith('-'));
+  return program.commands.some((command) => command.name() === word) ? (word ?? '') : '';
+}
