@@ -34,7 +34,7 @@ export interface Step {
   /** conduction current [A] of a state */
   currentOf(t: number, y: Float64Array): number;
   /** time in the step at which g passes through zero, given g at both ends, of opposite signs */
-  crossing(before: number, after: number, g: (t: number, y: Float64Array, current: number) => number): number;
+  crossing(before: number, after: number, g: (t: number, y: Float64Array) => number): number;
 }
 
 /** Something that watches a run. */
@@ -349,8 +349,7 @@ export class March {
       crossing: (before, after, g) => {
         const at = (theta: number): number => {
           stepper.stateAt(theta, scratch);
-          system.rates(from + theta * span, scratch, rates);
-          return g(from + theta * span, scratch, system.current);
+          return g(from + theta * span, scratch);
         };
         return from + span * locate(at, before, after);
       },

@@ -144,30 +144,34 @@ export class EventWatch implements Observer {
       l.time =
         before >= l.level || step.end.time === step.start.time
           ? step.start.time
-          : step.crossing(Math.log(Math.max(before, 1e-300) / l.level), Math.log(after / l.level), (_t, _y, current) =>
-              Math.log(Math.max(Math.abs(current), 1e-300) / l.level),
+          : step.crossing(Math.log(Math.max(before, 1e-300) / l.level), Math.log(after / l.level), (t, y) =>
+              Math.log(Math.max(Math.abs(step.currentOf(t, y)), 1e-300) / l.level),
             );
       l.voltage = this.#voltageAt(step, l.time);
     }
   }
 
+  /** A maximum inside a step shows as a current that rises at its start and falls by its end, or the reverse of the ends. */
   #peak(step: Step): void {
     const { start, end } = step;
     const take = (time: number, current: number, y: Float64Array): void => {
       if (Math.abs(current) > Math.abs(this.peak.current)) this.peak = { current, time, voltage: this.#voltage(y) };
     };
     const span = end.time - start.time;
-    const most = Math.max(Math.abs(start.current), Math.abs(end.current));
-    if (span > 0 && most > 0.5 * Math.abs(this.peak.current)) {
+    const first = Math.abs(start.current);
+    const last = Math.abs(end.current);
+    // while the current still grows by more than half a step, its maximum lies ahead
+    const near = last < 1.5 * first && 1.2 * Math.max(first, last) > Math.abs(this.peak.current);
+    if (span > 0 && near) {
       const at = (theta: number): number => {
         step.stateAt(start.time + theta * span, this.#scratch);
         return Math.abs(step.currentOf(start.time + theta * span, this.#scratch));
       };
-      const middle = at(0.5);
-      if (middle > Math.abs(start.current) || middle > Math.abs(end.current)) {
+      const inside = last < first ? at(0.1) > first : at(0.9) > last;
+      if (inside) {
         const best = maximise(at);
         const current = at(best);
-        if (current > most) take(start.time + best * span, Math.sign(end.current) * current, this.#scratch);
+        if (current > Math.max(first, last)) take(start.time + best * span, Math.sign(end.current) * current, this.#scratch);
       }
     }
     take(end.time, end.current, end.y);
@@ -189,7 +193,7 @@ export class EventWatch implements Observer {
   }
 }
 
-/** Where f is largest in [0, 1], by golden section to 1e-4. */
+/** Where f is largest in [0, 1], by golden section to 1e-3: the maximum itself is then right to 1e-6. */
 function maximise(f: (theta: number) => number): number {
   const golden = (Math.sqrt(5) - 1) / 2;
   let a = 0;
@@ -198,7 +202,7 @@ function maximise(f: (theta: number) => number): number {
   let x2 = golden;
   let f1 = f(x1);
   let f2 = f(x2);
-  while (b - a > 1e-4) {
+  while (b - a > 1e-3) {
     if (f1 > f2) {
       b = x2;
       x2 = x1;

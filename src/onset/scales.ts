@@ -2,9 +2,7 @@ import type { Case } from '../case.ts';
 import { curveOf } from '../gases/curves.ts';
 import type { ErrorScale } from '../march/error-norm.ts';
 import { Voltage } from '../supply/programme.ts';
-import { threshold } from '../theory/breakdown-voltage.ts';
-import { paschenMinimum } from '../theory/paschen.ts';
-import { feedbackOf, multiplicationOf } from '../theory/predict.ts';
+import { feedbackOf, limitsOf } from '../theory/predict.ts';
 import { driftSpeed } from '../theory/transit.ts';
 import { ELEMENTARY_CHARGE } from '../units/constants.ts';
 
@@ -33,7 +31,7 @@ export function scalesOf(settings: Case): Scales {
   const positive = signs.positive || supply.initialGapVoltage > 0;
   const negative = signs.negative || supply.initialGapVoltage < 0;
   const largestVoltage = Math.max(largestUntil(programme, observe.until), Math.abs(supply.initialGapVoltage));
-  const limit = (polarity: number): number | null => threshold(multiplicationOf(settings, polarity), gas.density, gap.spacing).breakdown;
+  const limit = (polarity: number): number | null => limitsOf(settings, polarity).threshold.breakdown;
   const thresholds = { positive: limit(1), negative: limit(-1) };
   const first = Math.sign(supply.initialGapVoltage) || firstSign(programme, observe.until);
 
@@ -43,7 +41,7 @@ export function scalesOf(settings: Case): Scales {
     gap.spacing / driftSpeed(curveOf(mobility.form).valueAt(x), x);
   const electronTransit = transit(gas.coefficients.electronMobility);
   const ionTransit = transit(gas.coefficients.ionMobility);
-  const minimum = paschenMinimum(multiplicationOf(settings, first));
+  const { minimum } = limitsOf(settings, first);
   const layer = minimum === null ? gap.spacing / 5 : Math.min(minimum.column / gas.density, gap.spacing);
 
   // what the seed keeps in the gap: its electrons for a transit, and their ions

@@ -1,13 +1,13 @@
 import type { Case } from '../case.ts';
 import { curveOf } from '../gases/curves.ts';
 import { BOLTZMANN, ELEMENTARY_CHARGE, TOWNSEND } from '../units/constants.ts';
-import { threshold } from './breakdown-voltage.ts';
+import { type Threshold, threshold } from './breakdown-voltage.ts';
 import { layerCurrentDensity, normalCathodeLayer } from './cathode-fall.ts';
 import { breakdownProbability, meanStatisticalLag } from './chance.ts';
 import { growthRate, ionDelay } from './growth-rate.ts';
 import { lowCurrentSlope } from './low-current-slope.ts';
 import { type Multiplication, uniformFeedback } from './multiplication.ts';
-import { lowestOverPaths, paschenMinimum } from './paschen.ts';
+import { lowestOverPaths, type PaschenPoint, type PathThreshold, paschenMinimum } from './paschen.ts';
 import { emissionThatDistorts, riseTime } from './rise-time.ts';
 import { steadyAmplification } from './steady-current.ts';
 import { streamerIntegral } from './streamer.ts';
@@ -91,17 +91,51 @@ export function feedbackOf(settings: Case): (voltage: number) => number {
   return (voltage) => uniformFeedback(voltage < 0 ? negative : positive, Math.abs(voltage) / column, column);
 }
 
+/** What does not depend on the voltage, only on which wall is the cathode. */
+export interface Limits {
+  readonly multiplication: Multiplication;
+  readonly threshold: Threshold;
+  readonly minimum: PaschenPoint | null;
+  readonly lowest: PathThreshold | null;
+}
+
+/** Limits already found, by case: each takes a search over the whole range of fields, and a run asks several times. */
+const known = new WeakMap<Case, { positive?: Limits; negative?: Limits }>();
+
+/** Thresholds of a case with the left (polarity ≥ 0) or the right wall as cathode. */
+export function limitsOf(settings: Case, polarity: number): Limits {
+  let found = known.get(settings);
+  if (found === undefined) {
+    found = {};
+    known.set(settings, found);
+  }
+  const { left, right } = settings.electrodes;
+  const negative = polarity < 0 && left.ionYield.typical !== right.ionYield.typical;
+  const before = negative ? found.negative : found.positive;
+  if (before !== undefined) return before;
+  const { gap, gas } = settings;
+  const multiplication = multiplicationOf(settings, negative ? -1 : 1);
+  const limits: Limits = {
+    multiplication,
+    threshold: threshold(multiplication, gas.density, gap.spacing),
+    minimum: paschenMinimum(multiplication),
+    lowest: lowestOverPaths(multiplication, gas.density, gap.spacing, gap.longestPath),
+  };
+  if (negative) found.negative = limits;
+  else found.positive = limits;
+  return limits;
+}
+
 /** The `theory` block of the outcome.
  *  @param voltage  [V]; its sign sets the polarity, positive makes the left electrode the cathode */
 export function predict(settings: Case, voltage: number): Theory {
   const { gap, gas } = settings;
   const here = localState(settings, voltage);
-  const limits = threshold(here.multiplication, gas.density, gap.spacing);
-  const minimum = paschenMinimum(here.multiplication);
+  const { threshold: limits, minimum, lowest } = limitsOf(settings, voltage);
   return {
     static_breakdown_voltage_V: limits.breakdown,
     upper_breakdown_voltage_V: limits.upper,
-    lowest_over_paths_V: lowestOverPaths(here.multiplication, gas.density, gap.spacing, gap.longestPath)?.voltage ?? null,
+    lowest_over_paths_V: lowest?.voltage ?? null,
     paschen_minimum_V: minimum?.voltage ?? null,
     paschen_minimum_pd_Pa_m: minimum === null ? null : minimum.column * BOLTZMANN * gas.temperature,
     overvoltage: limits.breakdown === null ? null : Math.abs(voltage) / limits.breakdown - 1,
@@ -119,13 +153,14 @@ export function prospects(settings: Case, voltage: number): Prospects {
   const { gap, gas, seed } = settings;
   const here = localState(settings, voltage);
   const { multiplication, ionSpeed, electronSpeed } = here;
-  const breakdown = threshold(multiplication, gas.density, gap.spacing).breakdown;
+  const limits = limitsOf(settings, voltage);
+  const breakdown = limits.threshold.breakdown;
   const breakdownReducedField = breakdown === null ? null : breakdown / (gas.density * gap.spacing);
   const probability = breakdownProbability(here.feedback);
   return {
     breakdownReducedField,
-    lowestPath: lowestOverPaths(multiplication, gas.density, gap.spacing, gap.longestPath)?.path ?? null,
-    minimumReducedField: paschenMinimum(multiplication)?.reducedField ?? null,
+    lowestPath: limits.lowest?.path ?? null,
+    minimumReducedField: limits.minimum?.reducedField ?? null,
     electronTransit: electronSpeed > 0 ? transitTime(gap.spacing, electronSpeed) : null,
     ionTransit: ionSpeed > 0 ? transitTime(gap.spacing, ionSpeed) : null,
     breakdownProbability: probability,
@@ -152,7 +187,7 @@ interface LocalState {
 
 function localState(settings: Case, voltage: number): LocalState {
   const { gap, gas } = settings;
-  const multiplication = multiplicationOf(settings, voltage);
+  const { multiplication } = limitsOf(settings, voltage);
   const column = gas.density * gap.spacing;
   const reducedField = Math.abs(voltage) / column;
   const alpha = gas.density * multiplication.ionisation(reducedField);
