@@ -13,20 +13,23 @@ export function wrap(text: string, width: number, first = '', rest: string = ' '
   for (const word of text.split(/ +/).filter((w) => w !== '')) {
     let left = word;
     while (left !== '') {
-      const room = Math.max(1, width - lengthOf(line) - (empty ? 0 : 1));
+      const room = width - lengthOf(line) - (empty ? 0 : 1);
       if (lengthOf(left) <= room) {
         line += empty ? left : ` ${left}`;
+        left = '';
         empty = false;
-        break;
-      }
-      if (empty) {
+      } else if (empty) {
+        // longer than a whole line
         const characters = [...left];
-        line += characters.slice(0, room).join('');
-        left = characters.slice(room).join('');
+        const cut = Math.max(1, room);
+        lines.push(line + characters.slice(0, cut).join(''));
+        left = characters.slice(cut).join('');
+        line = rest;
+      } else {
+        lines.push(line);
+        line = rest;
+        empty = true;
       }
-      lines.push(line);
-      line = rest;
-      empty = true;
     }
   }
   if (!empty || lines.length === 0) lines.push(line);

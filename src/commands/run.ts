@@ -1,16 +1,17 @@
 import { statSync } from 'node:fs';
+import type { Case } from '../case.ts';
 import type { Outcome } from '../onset/outcome.ts';
 import { ResultFileError } from '../results/errors.ts';
 import { type PreparedRunFile, prepareRunFile, type RunWriter } from '../results/write.ts';
 import { SimulationFailure, simulate } from '../simulate.ts';
 import { prospects } from '../theory/predict.ts';
+import { TOWNSEND } from '../units/constants.ts';
 import { VERSION } from '../version.ts';
 import { effectiveText, type LoadedCase, loadCase } from './case-source.ts';
 import type { RunOptions } from './cli.ts';
 import { coefficientsUsed } from './coefficients.ts';
 import { EXIT } from './exit-codes.ts';
 import { Failure, problemWithoutPlace } from './failure.ts';
-import { highestOpenGapVoltage } from './highest-voltage.ts';
 import { printable, printableJson } from './printable.ts';
 import { progressLine } from './progress.ts';
 import { type FileWritten, runText } from './run-text.ts';
@@ -59,7 +60,7 @@ export async function run(path: string, options: RunOptions, terminal: Terminal)
     if (options.json) terminal.out(printableJson(outcome));
     else if (!options.quiet) {
       const settings = loaded.case;
-      terminal.out(runText({ settings, outcome, prospects: prospects(settings, highestOpenGapVoltage(settings)), written }, terminal));
+      terminal.out(runText({ settings, outcome, prospects: prospects(settings, theoryVoltage(settings, outcome)), written }, terminal));
     }
   }
 }
@@ -111,6 +112,11 @@ class Recording {
     this.#writer?.abandon();
     this.#prepared?.abandon();
   }
+}
+
+/** The voltage at which the theory of an outcome was evaluated [V], with the sign of the discharge. */
+function theoryVoltage({ gap, gas }: Case, { theory, peak }: Outcome): number {
+  return (peak.gap_voltage_V < 0 ? -1 : 1) * theory.reduced_field_Td * TOWNSEND * gas.density * gap.spacing;
 }
 
 /** Says so when the verdict is another one than expected, even where nothing else is printed. */
