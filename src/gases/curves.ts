@@ -7,10 +7,10 @@ export interface Curve {
   readonly constant: boolean;
   valueAt(x: number): number;
   slopeAt(x: number): number;
-  /** value[i] = y(x[i]) for i < n */
-  fill(x: Float64Array, n: number, value: Float64Array): void;
-  /** value[i] = y(x[i]), slope[i] = y'(x[i]) for i < n */
-  fillWithSlope(x: Float64Array, n: number, value: Float64Array, slope: Float64Array): void;
+  /** value[i] = factor y(x[i]) for i < n */
+  fill(x: Float64Array, n: number, factor: number, value: Float64Array): void;
+  /** value[i] = factor y(x[i]), slope[i] = y'(x[i]) for i < n */
+  fillWithSlope(x: Float64Array, n: number, factor: number, value: Float64Array, slope: Float64Array): void;
 }
 
 /** Builds the evaluator of a form. */
@@ -62,11 +62,11 @@ class Constant implements Curve {
   slopeAt(): number {
     return 0;
   }
-  fill(_x: Float64Array, n: number, value: Float64Array): void {
-    value.fill(this.#value, 0, n);
+  fill(_x: Float64Array, n: number, factor: number, value: Float64Array): void {
+    value.fill(factor * this.#value, 0, n);
   }
-  fillWithSlope(_x: Float64Array, n: number, value: Float64Array, slope: Float64Array): void {
-    value.fill(this.#value, 0, n);
+  fillWithSlope(_x: Float64Array, n: number, factor: number, value: Float64Array, slope: Float64Array): void {
+    value.fill(factor * this.#value, 0, n);
     slope.fill(0, 0, n);
   }
 }
@@ -86,18 +86,18 @@ class Exponential implements Curve {
   slopeAt(x: number): number {
     return x > 0 ? slopeOrZero((this.#A * Math.exp(-this.#B / x) * this.#B) / (x * x)) : 0;
   }
-  fill(x: Float64Array, n: number, value: Float64Array): void {
-    const A = this.#A;
-    const B = this.#B;
-    for (let i = 0; i < n; i++) value[i] = A * Math.exp(-B / x[i]); // x = 0: exp(−∞) = 0
+  fill(x: Float64Array, n: number, factor: number, value: Float64Array): void {
+    const A = factor * this.#A;
+    const B = -this.#B;
+    for (let i = 0; i < n; i++) value[i] = A * Math.exp(B / x[i]); // x = 0: exp(−∞) = 0
   }
-  fillWithSlope(x: Float64Array, n: number, value: Float64Array, slope: Float64Array): void {
+  fillWithSlope(x: Float64Array, n: number, factor: number, value: Float64Array, slope: Float64Array): void {
     const A = this.#A;
     const B = this.#B;
     for (let i = 0; i < n; i++) {
       const r = 1 / x[i];
       const y = A * Math.exp(-B * r);
-      value[i] = y;
+      value[i] = factor * y;
       slope[i] = y > 0 ? y * B * r * r : 0;
     }
   }
@@ -129,16 +129,16 @@ class ExponentialSum implements Curve {
     }
     return y > 0 ? d : 0;
   }
-  fill(x: Float64Array, n: number, value: Float64Array): void {
+  fill(x: Float64Array, n: number, factor: number, value: Float64Array): void {
     value.fill(0, 0, n);
     for (let k = 0; k < this.#a.length; k++) {
       const a = this.#a[k];
       const b = this.#b[k];
       for (let i = 0; i < n; i++) value[i] += a * Math.exp(-b / x[i]);
     }
-    for (let i = 0; i < n; i++) if (!(value[i] > 0)) value[i] = 0;
+    for (let i = 0; i < n; i++) value[i] = value[i] > 0 ? factor * value[i] : 0;
   }
-  fillWithSlope(x: Float64Array, n: number, value: Float64Array, slope: Float64Array): void {
+  fillWithSlope(x: Float64Array, n: number, factor: number, value: Float64Array, slope: Float64Array): void {
     value.fill(0, 0, n);
     slope.fill(0, 0, n);
     for (let k = 0; k < this.#a.length; k++) {
@@ -152,7 +152,8 @@ class ExponentialSum implements Curve {
       }
     }
     for (let i = 0; i < n; i++) {
-      if (!(value[i] > 0)) {
+      if (value[i] > 0) value[i] *= factor;
+      else {
         value[i] = 0;
         slope[i] = 0;
       }
@@ -174,12 +175,12 @@ class Pointwise implements Curve {
     this.valueAt = pair.y;
     this.slopeAt = pair.dy;
   }
-  fill(x: Float64Array, n: number, value: Float64Array): void {
-    for (let i = 0; i < n; i++) value[i] = this.valueAt(x[i]);
+  fill(x: Float64Array, n: number, factor: number, value: Float64Array): void {
+    for (let i = 0; i < n; i++) value[i] = factor * this.valueAt(x[i]);
   }
-  fillWithSlope(x: Float64Array, n: number, value: Float64Array, slope: Float64Array): void {
+  fillWithSlope(x: Float64Array, n: number, factor: number, value: Float64Array, slope: Float64Array): void {
     for (let i = 0; i < n; i++) {
-      value[i] = this.valueAt(x[i]);
+      value[i] = factor * this.valueAt(x[i]);
       slope[i] = this.slopeAt(x[i]);
     }
   }

@@ -146,6 +146,11 @@ export class GapEquations {
   conductionCurrent(v: FaceValues = this.at): number {
     const { faceWeights, area, spacing, cells } = this.grid;
     let sum = 0;
+    if (this.charges.length === 2) {
+      const [electrons, ions] = v.flux;
+      for (let f = 0; f <= cells; f++) sum += faceWeights[f] * (electrons[f] - ions[f]);
+      return (ELEMENTARY_CHARGE * area * sum) / spacing;
+    }
     for (let k = 0; k < this.charges.length; k++) {
       const flux = v.flux[k];
       let s = 0;
@@ -174,19 +179,16 @@ export class GapEquations {
     this.#reduce(y, x);
     const faces = this.layout.cells + 1;
     const N = this.laws.density;
-    this.laws.ionisation.fill(x, faces, v.alpha);
-    scale(v.alpha, faces, N);
+    this.laws.ionisation.fill(x, faces, N, v.alpha);
     if (this.laws.attachment) {
-      this.laws.attachment.fill(x, faces, v.eta);
-      scale(v.eta, faces, N);
+      this.laws.attachment.fill(x, faces, N, v.eta);
     }
     for (let k = 0; k < this.charges.length; k++) {
       const s = this.laws.species[k];
       const c = v.coefficients[k];
       if (s.mobility.constant && s.energy.constant) continue; // filled once, at construction
-      s.mobility.fill(x, faces, c.mobility);
-      scale(c.mobility, faces, 1 / N);
-      s.energy.fill(x, faces, c.diffusion);
+      s.mobility.fill(x, faces, 1 / N, c.mobility);
+      s.energy.fill(x, faces, 1, c.diffusion);
       multiply(c.diffusion, c.mobility, faces);
     }
   }
@@ -200,22 +202,19 @@ export class GapEquations {
     let forward = 0;
     for (let f = 0; f < faces; f++) if (y[field + f] > 0) forward++;
     this.direction = forward === 0 ? -1 : forward === faces ? 1 : 0;
-    this.laws.ionisation.fillWithSlope(x, faces, v.alpha, this.alphaSlope);
-    scale(v.alpha, faces, N);
+    this.laws.ionisation.fillWithSlope(x, faces, N, v.alpha, this.alphaSlope);
     signed(this.alphaSlope, y, field, faces, 1);
     if (this.laws.attachment) {
-      this.laws.attachment.fillWithSlope(x, faces, v.eta, this.etaSlope);
-      scale(v.eta, faces, N);
+      this.laws.attachment.fillWithSlope(x, faces, N, v.eta, this.etaSlope);
       signed(this.etaSlope, y, field, faces, 1);
     }
     for (let k = 0; k < this.charges.length; k++) {
       const s = this.laws.species[k];
       if (s.mobility.constant && s.energy.constant) continue;
       const c = v.coefficients[k];
-      s.mobility.fillWithSlope(x, faces, c.mobility, c.mobilitySlope);
-      scale(c.mobility, faces, 1 / N);
+      s.mobility.fillWithSlope(x, faces, 1 / N, c.mobility, c.mobilitySlope);
       signed(c.mobilitySlope, y, field, faces, 1 / (N * N));
-      s.energy.fillWithSlope(x, faces, this.#energy, this.#energySlope);
+      s.energy.fillWithSlope(x, faces, 1, this.#energy, this.#energySlope);
       signed(this.#energySlope, y, field, faces, 1 / N);
       for (let f = 0; f < faces; f++) {
         c.diffusion[f] = c.mobility[f] * this.#energy[f];
@@ -272,9 +271,8 @@ function faceValues(faces: number, laws: GapLaws): FaceValues {
     eta: array(),
     coefficients: laws.species.map((s) => {
       const c = { mobility: array(), mobilitySlope: array(), diffusion: array(), diffusionSlope: array() };
-      s.mobility.fill(anywhere, faces, c.mobility);
-      scale(c.mobility, faces, 1 / laws.density);
-      s.energy.fill(anywhere, faces, c.diffusion);
+      s.mobility.fill(anywhere, faces, 1 / laws.density, c.mobility);
+      s.energy.fill(anywhere, faces, 1, c.diffusion);
       multiply(c.diffusion, c.mobility, faces);
       return c;
     }),
@@ -347,10 +345,6 @@ function recombine(beta: number, y: Float64Array, one: number, other: number, ce
     out[one + i] -= lost;
     out[other + i] -= lost;
   }
-}
-
-function scale(a: Float64Array, n: number, factor: number): void {
-  for (let i = 0; i < n; i++) a[i] *= factor;
 }
 
 function multiply(a: Float64Array, b: Float64Array, n: number): void {

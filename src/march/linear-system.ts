@@ -74,16 +74,19 @@ export class LinearSystem {
 
   #assemble(y: Float64Array, a: number): void {
     const eq = this.#equations;
-    this.#matrix.clear();
-    if (eq.charges.length === 2 && !eq.laws.attachment) assembleTwo(eq, a, this.#response, this.#fieldInRow, this.#slots, this.#matrix);
-    else this.#assembleAny(a);
+    if (eq.charges.length === 2 && !eq.laws.attachment && eq.direction !== 0) {
+      assembleTwo(eq, a, this.#response, this.#fieldInRow, this.#matrix);
+    } else {
+      this.#matrix.clear();
+      this.#assembleAny(a);
+    }
     const ei = eq.laws.electronIonRecombination;
     if (ei > 0) this.#addRecombination(y, 0, 1, ei);
     const ii = eq.laws.ionIonRecombination;
     if (ii > 0 && eq.charges.length > 2) this.#addRecombination(y, 2, 1, ii);
   }
 
-  /** Any number of species, with or without attachment; `assembleTwo` is the same for the common case, twice as fast. */
+  /** Any number of species, with or without attachment, any field; `assembleTwo` is the same for the common case, several times as fast. */
   #assembleAny(a: number): void {
     const eq = this.#equations;
     const { cells } = eq.layout;
@@ -305,20 +308,21 @@ function scatter(b: Float64Array, species: number, slot: number, U: Float64Array
   for (let i = 0, at = slot; i < cells; i++, at += species) U[base + i] = b[at];
 }
 
-/** The matrix for electrons and one kind of ion without attachment: `#assembleAny` written out. */
+/** The matrix for electrons and one kind of ion without attachment and a field of one direction: `#assembleAny` written out,
+ *  every entry stored once. Each face has three cells in each flux: electrons that move right use cells f−2 … f and ions
+ *  f−1 … f+1; where they move left it is the other way round. */
 function assembleTwo(
   eq: GapEquations,
   a: number,
   response: Float64Array,
   fieldInRow: readonly Float64Array[],
-  slots: readonly number[],
   matrix: BandMatrix,
 ): void {
-  const cells = eq.layout.cells;
-  const widths = eq.grid.widths;
+  const { cells } = eq.layout;
+  const { widths } = eq.grid;
   const c = ELEMENTARY_CHARGE / VACUUM_PERMITTIVITY;
-  const { entries, stride, lower } = matrix;
-  const { alphaSlope, direction } = eq;
+  const { entries } = matrix;
+  const { alphaSlope } = eq;
   const { alpha, emissionLeft, emissionRight } = eq.at;
   const electronFlux = eq.at.flux[0];
   const pe = eq.byDensity[0];
@@ -327,65 +331,113 @@ function assembleTwo(
   const iByField = eq.byField[1];
   const reachE = fieldInRow[0];
   const reachI = fieldInRow[1];
-  const se = slots[0];
-  const si = slots[1];
-  // stencils that the field's direction leaves empty: electrons use cells f−2 … f when they move right, else f−1 … f+1
-  const eFrom = direction > 0 ? 1 : 0;
-  const eTo = direction < 0 ? 3 : 4;
-  const iFrom = direction < 0 ? 1 : 0;
-  const iTo = direction > 0 ? 3 : 4;
+  // electrons to the right: their row stands second in a cell's block, their stencil starts at f − 2
+  const rightward = eq.direction < 0;
+  const eFirst = rightward ? 0 : 1;
+  const iFirst = rightward ? 1 : 0;
   for (let i = 0; i < cells; i++) {
+    const f = i + 1;
     const width = widths[i];
-    const z = 0.5 * (alpha[i] + alpha[i + 1]) * width;
+    const s = 1 / width;
+    const alphaL = alpha[i];
+    const alphaR = alpha[f];
+    const fluxL = electronFlux[i];
+    const fluxR = electronFlux[f];
+    const sizeL = Math.abs(fluxL);
+    const sizeR = Math.abs(fluxR);
+    const z = 0.5 * (alphaL + alphaR) * width;
     const half = 0.5 * cellFactor(z);
-    const bend = 0.25 * cellFactorSlope(z) * width * (alpha[i] * Math.abs(electronFlux[i]) + alpha[i + 1] * Math.abs(electronFlux[i + 1]));
-    const rowE = 2 * i + se;
-    const rowI = 2 * i + si;
-    const diagonalE = rowE * stride + lower;
-    const diagonalI = rowI * stride + lower;
-    entries[diagonalE] += a;
-    entries[diagonalI] += a;
-    for (let side = 0; side < 2; side++) {
-      const f = i + side;
-      const s = (side === 0 ? -1 : 1) / width;
-      const flux = electronFlux[f];
-      const made = flux < 0 ? -half * alpha[f] : half * alpha[f];
-      const madeByField = half * alphaSlope[f] * Math.abs(flux) + bend * alphaSlope[f];
-      const ge = ((s - made) * eByField[f] - madeByField) * response[f];
-      const gi = (s * iByField[f] - made * eByField[f] - madeByField) * response[f];
-      reachE[2 * i + side] = ge;
-      reachI[2 * i + side] = gi;
-      const bee = s - made + ge * c;
-      const bie = -made + gi * c;
-      let bei = -ge * c;
-      let bii = s - gi * c;
-      if (f === 0) {
-        bei -= bee * emissionLeft;
-        bii -= bie * emissionLeft;
-      } else if (f === cells) {
-        bei -= bee * emissionRight;
-        bii -= bie * emissionRight;
-      }
-      const cell0 = f - 2;
-      const firstJ = Math.max(-cell0, 0);
-      const lastJ = Math.min(cells - cell0, 4);
-      const shift = 2 * (cell0 - i);
-      const fromE = Math.max(eFrom, firstJ);
-      const toE = Math.min(eTo, lastJ);
-      for (let j = fromE; j < toE; j++) {
-        const p = pe[4 * f + j];
-        const at = shift + 2 * j;
-        entries[diagonalE + at] += bee * p;
-        entries[diagonalI + at + se - si] += bie * p;
-      }
-      const fromI = Math.max(iFrom, firstJ);
-      const toI = Math.min(iTo, lastJ);
-      for (let j = fromI; j < toI; j++) {
-        const p = pi[4 * f + j];
-        const at = shift + 2 * j;
-        entries[diagonalE + at + si - se] += bei * p;
-        entries[diagonalI + at] += bii * p;
-      }
+    const bend = 0.25 * cellFactorSlope(z) * width * (alphaL * sizeL + alphaR * sizeR);
+
+    const madeL = fluxL < 0 ? -half * alphaL : half * alphaL;
+    const byFieldL = alphaSlope[i] * (half * sizeL + bend);
+    const geL = ((-s - madeL) * eByField[i] - byFieldL) * response[i];
+    const giL = (-s * iByField[i] - madeL * eByField[i] - byFieldL) * response[i];
+    const beeL = -s - madeL + geL * c;
+    const bieL = -madeL + giL * c;
+    let beiL = -geL * c;
+    let biiL = -s - giL * c;
+    if (i === 0) {
+      beiL -= beeL * emissionLeft;
+      biiL -= bieL * emissionLeft;
+    }
+
+    const madeR = fluxR < 0 ? -half * alphaR : half * alphaR;
+    const byFieldR = alphaSlope[f] * (half * sizeR + bend);
+    const geR = ((s - madeR) * eByField[f] - byFieldR) * response[f];
+    const giR = (s * iByField[f] - madeR * eByField[f] - byFieldR) * response[f];
+    const beeR = s - madeR + geR * c;
+    const bieR = -madeR + giR * c;
+    let beiR = -geR * c;
+    let biiR = s - giR * c;
+    if (f === cells) {
+      beiR -= beeR * emissionRight;
+      biiR -= bieR * emissionRight;
+    }
+    reachE[2 * i] = geL;
+    reachE[2 * i + 1] = geR;
+    reachI[2 * i] = giL;
+    reachI[2 * i + 1] = giR;
+
+    const eL = 4 * i + eFirst;
+    const eR = eL + 4;
+    const iL = 4 * i + iFirst;
+    const iR = iL + 4;
+    const e0 = pe[eL];
+    const e1 = pe[eL + 1];
+    const e2 = pe[eL + 2];
+    const e3 = pe[eR];
+    const e4 = pe[eR + 1];
+    const e5 = pe[eR + 2];
+    const i0 = pi[iL];
+    const i1 = pi[iL + 1];
+    const i2 = pi[iL + 2];
+    const i3 = pi[iR];
+    const i4 = pi[iR + 1];
+    const i5 = pi[iR + 2];
+    // rows 2i and 2i + 1, nine entries each, the diagonal fifth
+    const first = 18 * i;
+    if (rightward) {
+      // row of the ions: columns of cells i−2 … i+2 as (ion, electron) pairs from place 0 (ion of i − 2)
+      entries[first] = 0;
+      entries[first + 1] = bieL * e0;
+      entries[first + 2] = biiL * i0;
+      entries[first + 3] = bieL * e1 + bieR * e3;
+      entries[first + 4] = a + biiL * i1 + biiR * i3;
+      entries[first + 5] = bieL * e2 + bieR * e4;
+      entries[first + 6] = biiL * i2 + biiR * i4;
+      entries[first + 7] = bieR * e5;
+      entries[first + 8] = biiR * i5;
+      // row of the electrons: places shift by one
+      entries[first + 9] = beeL * e0;
+      entries[first + 10] = beiL * i0;
+      entries[first + 11] = beeL * e1 + beeR * e3;
+      entries[first + 12] = beiL * i1 + beiR * i3;
+      entries[first + 13] = a + beeL * e2 + beeR * e4;
+      entries[first + 14] = beiL * i2 + beiR * i4;
+      entries[first + 15] = beeR * e5;
+      entries[first + 16] = beiR * i5;
+      entries[first + 17] = 0;
+    } else {
+      // electrons first: their columns reach from i − 1 to i + 2, the ions' from i − 2 to i + 1
+      entries[first] = 0;
+      entries[first + 1] = beiL * i0;
+      entries[first + 2] = beeL * e0;
+      entries[first + 3] = beiL * i1 + beiR * i3;
+      entries[first + 4] = a + beeL * e1 + beeR * e3;
+      entries[first + 5] = beiL * i2 + beiR * i4;
+      entries[first + 6] = beeL * e2 + beeR * e4;
+      entries[first + 7] = beiR * i5;
+      entries[first + 8] = beeR * e5;
+      entries[first + 9] = biiL * i0;
+      entries[first + 10] = bieL * e0;
+      entries[first + 11] = biiL * i1 + biiR * i3;
+      entries[first + 12] = bieL * e1 + bieR * e3;
+      entries[first + 13] = a + biiL * i2 + biiR * i4;
+      entries[first + 14] = bieL * e2 + bieR * e4;
+      entries[first + 15] = biiR * i5;
+      entries[first + 16] = bieR * e5;
+      entries[first + 17] = 0;
     }
   }
 }

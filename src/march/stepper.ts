@@ -12,6 +12,9 @@ export class Stepper {
   readonly #K: Float64Array;
   readonly #L: Float64Array;
   #denseReady = false;
+  /** stage i starts at stage i − 1's start plus its increment */
+  readonly #continues: readonly boolean[];
+  readonly #endContinues: boolean;
   /** state and rates at the start of the step, state at its end, difference of the embedded solution */
   start: Float64Array;
   readonly startRates: Float64Array;
@@ -33,6 +36,8 @@ export class Stepper {
     this.#system = system;
     const n = system.layout.unknowns;
     this.#size = n;
+    this.#continues = scheme.a.map((row, i) => i > 1 && continues(scheme.a[i - 1], row));
+    this.#endContinues = continues(scheme.a[scheme.a.length - 1], scheme.m);
     this.#stages = scheme.c.map(() => new Float64Array(n));
     this.#r = new Float64Array(n);
     this.#stage = new Float64Array(system.layout.size);
@@ -76,11 +81,13 @@ export class Stepper {
     this.factorisations++;
     if (bad >= 0) return bad;
     const stages = this.#stages;
+    const r = this.#r;
     for (let i = 0; i < c.length; i++) {
-      const r = this.#r;
       if (i === 0) r.set(this.startRates);
       else {
-        combine(this.#stage, this.start, stages, a[i], 1, i, n);
+        // the last stages of a stiffly accurate scheme start where the one before did, plus its increment
+        if (this.#continues[i]) accumulate(this.#stage, stages[i - 1], n);
+        else combine(this.#stage, this.start, stages, a[i], 1, i, n);
         system.rates(t + c[i] * h, this.#stage, r);
         combine(r, r, stages, g[i], 1 / h, i, n);
       }
@@ -88,7 +95,8 @@ export class Stepper {
       system.solve(r, stages[i]);
       this.solves++;
     }
-    combine(this.end, this.start, stages, m, 1, c.length, n);
+    if (this.#endContinues) sum(this.end, this.#stage, stages[c.length - 1], n);
+    else combine(this.end, this.start, stages, m, 1, c.length, n);
     system.settle(this.end);
     return -1;
   }
@@ -112,6 +120,19 @@ export class Stepper {
     }
     this.#system.settle(out);
   }
+}
+
+/** Is `row` the row before it with a 1 added at its end? */
+function continues(before: readonly number[], row: readonly number[]): boolean {
+  return row.length === before.length + 1 && row[row.length - 1] === 1 && before.every((v, j) => v === row[j]);
+}
+
+function accumulate(target: Float64Array, increment: Float64Array, n: number): void {
+  for (let i = 0; i < n; i++) target[i] += increment[i];
+}
+
+function sum(out: Float64Array, one: Float64Array, other: Float64Array, n: number): void {
+  for (let i = 0; i < n; i++) out[i] = one[i] + other[i];
 }
 
 /** out ← base + factor Σ weightⱼ Uⱼ over j < count. */

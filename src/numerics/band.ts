@@ -96,8 +96,7 @@ function factor44(a: Float64Array, inverse: Float64Array, n: number): number {
     let a7 = a[o + 7];
     if (r > 3) {
       const u = o - 32; // diagonal of row r − 4
-      const m = a[o] * inverse[r - 4];
-      a[o] = m;
+      const m = a[o];
       a1 -= m * a[u + 1];
       a2 -= m * a[u + 2];
       a3 -= m * a[u + 3];
@@ -105,7 +104,7 @@ function factor44(a: Float64Array, inverse: Float64Array, n: number): number {
     }
     if (r > 2) {
       const u = o - 23;
-      const m = a1 * inverse[r - 3];
+      const m = a1;
       a[o + 1] = m;
       a2 -= m * a[u + 1];
       a3 -= m * a[u + 2];
@@ -114,7 +113,7 @@ function factor44(a: Float64Array, inverse: Float64Array, n: number): number {
     }
     if (r > 1) {
       const u = o - 14;
-      const m = a2 * inverse[r - 2];
+      const m = a2;
       a[o + 2] = m;
       a3 -= m * a[u + 1];
       a4 -= m * a[u + 2];
@@ -123,20 +122,25 @@ function factor44(a: Float64Array, inverse: Float64Array, n: number): number {
     }
     if (r > 0) {
       const u = o - 5;
-      const m = a3 * inverse[r - 1];
+      const m = a3;
       a[o + 3] = m;
       a4 -= m * a[u + 1];
       a5 -= m * a[u + 2];
       a6 -= m * a[u + 3];
       a7 -= m * a[u + 4];
     }
-    a[o + 4] = a4;
-    a[o + 5] = a5;
-    a[o + 6] = a6;
-    a[o + 7] = a7;
     const inv = 1 / a4;
     if (!(Math.abs(inv) > 0 && Math.abs(inv) < Infinity)) return r;
     inverse[r] = inv;
+    // both factors are kept divided by their row's pivot, which shortens the chain of operations in `solve44`
+    a[o] *= inv;
+    a[o + 1] *= inv;
+    a[o + 2] *= inv;
+    a[o + 3] *= inv;
+    a[o + 5] = a5 * inv;
+    a[o + 6] = a6 * inv;
+    a[o + 7] = a7 * inv;
+    a[o + 8] *= inv;
   }
   return -1;
 }
@@ -148,7 +152,7 @@ function solve44(a: Float64Array, inverse: Float64Array, n: number, b: Float64Ar
   let p4 = 0;
   for (let r = 0; r < n; r++) {
     const o = r * 9;
-    const s = b[r] - a[o] * p4 - a[o + 1] * p3 - a[o + 2] * p2 - a[o + 3] * p1;
+    const s = b[r] * inverse[r] - a[o] * p4 - a[o + 1] * p3 - a[o + 2] * p2 - a[o + 3] * p1;
     p4 = p3;
     p3 = p2;
     p2 = p1;
@@ -158,7 +162,7 @@ function solve44(a: Float64Array, inverse: Float64Array, n: number, b: Float64Ar
   p1 = p2 = p3 = p4 = 0;
   for (let r = n - 1; r >= 0; r--) {
     const o = r * 9 + 4;
-    const s = (b[r] - a[o + 1] * p1 - a[o + 2] * p2 - a[o + 3] * p3 - a[o + 4] * p4) * inverse[r];
+    const s = b[r] - a[o + 4] * p4 - a[o + 3] * p3 - a[o + 2] * p2 - a[o + 1] * p1;
     p4 = p3;
     p3 = p2;
     p2 = p1;
