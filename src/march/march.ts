@@ -91,6 +91,9 @@ export class March {
   rejected = 0;
   #h: number;
   #grow = true;
+  /** error and length of the last accepted step, for the controller; 0 where there is none to go by */
+  #lastError = 0;
+  #lastSpan = 0;
   #done = false;
   #now: Instant;
   #needed = 0;
@@ -274,7 +277,14 @@ export class March {
     const start = this.#now;
     this.steps++;
     this.time = to;
-    const growth = SAFETY * Math.max(error, 1e-8) ** -0.25;
+    const size = Math.max(error, 1e-8);
+    let growth = SAFETY * size ** -0.25;
+    if (this.#lastError > 0) {
+      // where the error has been rising, expect it to go on (Gustafsson's predictive controller)
+      growth = Math.min(growth, SAFETY * (h / this.#lastSpan) * (this.#lastError / (size * size)) ** 0.25);
+    }
+    this.#lastError = Math.max(error, 1e-2);
+    this.#lastSpan = h;
     // after a rejection the next step does not grow; a step cut short by a target says nothing against the old size
     const next = h * Math.min(this.#grow ? MOST_GROWTH : 1, Math.max(LEAST_SHRINK, growth));
     this.#h = to === target && error <= 1 ? Math.max(next, this.#h * (error < 0.5 ? 1 : 0)) : next;

@@ -22,7 +22,7 @@ export interface Scales {
 
 /** The embedded error estimate is of third order and about ten times the fourth-order solution's error; a step may therefore
  *  show this many tolerances. Chosen so that crossing times of steps to a glow are right to a fifth of the tolerance. */
-const ESTIMATE_PER_TOLERANCE = 8;
+const ESTIMATE_PER_TOLERANCE = 12;
 
 export function scalesOf(settings: Case): Scales {
   const { gap, gas, seed, supply, observe } = settings;
