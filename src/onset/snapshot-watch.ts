@@ -1,4 +1,7 @@
+import ndarray from 'ndarray';
+import ops from 'ndarray-ops';
 import type { Grid } from '../gap/grid.ts';
+import { densityAtCells } from '../gap/layout.ts';
 import type { GapSystem } from '../march/gap-system.ts';
 import type { Observer, Step } from '../march/march.ts';
 import type { EnergyWatch } from './energy-watch.ts';
@@ -91,8 +94,7 @@ export class SnapshotWatch implements Observer {
     this.#lastTime = end.time;
     if (this.#count % FIRST_BATCH === 0) this.#needed = this.#needed === 0 ? 0.02 : 2 * this.#needed;
     for (let k = 0; k < this.#density.length; k++) {
-      const base = k * layout.row + layout.first;
-      this.#density[k].set(end.y.subarray(base, base + layout.cells));
+      ops.assign(ndarray(this.#density[k], [layout.cells]), densityAtCells(layout, end.y, k));
       faceMeans(equations.at.flux[k], this.#flux[k]);
     }
     profiles(grid, end.y, layout.field, equations.at.alpha, equations.at.flux[0], this.#cells);
@@ -117,8 +119,13 @@ export class SnapshotWatch implements Observer {
   }
 }
 
+/** cells ← means of the two faces of each cell. */
 function faceMeans(faces: Float64Array, cells: Float64Array): void {
-  for (let i = 0; i < cells.length; i++) cells[i] = 0.5 * (faces[i] + faces[i + 1]);
+  const n = cells.length;
+  const out = ndarray(cells, [n]);
+  const all = ndarray(faces, [n + 1]);
+  ops.add(out, all.hi(n), all.lo(1));
+  ops.mulseq(out, 0.5);
 }
 
 function profiles(
@@ -132,8 +139,7 @@ function profiles(
   let potential = 0;
   for (let i = 0; i < grid.cells; i++) {
     const left = y[field + i];
-    const right = y[field + i + 1];
-    const middle = 0.5 * (left + right);
+    const middle = 0.5 * (left + y[field + i + 1]);
     const half = 0.5 * grid.widths[i];
     out.electricField[i] = middle;
     out.potential[i] = potential - half * 0.5 * (left + middle);
