@@ -134,6 +134,7 @@ export class March {
     const { trip } = this;
     if (trip && trip.excess(this.#now.current, this.#now.supplyCurrent) > 0) trip.excursion = 0;
     this.#show(this.#now, this.#now);
+    if (trip && trip.actsAt <= 0) this.#switches(0);
   }
 
   get state(): Float64Array {

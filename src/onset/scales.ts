@@ -47,9 +47,8 @@ export function scalesOf(settings: Case): Scales {
   // what the seed keeps in the gap: its electrons for a transit, and their ions
   const perArea = seed.cathodeCurrent / (ELEMENTARY_CHARGE * gap.area);
   const alphaD = gas.density * gap.spacing * curveOf(gas.coefficients.ionisation.form).valueAt(x);
-  const released = seed.electrons / (gap.area * gap.spacing);
-  const electrons = (perArea * electronTransit) / gap.spacing + released;
-  const ions = (Math.expm1(Math.min(alphaD, 30)) * perArea * ionTransit) / gap.spacing + released * Math.expm1(Math.min(alphaD, 30));
+  const electrons = (perArea * electronTransit) / gap.spacing;
+  const ions = (Math.expm1(Math.min(alphaD, 30)) * perArea * ionTransit) / gap.spacing;
   return {
     feedback: feedbackOf(settings),
     threshold: thresholds,
@@ -62,6 +61,7 @@ export function scalesOf(settings: Case): Scales {
     errorScale: (species) => ({
       tolerance: ESTIMATE_PER_TOLERANCE * settings.numerics.tolerance,
       seedDensities: [electrons, ions, ions].slice(0, species),
+      speeds: [gap.spacing / electronTransit, gap.spacing / ionTransit, gap.spacing / ionTransit].slice(0, species),
       smallVoltage: 0.01 * Math.max(largestVoltage, reference),
     }),
   };
