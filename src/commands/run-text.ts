@@ -16,6 +16,8 @@ export interface FileWritten {
 export interface RunAnswer {
   readonly settings: Case;
   readonly outcome: Outcome;
+  /** at which theory was evaluated [V], with its sign */
+  readonly voltage: number;
   readonly prospects: Prospects;
   /** null when no file was asked for */
   readonly written: FileWritten | null;
@@ -28,7 +30,7 @@ const THEORY = 21;
 
 /** What `run` prints for people: the verdict, theory beside simulation, cautions, where the result went. */
 export function runText(answer: RunAnswer, terminal: Terminal): string {
-  const { settings, outcome, written } = answer;
+  const { settings, outcome, voltage, written } = answer;
   const { style, width } = terminal;
   const table = (rows: readonly Row[]): string[] =>
     columns(
@@ -44,7 +46,7 @@ export function runText(answer: RunAnswer, terminal: Terminal): string {
     ...verdictLines(outcome, terminal),
     '',
     ...wrap(printable(settings.title), width).map(style.faint),
-    ...columns([['', 'theory', 'simulated']], [LABELS, THEORY], width).map(style.strong),
+    ...columns([['', `theory at ${quantity(voltage, 'V')}`, 'simulated']], [LABELS, THEORY], width).map(style.strong),
     ...table([...onsetRows(answer), ...endRows(answer), ...levels]),
     ...wrap(numericsText(outcome), width, '  ').map(style.faint),
   ];
@@ -111,9 +113,10 @@ const STOPS: Readonly<Record<Stop, string>> = {
 
 function endRows({ settings, outcome, prospects }: RunAnswer): Row[] {
   const { peak, final, energy, oscillation, theory, verdict } = outcome;
-  const fall = verdict.regime === 'dark' ? null : prospects.normalCathodeFall;
+  // of use only beside a glow that burns
+  const fall = verdict.regime === 'dark' || !verdict.self_sustaining ? null : prospects.normalCathodeFall;
   const dark = theory.steady_amplification !== null ? quantity(theory.steady_amplification * settings.seed.cathodeCurrent, 'A') : '';
-  const density = final.current_A / settings.gap.area;
+  const density = Math.abs(final.current_A) / settings.gap.area;
   const rows: Row[] = [
     ['peak current', '', `${quantity(peak.current_A, 'A')} at ${quantity(peak.time_s, 's')}, ${quantity(peak.gap_voltage_V, 'V')}`],
     ['end', '', `${quantity(final.time_s, 's')}: ${STOPS[final.stop]}`],

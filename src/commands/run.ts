@@ -60,7 +60,8 @@ export async function run(path: string, options: RunOptions, terminal: Terminal)
     if (options.json) terminal.out(printableJson(outcome));
     else if (!options.quiet) {
       const settings = loaded.case;
-      terminal.out(runText({ settings, outcome, prospects: prospects(settings, theoryVoltage(settings, outcome)), written }, terminal));
+      const voltage = theoryVoltage(settings, outcome);
+      terminal.out(runText({ settings, outcome, voltage, prospects: prospects(settings, voltage), written }, terminal));
     }
   }
 }
