@@ -10,8 +10,6 @@ export interface Gauss {
   settle(y: Float64Array): void;
   /** Σ weights·E of densities and E(0) in y, without storing E. */
   integral(y: Float64Array): number;
-  /** E at the right wall from densities and E(0) in y; of rates as well. */
-  rightField(y: Float64Array): number;
 }
 
 export function gaussOf(grid: Grid, layout: Layout, charges: readonly number[]): Gauss {
@@ -48,15 +46,6 @@ export function gaussOf(grid: Grid, layout: Layout, charges: readonly number[]):
       y[leftField] = 0;
       y[leftField] = -(y[layout.voltage] + integral(y)) / grid.spacing;
       fillField(y);
-    },
-    rightField(y) {
-      let rho = 0;
-      for (let i = 0; i < cells; i++) {
-        let net = y[row + first + i] - y[first + i];
-        if (negative >= 0) net -= y[negative + i];
-        rho += widths[i] * net;
-      }
-      return y[leftField] + c * rho;
     },
   };
 }

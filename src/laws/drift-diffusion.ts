@@ -9,7 +9,7 @@ import type { Grid } from '../gap/grid.ts';
  *  Source: van Leer, J. Comput. Phys. 32, 101, 1979 for the κ family; the coefficients for unequal cells are derived here
  *  by integrating the parabola over each cell. */
 export interface Stencils {
-  /** weights of cells f−2 … f+1 for drift towards +x at [4f …], towards −x at [4(cells+1) + 4f …] */
+  /** weights of cells f−2, f−1, f for drift towards +x at [3f …]; of f−1, f, f+1 for drift towards −x at [3(cells+1) + 3f …] */
   readonly weights: Float64Array;
   /** 1/(distance of the two neighbouring cell centres) [1/m]; 0 at the walls */
   readonly gradient: Float64Array;
@@ -19,31 +19,31 @@ export interface Stencils {
 export function makeStencils(grid: Grid): Stencils {
   const n = grid.cells;
   const faces = n + 1;
-  const weights = new Float64Array(8 * faces);
+  const weights = new Float64Array(6 * faces);
   const gradient = new Float64Array(faces);
   const h = grid.widths;
   for (let f = 1; f < n; f++) {
     gradient[f] = 2 / (h[f - 1] + h[f]);
-    const right = 4 * f;
-    const left = 4 * (faces + f);
+    const right = 3 * f;
+    const left = 3 * (faces + f);
     if (f >= 2) {
       const [a, b, c] = parabolaAtFace(h[f - 2], h[f - 1], h[f]);
-      weights.set([a, b, c, 0], right);
+      weights.set([a, b, c], right);
     } else {
-      weights.set([0, h[f] / (h[f - 1] + h[f]), h[f - 1] / (h[f - 1] + h[f]), 0], right);
+      weights.set([0, h[f] / (h[f - 1] + h[f]), h[f - 1] / (h[f - 1] + h[f])], right);
     }
     if (f <= n - 2) {
       const [a, b, c] = parabolaAtFace(h[f + 1], h[f], h[f - 1]);
-      weights.set([0, c, b, a], left);
+      weights.set([c, b, a], left);
     } else {
-      weights.set([0, h[f] / (h[f - 1] + h[f]), h[f - 1] / (h[f - 1] + h[f]), 0], left);
+      weights.set([h[f] / (h[f - 1] + h[f]), h[f - 1] / (h[f - 1] + h[f]), 0], left);
     }
   }
   // walls: outflow only
   const slope0 = h[0] / (h[0] + h[1]);
-  weights.set([0, 0, 1 + slope0, -slope0], 4 * faces);
+  weights.set([0, 1 + slope0, -slope0], 3 * faces);
   const slopeN = h[n - 1] / (h[n - 1] + h[n - 2]);
-  weights.set([-slopeN, 1 + slopeN, 0, 0], 4 * n);
+  weights.set([-slopeN, 1 + slopeN, 0], 3 * n);
   return { weights, gradient, faces };
 }
 
@@ -74,12 +74,10 @@ export function fluxAtFaces(
   const { weights, gradient, faces } = s;
   for (let f = 0; f < faces; f++) {
     const v = charge * mobility[f] * field[field0 + f];
-    const w = v > 0 ? 4 * f : 4 * (faces + f);
-    const c = first + f;
-    const up = n[c - 1];
-    const down = n[c];
-    const density = weights[w] * n[c - 2] + weights[w + 1] * up + weights[w + 2] * down + weights[w + 3] * n[c + 1];
-    flux[f] = v * density - diffusion[f] * gradient[f] * (down - up);
+    const w = v > 0 ? 3 * f : 3 * (faces + f);
+    const c = v > 0 ? first + f - 2 : first + f - 1;
+    const density = weights[w] * n[c] + weights[w + 1] * n[c + 1] + weights[w + 2] * n[c + 2];
+    flux[f] = v * density - diffusion[f] * gradient[f] * (n[first + f] - n[first + f - 1]);
   }
 }
 
@@ -106,21 +104,21 @@ export function linearFluxAtFaces(
   for (let f = 0; f < faces; f++) {
     const e = field[field0 + f];
     const v = charge * mobility[f] * e;
-    const w = v > 0 ? 4 * f : 4 * (faces + f);
-    const c = first + f;
-    const up = n[c - 1];
-    const down = n[c];
+    const right = v > 0;
+    const w = right ? 3 * f : 3 * (faces + f);
+    const c = right ? first + f - 2 : first + f - 1;
     const w0 = weights[w];
     const w1 = weights[w + 1];
     const w2 = weights[w + 2];
-    const w3 = weights[w + 3];
-    const density = w0 * n[c - 2] + w1 * up + w2 * down + w3 * n[c + 1];
+    const up = n[first + f - 1];
+    const down = n[first + f];
+    const density = w0 * n[c] + w1 * n[c + 1] + w2 * n[c + 2];
     const g = diffusion[f] * gradient[f];
     flux[f] = v * density - g * (down - up);
-    byDensity[4 * f] = v * w0;
-    byDensity[4 * f + 1] = v * w1 + g;
-    byDensity[4 * f + 2] = v * w2 - g;
-    byDensity[4 * f + 3] = v * w3;
+    byDensity[4 * f] = right ? v * w0 : 0;
+    byDensity[4 * f + 1] = v * (right ? w1 : w0) + g;
+    byDensity[4 * f + 2] = v * (right ? w2 : w1) - g;
+    byDensity[4 * f + 3] = right ? 0 : v * w2;
     byField[f] = charge * (mobility[f] + e * mobilitySlope[f]) * density - diffusionSlope[f] * gradient[f] * (down - up);
   }
 }

@@ -100,7 +100,7 @@ export class GapEquations {
     this.byField = laws.species.map(array);
   }
 
-  /** dn/dt of every species into `out`, from the densities and field in y. @returns the conduction current [A] */
+  /** Adds dn/dt of every species to `out`, from the densities and field in y. @returns the conduction current [A] */
   rates(y: Float64Array, out: Float64Array): number {
     const v = this.#stage;
     this.#coefficients(y, v);
@@ -306,8 +306,8 @@ function ionisedRates(
     const width = widths[i];
     const source = 0.5 * cellFactor(0.5 * (leftAlpha + a) * width) * (leftMade + made);
     const per = 1 / width;
-    out[first + i] = source - (e - leftElectrons) * per;
-    out[firstIon + i] = source - (p - leftIons) * per;
+    out[first + i] += source - (e - leftElectrons) * per;
+    out[firstIon + i] += source - (p - leftIons) * per;
     leftElectrons = e;
     leftIons = p;
     leftAlpha = a;
@@ -333,9 +333,9 @@ function attachedRates(
     const half = 0.5 * cellFactor(0.5 * (alpha[i] + alpha[i + 1] - eta[i] - eta[i + 1]) * width);
     const ionised = half * (alpha[i] * left + alpha[i + 1] * right);
     const attached = half * (eta[i] * left + eta[i + 1] * right);
-    out[first + i] = ionised - attached - (electrons[i + 1] - electrons[i]) / width;
-    out[row + first + i] = ionised - (flux[1][i + 1] - flux[1][i]) / width;
-    if (flux.length > 2) out[2 * row + first + i] = attached - (flux[2][i + 1] - flux[2][i]) / width;
+    out[first + i] += ionised - attached - (electrons[i + 1] - electrons[i]) / width;
+    out[row + first + i] += ionised - (flux[1][i + 1] - flux[1][i]) / width;
+    if (flux.length > 2) out[2 * row + first + i] += attached - (flux[2][i + 1] - flux[2][i]) / width;
   }
 }
 

@@ -40,8 +40,8 @@ export class GapSystem {
     this.circuit = circuit;
     this.gapCapacitance = (VACUUM_PERMITTIVITY * this.grid.area) / this.grid.spacing;
     this.#capacitance = circuit.parallelCapacitance + this.gapCapacitance;
-    this.#linear = new LinearSystem(equations);
     this.#gauss = gaussOf(this.grid, this.layout, equations.charges);
+    this.#linear = new LinearSystem(equations, this.#gauss);
   }
 
   /** C_p + C_gap [F] */
@@ -54,8 +54,14 @@ export class GapSystem {
     this.#gauss.settle(y);
   }
 
-  /** f(t, y) for a y whose E(0) obeys the invariant; completes y's field. */
+  /** out ← f(t, y) for a y whose E(0) obeys the invariant; completes y's field. */
   rates(t: number, y: Float64Array, out: Float64Array): void {
+    out.fill(0);
+    this.addRates(t, y, out);
+  }
+
+  /** out += f(t, y). */
+  addRates(t: number, y: Float64Array, out: Float64Array): void {
     this.#gauss.fillField(y);
     this.#complete(t, y, out, this.equations.rates(y, out), false);
   }
@@ -63,6 +69,7 @@ export class GapSystem {
   /** As `rates` for a settled y, and prepares `factor`. */
   linearise(t: number, y: Float64Array, out: Float64Array): void {
     this.#supplySlope = this.circuit.supplySlope(t);
+    out.fill(0);
     this.#complete(t, y, out, this.equations.linearise(y, out), true);
   }
 
@@ -86,8 +93,7 @@ export class GapSystem {
     const area = this.grid.area;
     const a = this.#a;
     linear.solveDensities(r, U);
-    U[leftField] = linear.fieldAtLeftWall(U, r[leftField], 0);
-    const sum = this.#gauss.integral(U);
+    const sum = linear.fieldOf(U, r[leftField]);
     let deltaJ: number;
     let deltaV: number;
     if (feed === 'ideal') {
@@ -132,12 +138,12 @@ export class GapSystem {
     this.totalCurrentDensity = j;
     this.supplyCurrent = supply;
     const left = ELEMENTARY_CHARGE * equations.netFlux(0, linearised);
-    out[layout.leftField] = (j - left) / VACUUM_PERMITTIVITY;
-    out[layout.voltage] = rate;
-    out[layout.terminalCharge] = terminal;
-    out[layout.supplyCharge] = supply;
-    out[layout.leftWallCharge] = grid.area * left;
-    out[layout.rightWallCharge] = ELEMENTARY_CHARGE * grid.area * equations.netFlux(layout.cells, linearised);
+    out[layout.leftField] += (j - left) / VACUUM_PERMITTIVITY;
+    out[layout.voltage] += rate;
+    out[layout.terminalCharge] += terminal;
+    out[layout.supplyCharge] += supply;
+    out[layout.leftWallCharge] += grid.area * left;
+    out[layout.rightWallCharge] += ELEMENTARY_CHARGE * grid.area * equations.netFlux(layout.cells, linearised);
   }
 
   #countCharges(r: Float64Array, U: Float64Array, deltaJ: number, deltaV: number): void {
@@ -151,8 +157,7 @@ export class GapSystem {
         ? U[layout.terminalCharge] + circuit.parallelCapacitance * deltaV
         : (r[layout.supplyCharge] - circuit.conductance * deltaV) * per;
     U[layout.leftWallCharge] = (r[layout.leftWallCharge] + grid.area * this.#linear.netCurrentAtLeftWall(U)) * per;
-    U[layout.rightWallCharge] =
-      (r[layout.rightWallCharge] + grid.area * this.#linear.netCurrentAtRightWall(U, this.#gauss.rightField(r), deltaJ)) * per;
+    U[layout.rightWallCharge] = (r[layout.rightWallCharge] + grid.area * this.#linear.netCurrentAtRightWall(U, deltaJ)) * per;
   }
 }
 

@@ -1,3 +1,4 @@
+import type { Gauss } from '../gap/gauss.ts';
 import type { Layout } from '../gap/layout.ts';
 import type { GapEquations } from '../laws/gap-equations.ts';
 import { cellFactor, cellFactorSlope } from '../laws/production.ts';
@@ -26,11 +27,15 @@ export class LinearSystem {
   /** coefficient of δE in row (species, cell) from the left face at [2i], right face at [2i + 1] */
   readonly #fieldInRow: readonly Float64Array[];
   readonly #b: Float64Array;
+  readonly #gauss: Gauss;
+  /** right-hand side of the field at the right wall in the last solve */
+  #rightRate = 0;
   /** answer of all unknowns to δj = 1 */
   readonly column: Float64Array;
 
-  constructor(equations: GapEquations) {
+  constructor(equations: GapEquations, gauss: Gauss) {
     this.#equations = equations;
+    this.#gauss = gauss;
     const { cells, species, size } = equations.layout;
     const rows = cells * species;
     const wide = 3 * species - 1;
@@ -178,12 +183,19 @@ export class LinearSystem {
     const b = this.#b;
     const species = charges.length;
     if (species === 2) {
-      gatherTwo(r, layout, grid.widths, this.#fieldInRow[0], this.#fieldInRow[1], b, this.#slots[0], this.#slots[1]);
+      this.#rightRate = gatherTwo(r, layout, grid.widths, this.#fieldInRow[0], this.#fieldInRow[1], b, this.#slots[0], this.#slots[1]);
     } else {
-      gatherAny(r, layout, grid.widths, charges, this.#fieldInRow, b, this.#slots);
+      this.#rightRate = gatherAny(r, layout, grid.widths, charges, this.#fieldInRow, b, this.#slots);
     }
     this.#matrix.solve(b);
     for (let k = 0; k < species; k++) scatter(b, species, this.#slots[k], U, k * row + first, cells);
+  }
+
+  /** Completes U's field at x = 0 for δj = 0 and field right-hand side rE there. @returns Σ weights·δE over the gap [V] */
+  fieldOf(U: Float64Array, rE: number): number {
+    const { layout } = this.#equations;
+    U[layout.leftField] = this.fieldAtLeftWall(U, rE, 0);
+    return this.#gauss.integral(U);
   }
 
   /** δE at the left wall for densities U, field right-hand side rE there and δj [A/m²]. */
@@ -203,9 +215,9 @@ export class LinearSystem {
     return this.#response[0] * (rE + (deltaJ - ELEMENTARY_CHARGE * net) / VACUUM_PERMITTIVITY);
   }
 
-  /** Linear change of e Σ q Γ [A/m²] at the right wall for densities U, field right-hand side rE there and δj [A/m²].
+  /** Linear change of e Σ q Γ [A/m²] at the right wall for densities U of the last solve and δj [A/m²].
    *  The change of the field is the one eliminated from the rows of the last cell, so that walls and cells balance to rounding. */
-  netCurrentAtRightWall(U: Float64Array, rE: number, deltaJ: number): number {
+  netCurrentAtRightWall(U: Float64Array, deltaJ: number): number {
     const { byDensity, byField, charges, layout } = this.#equations;
     const { emissionRight } = this.#equations.at;
     const f = layout.cells;
@@ -221,7 +233,7 @@ export class LinearSystem {
       net += charges[k] * d;
       sigma += charges[k] * byField[k][f];
     }
-    const field = this.#response[f] * (rE + (deltaJ - ELEMENTARY_CHARGE * net) / VACUUM_PERMITTIVITY);
+    const field = this.#response[f] * (this.#rightRate + (deltaJ - ELEMENTARY_CHARGE * net) / VACUUM_PERMITTIVITY);
     return ELEMENTARY_CHARGE * (net + sigma * field);
   }
 
@@ -256,7 +268,7 @@ export class LinearSystem {
   }
 }
 
-/** b ← right-hand sides of electrons and ions with the eliminated field taken out. */
+/** b ← right-hand sides of electrons and ions with the eliminated field taken out. @returns that of the field at the right wall */
 function gatherTwo(
   r: Float64Array,
   layout: Layout,
@@ -266,7 +278,7 @@ function gatherTwo(
   b: Float64Array,
   slotE: number,
   slotI: number,
-): void {
+): number {
   const { cells, row, first, leftField } = layout;
   const c = ELEMENTARY_CHARGE / VACUUM_PERMITTIVITY;
   let left = r[leftField];
@@ -278,6 +290,7 @@ function gatherTwo(
     b[2 * i + slotI] = p - reachI[2 * i] * left - reachI[2 * i + 1] * right;
     left = right;
   }
+  return left;
 }
 
 function gatherAny(
@@ -288,7 +301,7 @@ function gatherAny(
   reach: readonly Float64Array[],
   b: Float64Array,
   slots: readonly number[],
-): void {
+): number {
   const { cells, row, first, leftField } = layout;
   const c = ELEMENTARY_CHARGE / VACUUM_PERMITTIVITY;
   const species = charges.length;
@@ -302,6 +315,7 @@ function gatherAny(
     }
     left = right;
   }
+  return left;
 }
 
 function scatter(b: Float64Array, species: number, slot: number, U: Float64Array, base: number, cells: number): void {
@@ -311,13 +325,7 @@ function scatter(b: Float64Array, species: number, slot: number, U: Float64Array
 /** The matrix for electrons and one kind of ion without attachment and a field of one direction: `#assembleAny` written out,
  *  every entry stored once. Each face has three cells in each flux: electrons that move right use cells f−2 … f and ions
  *  f−1 … f+1; where they move left it is the other way round. */
-function assembleTwo(
-  eq: GapEquations,
-  a: number,
-  response: Float64Array,
-  fieldInRow: readonly Float64Array[],
-  matrix: BandMatrix,
-): void {
+function assembleTwo(eq: GapEquations, a: number, response: Float64Array, fieldInRow: readonly Float64Array[], matrix: BandMatrix): void {
   const { cells } = eq.layout;
   const { widths } = eq.grid;
   const c = ELEMENTARY_CHARGE / VACUUM_PERMITTIVITY;

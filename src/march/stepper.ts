@@ -8,6 +8,7 @@ export class Stepper {
   readonly #size: number;
   readonly #stages: readonly Float64Array[];
   readonly #r: Float64Array;
+  readonly #zero: Float64Array;
   readonly #stage: Float64Array;
   readonly #K: Float64Array;
   readonly #L: Float64Array;
@@ -40,6 +41,7 @@ export class Stepper {
     this.#endContinues = continues(scheme.a[scheme.a.length - 1], scheme.m);
     this.#stages = scheme.c.map(() => new Float64Array(n));
     this.#r = new Float64Array(n);
+    this.#zero = new Float64Array(n);
     this.#stage = new Float64Array(system.layout.size);
     this.#K = new Float64Array(n);
     this.#L = new Float64Array(n);
@@ -85,11 +87,11 @@ export class Stepper {
     for (let i = 0; i < c.length; i++) {
       if (i === 0) r.set(this.startRates);
       else {
-        // the last stages of a stiffly accurate scheme start where the one before did, plus its increment
+        // the last stage of a stiffly accurate scheme starts where the one before did, plus its increment
         if (this.#continues[i]) accumulate(this.#stage, stages[i - 1], n);
         else combine(this.#stage, this.start, stages, a[i], 1, i, n);
-        system.rates(t + c[i] * h, this.#stage, r);
-        combine(r, r, stages, g[i], 1 / h, i, n);
+        combine(r, this.#zero, stages, g[i], 1 / h, i, n);
+        system.addRates(t + c[i] * h, this.#stage, r);
       }
       system.addTimeSlope(r, d[i] * h);
       system.solve(r, stages[i]);
