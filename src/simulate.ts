@@ -84,7 +84,9 @@ function assemble(settings: Case, watch: Watch): { march: March; analysis: Analy
   const circuit = new Circuit(settings.supply);
   const system = new GapSystem(new GapEquations(grid, layout, laws), circuit);
   const voltage = circuit.begin(0, settings.supply.initialGapVoltage);
-  const initial = initialState(grid, layout, settings.seed.electrons, scales.firstIsLeft, voltage);
+  const alpha = laws.density * laws.ionisation.valueAt(Math.abs(voltage) / (laws.density * grid.spacing));
+  const released = { electrons: settings.seed.electrons, leftIsCathode: scales.firstIsLeft, alpha };
+  const initial = initialState(grid, layout, released, voltage);
   const openGap = new OpenGap(circuit, system.capacitance, voltage);
   const trip = settings.supply.trip === null ? null : new Trip(settings.supply.trip);
 

@@ -83,7 +83,7 @@ export class LinearSystem {
       assembleTwo(eq, a, this.#response, this.#fieldInRow, this.#matrix);
     } else {
       this.#matrix.clear();
-      this.#assembleAny(a);
+      this.#assembleAny(y, a);
     }
     const ei = eq.laws.electronIonRecombination;
     if (ei > 0) this.#addRecombination(y, 0, 1, ei);
@@ -92,9 +92,9 @@ export class LinearSystem {
   }
 
   /** Any number of species, with or without attachment, any field; `assembleTwo` is the same for the common case, several times as fast. */
-  #assembleAny(a: number): void {
+  #assembleAny(y: Float64Array, a: number): void {
     const eq = this.#equations;
-    const { cells } = eq.layout;
+    const { cells, field } = eq.layout;
     const { widths } = eq.grid;
     const species = eq.charges.length;
     const c = ELEMENTARY_CHARGE / VACUUM_PERMITTIVITY;
@@ -108,11 +108,11 @@ export class LinearSystem {
       const width = widths[i];
       const z = 0.5 * (alpha[i] + alpha[i + 1] - eta[i] - eta[i + 1]) * width;
       const half = 0.5 * cellFactor(z);
-      const left = Math.abs(electronFlux[i]);
-      const right = Math.abs(electronFlux[i + 1]);
+      const left = electronFlux[i];
+      const right = electronFlux[i + 1];
       const bend = 0.25 * cellFactorSlope(z) * width;
-      const ionBend = bend * (alpha[i] * left + alpha[i + 1] * right);
-      const attachBend = bend * (eta[i] * left + eta[i + 1] * right);
+      const ionBend = bend * (alpha[i] * (y[field + i] < 0 ? left : -left) + alpha[i + 1] * (y[field + i + 1] < 0 ? right : -right));
+      const attachBend = bend * (eta[i] * Math.abs(left) + eta[i + 1] * Math.abs(right));
       for (let k = 0; k < species; k++) {
         const diagonal = (species * i + this.#slots[k]) * stride + lower;
         entries[diagonal] += a;
@@ -120,11 +120,11 @@ export class LinearSystem {
       for (let side = 0; side < 2; side++) {
         const f = i + side;
         const s = (side === 0 ? -1 : 1) / width;
-        const sign = electronFlux[f] < 0 ? -1 : 1;
-        const made = half * alpha[f] * sign;
-        const lost = half * eta[f] * sign;
+        const along = y[field + f] < 0 ? 1 : -1;
+        const made = half * alpha[f] * along;
+        const lost = half * eta[f] * (electronFlux[f] < 0 ? -1 : 1);
         const netSlope = eq.alphaSlope[f] - eq.etaSlope[f];
-        const madeByField = half * eq.alphaSlope[f] * Math.abs(electronFlux[f]) + ionBend * netSlope;
+        const madeByField = half * eq.alphaSlope[f] * along * electronFlux[f] + ionBend * netSlope;
         const lostByField = half * eq.etaSlope[f] * Math.abs(electronFlux[f]) + attachBend * netSlope;
         B.fill(0);
         for (let k = 0; k < species; k++) {
@@ -341,6 +341,7 @@ function assembleTwo(eq: GapEquations, a: number, response: Float64Array, fieldI
   const reachI = fieldInRow[1];
   // electrons to the right: their row stands second in a cell's block, their stencil starts at f − 2
   const rightward = eq.direction < 0;
+  const along = rightward ? 1 : -1;
   const eFirst = rightward ? 0 : 1;
   const iFirst = rightward ? 1 : 0;
   for (let i = 0; i < cells; i++) {
@@ -349,15 +350,13 @@ function assembleTwo(eq: GapEquations, a: number, response: Float64Array, fieldI
     const s = 1 / width;
     const alphaL = alpha[i];
     const alphaR = alpha[f];
-    const fluxL = electronFlux[i];
-    const fluxR = electronFlux[f];
-    const sizeL = Math.abs(fluxL);
-    const sizeR = Math.abs(fluxR);
+    const sizeL = along * electronFlux[i];
+    const sizeR = along * electronFlux[f];
     const z = 0.5 * (alphaL + alphaR) * width;
     const half = 0.5 * cellFactor(z);
     const bend = 0.25 * cellFactorSlope(z) * width * (alphaL * sizeL + alphaR * sizeR);
 
-    const madeL = fluxL < 0 ? -half * alphaL : half * alphaL;
+    const madeL = along * half * alphaL;
     const byFieldL = alphaSlope[i] * (half * sizeL + bend);
     const geL = ((-s - madeL) * eByField[i] - byFieldL) * response[i];
     const giL = (-s * iByField[i] - madeL * eByField[i] - byFieldL) * response[i];
@@ -370,7 +369,7 @@ function assembleTwo(eq: GapEquations, a: number, response: Float64Array, fieldI
       biiL -= bieL * emissionLeft;
     }
 
-    const madeR = fluxR < 0 ? -half * alphaR : half * alphaR;
+    const madeR = along * half * alphaR;
     const byFieldR = alphaSlope[f] * (half * sizeR + bend);
     const geR = ((s - madeR) * eByField[f] - byFieldR) * response[f];
     const giR = (s * iByField[f] - madeR * eByField[f] - byFieldR) * response[f];
