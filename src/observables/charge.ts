@@ -23,19 +23,15 @@ export function netCharges(grid: Grid, layout: Layout, charges: readonly number[
   return sum * grid.area;
 }
 
-/** The most negative density over the largest of its species, as a positive number; 0 where none is negative. */
-export function undershoot(layout: Layout, y: Float64Array): number {
-  let worst = 0;
-  for (let k = 0; k < layout.species; k++) {
-    const base = k * layout.row + layout.first;
-    let least = 0;
-    let most = 0;
-    for (let i = 0; i < layout.cells; i++) {
-      const n = y[base + i];
-      if (n < least) least = n;
-      if (n > most) most = n;
-    }
-    if (most > 0) worst = Math.max(worst, -least / most);
+/** The least and the largest density of one species [1/m³]. */
+export function densityRange(layout: Layout, species: number, y: Float64Array): { least: number; most: number } {
+  const base = species * layout.row + layout.first;
+  let least = Infinity;
+  let most = -Infinity;
+  for (let i = 0; i < layout.cells; i++) {
+    const n = y[base + i];
+    if (n < least) least = n;
+    if (n > most) most = n;
   }
-  return worst;
+  return { least, most };
 }

@@ -1,20 +1,32 @@
 import type { Observer, Step } from '../march/march.ts';
 import { cathodeLayer } from '../observables/cathode-layer.ts';
-import { cathodeDistortion, cathodeField } from '../observables/walls.ts';
-import { predict, prospects } from '../theory/predict.ts';
+import { cathodeField } from '../observables/walls.ts';
+import { type Prospects, predict, prospects, type Theory } from '../theory/predict.ts';
 import { VERSION } from '../version.ts';
-import { cautionsOf } from './cautions.ts';
-import { distortionFloor, type RunContext } from './context.ts';
+import { ArcWatch } from './arc-watch.ts';
+import { cautionsOf } from './cautions/index.ts';
+import type { RunContext } from './context.ts';
+import { CurrentsWatch } from './currents-watch.ts';
+import { Distortion } from './distortion.ts';
 import { EnergyWatch } from './energy-watch.ts';
-import { EventWatch } from './event-watch.ts';
+import type { Findings } from './findings.ts';
 import { GrowthWatch } from './growth-watch.ts';
+import { highestOpenGapVoltage } from './highest-voltage.ts';
 import { judge } from './judge.ts';
+import { LagWatch } from './lag-watch.ts';
+import { LayerWatch } from './layer-watch.ts';
 import { NumericsWatch } from './numerics-watch.ts';
+import { OpenGapWatch } from './open-gap-watch.ts';
 import { oscillationOf } from './oscillation.ts';
-import type { Onset, Outcome, Stop } from './outcome.ts';
+import type { Caution, Final, Onset, Outcome, Stop, Verdict } from './outcome.ts';
+import { polaritiesOf } from './polarity.ts';
 import { RangeWatch } from './range-watch.ts';
 import { type Snapshot, SnapshotWatch } from './snapshot-watch.ts';
+import { StopWatch } from './stop-watch.ts';
 import { SustainWatch } from './sustain-watch.ts';
+import { SwingWatch } from './swing-watch.ts';
+import { ThresholdWatch } from './threshold-watch.ts';
+import { TripWatch } from './trip-watch.ts';
 
 /** Who takes the snapshots of a run. */
 interface Takers {
@@ -22,62 +34,74 @@ interface Takers {
   snapshot?(s: Snapshot): void;
 }
 
+/** Swings of the gap voltage below this share of the largest V_open do not count as oscillation. */
+const SMALLEST_SWING = 0.01;
+
 /** Watches a march and, at its end, says what happened. */
 export class Analysis {
   readonly observers: readonly Observer[];
   readonly #context: RunContext;
-  readonly #events: EventWatch;
-  readonly #sustain: SustainWatch;
-  readonly #growth: GrowthWatch;
   readonly #energy: EnergyWatch;
   readonly #numerics: NumericsWatch;
   readonly #range: RangeWatch;
+  readonly #openGap: OpenGapWatch;
+  readonly #threshold: ThresholdWatch;
+  readonly #lag: LagWatch;
+  readonly #growth: GrowthWatch;
+  readonly #currents: CurrentsWatch;
+  readonly #swing: SwingWatch;
+  readonly #trip: TripWatch;
+  readonly #sustain: SustainWatch;
+  readonly #layer: LayerWatch;
+  readonly #arc: ArcWatch;
+  readonly #stop: StopWatch;
   readonly #snapshots: SnapshotWatch | null;
   #lastStep: Step | null = null;
-  #largestCathodeField = 0;
-  #tripTime: number | null = null;
-  #tripCurrents: { conduction: number; supply: number } | null = null;
-  #gapEnergyAtTrip: number | null = null;
 
   constructor(context: RunContext, initial: Float64Array, takers: Takers) {
     const { system, settings } = context;
+    const distortion = new Distortion(context);
     this.#context = context;
-    this.#events = new EventWatch(context);
-    this.#sustain = new SustainWatch(context);
-    this.#growth = new GrowthWatch(
-      system,
-      context.ionTransit,
-      distortionFloor(context, system.circuit.supplyVoltage(settings.observe.until)),
-    );
     this.#energy = new EnergyWatch(system);
-    this.#numerics = new NumericsWatch(system, this.#energy, initial);
+    this.#numerics = new NumericsWatch(system, this.#energy, distortion, initial);
     this.#range = new RangeWatch(system, settings.gas.coefficients);
+    this.#openGap = new OpenGapWatch(context);
+    this.#threshold = new ThresholdWatch(context);
+    this.#lag = new LagWatch(context, this.#threshold, distortion);
+    this.#growth = new GrowthWatch(context, distortion);
+    this.#currents = new CurrentsWatch(system, settings.observe.currents);
+    this.#swing = new SwingWatch(system, SMALLEST_SWING * Math.abs(highestOpenGapVoltage(settings)));
+    this.#trip = new TripWatch(context, this.#energy);
+    this.#sustain = new SustainWatch(context, distortion);
+    this.#layer = new LayerWatch(system, this.#sustain);
+    this.#arc = new ArcWatch(context);
+    this.#stop = new StopWatch(context, this.#sustain, this.#arc);
     takers.begin?.({ x: system.grid.centres, negativeIons: system.equations.charges.length > 2 });
     const take = takers.snapshot?.bind(takers);
     this.#snapshots = take ? new SnapshotWatch(system, this.#energy, take) : null;
-    const own: Observer = { look: (step) => this.#look(step) };
+    // each looks after those it asks
     this.observers = [
       this.#energy,
       this.#numerics,
       this.#range,
-      this.#events,
+      this.#openGap,
+      this.#threshold,
+      this.#lag,
       this.#growth,
-      ...(this.#snapshots ? [this.#snapshots] : []),
-      own,
+      this.#currents,
+      this.#swing,
+      this.#trip,
       this.#sustain,
+      this.#layer,
+      this.#arc,
+      ...(this.#snapshots ? [this.#snapshots] : []),
+      { look: (step) => this.#keep(step) },
+      this.#stop,
     ];
   }
 
-  #look(step: Step): boolean {
+  #keep(step: Step): boolean {
     this.#lastStep = step;
-    const { system } = this.#context;
-    this.#largestCathodeField = Math.max(this.#largestCathodeField, cathodeField(system.layout, step.end.y));
-    const { trip } = this.#context.march();
-    if (trip && step.end.time >= trip.actsAt && this.#tripTime === null) {
-      this.#tripTime = step.end.time;
-      this.#tripCurrents = { conduction: step.end.current, supply: step.end.supplyCurrent };
-      this.#gapEnergyAtTrip = this.#energy.gap;
-    }
     return false;
   }
 
@@ -85,73 +109,20 @@ export class Analysis {
    *  @param forced a stop from outside the march: interrupted or failed
    *  @param wall wall time of the run [s] */
   conclude(forced: Stop | null, wall: number): Outcome {
-    const { settings, system } = this.#context;
-    const march = this.#context.march();
-    const { layout } = system;
-    const now = march.now;
-    const V = now.y[layout.voltage];
-    const step = this.#lastStep;
-    if (step) this.#snapshots?.finish(step);
-    const q = this.#context.feedback(V);
-    const stop: Stop = forced ?? this.#sustain.stopsAs(now.time, q) ?? 'until';
+    const { settings } = this.#context;
+    if (this.#lastStep) this.#snapshots?.finish(this.#lastStep);
+    const stop = forced ?? this.#stop.stop ?? 'until';
+    if (forced === null) this.#openGap.lookAhead();
+    if (stop === 'steady') this.#arc.lookAhead();
 
-    const largest = this.#events.largestOpenGap;
-    const sign = this.#events.largestOpenGapSign || 1;
-    const theory = predict(settings, sign * largest);
-    const outlook = prospects(settings, sign * largest);
-    const onset = this.#onset();
-    const layer = cathodeLayer(system.grid, layout, now.y);
-    const lagEnd = this.#events.lagEnd;
-    const range = settings.gas.coefficients.ionisation.range;
-    const xs = outlook.breakdownReducedField;
-    const current = Math.abs(now.current);
-    const verdict = judge({
-      brokeDown: this.#sustain.brokeDown,
-      selfSustaining: this.#sustain.selfSustaining,
-      distortedNow: this.#sustain.distortedNow,
-      largestDistortion: this.#events.largestDistortion,
-      arcRisk: this.#sustain.arcRisk,
-      stop,
-      time: now.time,
-      current,
-      voltage: V,
-      largestOpenGap: largest,
-      largestGapVoltage: this.#events.largestGapVoltage,
-      feedback: q,
-      growthOverTransit: this.#sustain.growthOverTransit(now.time, now.current),
-      ionTransit: this.#context.ionTransit,
-      distortionNow: cathodeDistortion(layout, settings.gap.spacing, distortionFloor(this.#context, V), now.y),
-      spaceChargeTime: onset.space_charge_time_s,
-      lag: lagEnd === null || onset.formative_lag_s === null ? null : { value: onset.formative_lag_s, kind: lagEnd.kind },
-      lagVoltage: onset.gap_voltage_V,
-      aboveThreshold: this.#events.aboveThreshold,
-      currentAtThreshold: this.#sustain.currentAtThreshold,
-      peakCurrent: this.#events.peak.current,
-      tripTime: this.#tripTime,
-      trippedByCharging:
-        this.#tripCurrents !== null && Math.abs(this.#tripCurrents.conduction) < 0.01 * Math.abs(this.#tripCurrents.supply),
-      thresholdOutsideData: xs !== null && range !== null && (xs < range.from || xs > range.to),
-      breakdownUncertainty: settings.gas.breakdownUncertainty,
-      theory,
-      lowestPath: outlook.lowestPath,
-      seedLowers: this.#sustain.brokeDown && onset.threshold_time_s === null,
-    });
-    const cautions = cautionsOf(settings, sign * largest, theory, outlook, {
-      broken: verdict.state === 'breaks-down',
-      held: verdict.state === 'holds',
-      arcRisk: this.#sustain.arcRisk,
-      thresholdTime: onset.threshold_time_s,
-      lag: onset.formative_lag_s,
-      growthRate: onset.growth_rate_per_s,
-      electronTransit: this.#context.electronTransit,
-      steadyGlow: stop === 'steady' && this.#sustain.distortedNow && this.#sustain.selfSustaining,
-      currentDensity: current / settings.gap.area,
-      largestCathodeField: this.#largestCathodeField,
-      outside: this.#range.shares(),
-      seedDrop: largest > 0 && system.circuit.feed === 'resistor' ? (current * system.circuit.resistance) / largest : 0,
-      layerCells: layer === null ? null : layer.cells,
-      undershoot: this.#numerics.worstUndershoot,
-    });
+    const voltage = this.#openGap.largest;
+    const theory = predict(settings, voltage);
+    const outlook = prospects(settings, voltage);
+    const onset: Onset = { ...this.#lag.onset(), growth_rate_per_s: this.#growth.rate() };
+    const final = this.#final(stop);
+    const findings = this.#findings(onset, final, theory, outlook);
+    const verdict = judge(findings);
+    const { peak, levels } = this.#currents;
     return {
       format: 'gapwake.outcome/1',
       title: settings.title,
@@ -160,48 +131,99 @@ export class Analysis {
       verdict,
       theory,
       onset,
-      oscillation: oscillationOf(this.#events.extremes, largest, now.time),
-      peak: { current_A: this.#events.peak.current, time_s: this.#events.peak.time, gap_voltage_V: this.#events.peak.voltage },
-      final: {
-        time_s: now.time,
-        stop,
-        gap_voltage_V: V,
-        current_A: now.current,
-        cathode_field_V_per_m: Math.abs(cathodeField(layout, now.y)),
-        cathode_layer_m: layer?.thickness ?? null,
-      },
-      energy: {
-        gap_J: this.#energy.gap,
-        source_J: this.#energy.source,
-        after_trip_J: this.#gapEnergyAtTrip === null ? null : this.#energy.gap - this.#gapEnergyAtTrip,
-      },
-      currents: this.#events.levels.map((l) => ({ level_A: l.level, time_s: l.time, gap_voltage_V: l.voltage })),
-      cautions,
-      numerics: {
-        cells: layout.cells,
-        tolerance: settings.numerics.tolerance,
-        steps: march.steps,
-        rejected: march.rejected,
-        newton: march.solves,
-        wall_s: wall,
-        charge_defect: this.#numerics.chargeDefect(),
-        worst_undershoot: this.#numerics.worstUndershoot,
-      },
+      oscillation: findings.oscillation,
+      peak: { current_A: peak.current, time_s: peak.time, gap_voltage_V: peak.voltage },
+      final,
+      energy: { gap_J: this.#energy.gap, source_J: this.#energy.source, after_trip_J: this.#trip.energyAfter() },
+      currents: levels.map((l) => ({ level_A: l.level, time_s: l.time, gap_voltage_V: l.voltage })),
+      cautions: this.#cautions(verdict, onset, final, theory, outlook),
+      numerics: this.#report(wall),
     };
   }
 
-  #onset(): Onset {
-    const events = this.#events;
-    const end = events.lagEnd;
-    const space = events.spaceCharge;
+  #final(stop: Stop): Final {
+    const { system, march } = this.#context;
+    const { now } = march();
     return {
-      threshold_time_s: events.thresholdTime,
-      space_charge_time_s: space?.time ?? null,
-      collapse_time_s: events.collapseTime,
-      formative_lag_s: end === null || events.thresholdTime === null ? null : end.time - events.thresholdTime,
-      lag_ends_at: end?.kind ?? null,
-      gap_voltage_V: end?.voltage ?? null,
-      growth_rate_per_s: this.#growth.rate(),
+      time_s: now.time,
+      stop,
+      gap_voltage_V: now.y[system.layout.voltage],
+      current_A: now.current,
+      cathode_field_V_per_m: Math.abs(cathodeField(system.layout, now.y)),
+      cathode_layer_m: cathodeLayer(system.grid, system.layout, now.y)?.thickness ?? null,
+    };
+  }
+
+  #findings(onset: Onset, final: Final, theory: Theory, outlook: Prospects): Findings {
+    const { settings, ionTransit } = this.#context;
+    const { selfSustaining, feedback, distortion, growth, brokeDown } = this.#sustain;
+    const { time, stretches, decades } = this.#threshold;
+    const { range } = settings.gas.coefficients.ionisation;
+    const x = outlook.breakdownReducedField;
+    return {
+      brokeDown,
+      arcRisk: this.#arc.risk,
+      largestDistortion: this.#lag.largestDistortion,
+      onset,
+      oscillation: oscillationOf(this.#swing.swings.turns, final.time_s),
+      above: { time, stretches, decades },
+      trip: this.#trip.time === null ? null : { time: this.#trip.time, byCharging: this.#trip.byCharging },
+      end: {
+        stop: final.stop,
+        time: final.time_s,
+        current: Math.abs(final.current_A),
+        voltage: Math.abs(final.gap_voltage_V),
+        selfSustaining,
+        feedback,
+        distortion,
+        growth,
+        theoreticalGrowth: predict(settings, final.gap_voltage_V).growth_rate_per_s,
+      },
+      ionTransit,
+      largestGapVoltage: this.#openGap.largestGapVoltage,
+      polarities: polaritiesOf(settings, this.#openGap.highest, this.#openGap.lowest),
+      thresholdOutsideData: x !== null && range !== null && (x < range.from || x > range.to),
+      overvoltage: theory.overvoltage,
+      breakdownUncertainty: settings.gas.breakdownUncertainty,
+    };
+  }
+
+  #cautions(verdict: Verdict, onset: Onset, final: Final, theory: Theory, outlook: Prospects): Caution[] {
+    const { settings, system } = this.#context;
+    const { largest } = this.#openGap;
+    const current = Math.abs(final.current_A);
+    const behindResistance = system.circuit.feed === 'resistor' && largest !== 0;
+    return cautionsOf(settings, largest, theory, outlook, {
+      broken: verdict.state === 'breaks-down',
+      held: verdict.state === 'holds',
+      arcRisk: this.#arc.risk,
+      largestCurrent: this.#arc.largestCurrent,
+      thresholdTime: onset.threshold_time_s,
+      lag: onset.formative_lag_s,
+      timeAboveThreshold: this.#threshold.time,
+      largestFeedback: this.#threshold.largestFeedback,
+      steadyGlow: final.stop === 'steady' && this.#sustain.distorted && this.#sustain.selfSustaining,
+      currentDensity: current / settings.gap.area,
+      largestCathodeField: this.#layer.largestField,
+      outside: this.#range.shares(),
+      seedDrop: behindResistance ? (current * system.circuit.resistance) / Math.abs(largest) : 0,
+      layerCells: this.#layer.fewestCells,
+      undershoot: this.#numerics.worstInDischarge,
+    });
+  }
+
+  #report(wall: number): Outcome['numerics'] {
+    const { settings, system, march } = this.#context;
+    const { steps, rejected, solves } = march();
+    return {
+      cells: system.layout.cells,
+      tolerance: settings.numerics.tolerance,
+      steps,
+      rejected,
+      newton: solves,
+      wall_s: wall,
+      charge_defect: this.#numerics.chargeDefect(),
+      worst_undershoot: this.#numerics.worstUndershoot,
     };
   }
 }

@@ -11,12 +11,7 @@ export interface RunContext extends Scales {
   readonly march: () => March;
 }
 
-/** V_s for the polarity of a voltage. */
+/** V_s for the polarity of a voltage [V]; null where no voltage sustains a discharge. */
 export function thresholdFor(context: RunContext, voltage: number): number | null {
   return voltage < 0 ? context.threshold.negative : context.threshold.positive;
-}
-
-/** Field [V/m] below which distortion is taken relative to it: the Laplace field at V_s/4. */
-export function distortionFloor(context: RunContext, voltage: number): number {
-  return (thresholdFor(context, voltage) ?? context.largestVoltage) / 4 / context.settings.gap.spacing;
 }

@@ -1,78 +1,89 @@
-/** λ of I = a + b e^{λt} by least squares, every point weighted by its own size so that each decade counts alike.
+/** Fewest samples that a fit of three parameters is made from. */
+const LEAST_SAMPLES = 6;
+/** How finely λ is looked for before the search closes in. */
+const LOOKS = 60;
+
+/** Least-squares fit of I = a + b e^{λt}, every sample weighted by its own size so that each decade counts alike.
  *
- *  a is what the seed alone would carry. Space charge first acts on a growing mode as c e^{2λt}; up to 1 % field distortion and over
- *  two decades that term moves λ by 0.5 %. So the fit is made without and with it, and where the two differ the points do not
- *  determine λ. (A line through ln I is 4 to 26 % off where the seed's own current is still felt.)
- *  @param t times [s], rising; `current` as many values, of one sign
- *  @returns λ [1/s], or null where the points do not determine it */
+ *  For a given λ the best a and b are linear; λ minimises what remains, found by golden section between bounds from the data.
+ *  (A line through ln I is 4 to 26 % off where the seed's own current is still felt.)
+ *  @param t times [s], rising
+ *  @param current as many values above zero [A]
+ *  @returns λ [1/s], above zero, or null where the samples do not determine it */
 export function fitGrowth(t: readonly number[], current: readonly number[]): number | null {
   const n = t.length;
-  if (n < 8) return null;
-  const slope = Math.log(current[n - 1] / current[n - 2]) / (t[n - 1] - t[n - 2]);
-  if (!(slope > 0)) return null;
-  const short = fit(t, current, 2, slope);
-  const long = fit(t, current, 3, slope);
-  return Math.abs(long / short - 1) < LARGEST_DOUBT ? long : null;
+  if (n < LEAST_SAMPLES) return null;
+  const mean = Math.log(current[n - 1] / current[0]) / (t[n - 1] - t[0]);
+  if (!(mean > 0)) return null;
+  // with a below 0 the current rises faster than e^{λt} at first, with a above 0 more slowly; the end is nearest to λ
+  const tail = Math.log(current[n - 1] / current[n - 2]) / (t[n - 1] - t[n - 2]);
+  const low = 0.3 * Math.min(mean, tail > 0 ? tail : mean);
+  const high = 3 * Math.max(mean, tail);
+  const remains = (lambda: number): number => remainder(t, current, lambda);
+  // a coarse look first: what remains has one valley, but a wide flat side
+  const ratio = (high / low) ** (1 / LOOKS);
+  let best = low;
+  let least = Infinity;
+  for (let k = 0; k <= LOOKS; k++) {
+    const lambda = low * ratio ** k;
+    const r = remains(lambda);
+    if (r < least) {
+      least = r;
+      best = lambda;
+    }
+  }
+  return Number.isFinite(least) ? minimum(remains, best / ratio, best * ratio) : null;
 }
 
-/** Relative difference of the two fits up to which λ counts as determined. */
-const LARGEST_DOUBT = 4e-3;
+/** Σ ((a + b e^{λt})/I − 1)² at the best a and b; Infinity where these are not determined. */
+function remainder(t: readonly number[], current: readonly number[], lambda: number): number {
+  const end = t[t.length - 1];
+  let s11 = 0;
+  let s12 = 0;
+  let s22 = 0;
+  let r1 = 0;
+  let r2 = 0;
+  for (let i = 0; i < t.length; i++) {
+    const u = 1 / current[i];
+    const v = u * Math.exp(lambda * (t[i] - end));
+    s11 += u * u;
+    s12 += u * v;
+    s22 += v * v;
+    r1 += u;
+    r2 += v;
+  }
+  const determinant = s11 * s22 - s12 * s12;
+  if (!(Math.abs(determinant) > 1e-14 * s11 * s22)) return Infinity;
+  const a = (r1 * s22 - r2 * s12) / determinant;
+  const b = (s11 * r2 - s12 * r1) / determinant;
+  let sum = 0;
+  for (let i = 0; i < t.length; i++) sum += ((a + b * Math.exp(lambda * (t[i] - end))) / current[i] - 1) ** 2;
+  return sum;
+}
 
-/** The λ whose best a, b (and c) leave the smallest residual. Half of λ fits nearly as well with b and c in each other's place, so the
- *  search stays close to the last slope of ln I, which it is known to within a few per cent. */
-function fit(t: readonly number[], current: readonly number[], terms: number, slope: number): number {
-  const columns = Array.from({ length: terms }, () => new Float64Array(t.length));
-  const rest = new Float64Array(t.length);
-  let low = 0.75 * slope;
-  let high = 1.1 * slope;
+/** Where f is smallest between two places with one valley between them, by golden section. */
+function minimum(f: (x: number) => number, from: number, to: number): number {
   const golden = (Math.sqrt(5) - 1) / 2;
+  let low = from;
+  let high = to;
   let x1 = high - golden * (high - low);
   let x2 = low + golden * (high - low);
-  let f1 = residual(t, current, x1, columns, rest);
-  let f2 = residual(t, current, x2, columns, rest);
-  while (high - low > 1e-8 * high) {
+  let f1 = f(x1);
+  let f2 = f(x2);
+  for (let k = 0; k < 80 && high - low > 1e-9 * high; k++) {
     if (f1 < f2) {
       high = x2;
       x2 = x1;
       f2 = f1;
       x1 = high - golden * (high - low);
-      f1 = residual(t, current, x1, columns, rest);
+      f1 = f(x1);
     } else {
       low = x1;
       x1 = x2;
       f1 = f2;
       x2 = low + golden * (high - low);
-      f2 = residual(t, current, x2, columns, rest);
+      f2 = f(x2);
     }
   }
   return (low + high) / 2;
-}
-
-/** What the best combination of 1, e^{λt}, e^{2λt}, … leaves of the weighted current, which is 1 everywhere: Gram and Schmidt. */
-function residual(t: readonly number[], current: readonly number[], lambda: number, columns: Float64Array[], rest: Float64Array): number {
-  const last = t.length - 1;
-  for (let i = 0; i <= last; i++) {
-    const growth = Math.exp(lambda * (t[i] - t[last]));
-    let value = current[last] / current[i];
-    for (const column of columns) {
-      column[i] = value;
-      value *= growth;
-    }
-  }
-  rest.fill(1);
-  columns.forEach((column, k) => {
-    const size = dot(column, column);
-    if (!(size > 0)) return;
-    for (const other of [...columns.slice(k + 1), rest]) {
-      const share = dot(column, other) / size;
-      for (let i = 0; i <= last; i++) other[i] -= share * column[i];
-    }
-  });
-  return dot(rest, rest);
-}
-
-function dot(a: Float64Array, b: Float64Array): number {
-  let sum = 0;
-  for (let i = 0; i < a.length; i++) sum += a[i] * b[i];
-  return sum;
 }

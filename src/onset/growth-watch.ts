@@ -1,6 +1,6 @@
-import type { GapSystem } from '../march/gap-system.ts';
 import type { Observer, Step } from '../march/march.ts';
-import { cathodeDistortion } from '../observables/walls.ts';
+import type { RunContext } from './context.ts';
+import type { Distortion } from './distortion.ts';
 import { fitGrowth } from './growth-fit.ts';
 
 /** Largest field distortion, and relative change of the voltage, over which growth counts as undisturbed. */
@@ -11,92 +11,120 @@ const LEAST_TRANSITS = 2;
 const LEAST_DECADES = 1.5;
 const SAMPLES_PER_STEP = 4;
 
-/** Collects the current over the longest interval of undisturbed growth and fits its rate. */
+/** Collects the current over the longest interval of undisturbed growth and fits its rate.
+ *
+ *  The interval is the longest stretch before the field is distorted by 1 % in which the voltage stays within 1e-4, less the time in
+ *  which the growth settles. */
 export class GrowthWatch implements Observer {
-  readonly #system: GapSystem;
-  readonly #ionTransit: number;
-  readonly #floor: number;
+  readonly #context: RunContext;
+  readonly #distortion: Distortion;
   readonly #scratch: Float64Array;
-  #t: number[] = [];
-  #I: number[] = [];
-  #start = 0;
-  #voltage = Number.NaN;
-  #best: { t: number[]; I: number[] } | null = null;
+  /** the present stretch of constant voltage */
+  #time: number[] = [];
+  #current: number[] = [];
+  #voltage: number[] = [];
+  #least = Infinity;
+  #most = -Infinity;
+  #best: { readonly time: number[]; readonly current: number[] } | null = null;
   #ended = false;
 
-  /** @param floor of the field that distortion is relative to [V/m] */
-  constructor(system: GapSystem, ionTransit: number, floor: number) {
-    this.#system = system;
-    this.#ionTransit = ionTransit;
-    this.#floor = floor;
-    this.#scratch = new Float64Array(system.layout.size);
+  constructor(context: RunContext, distortion: Distortion) {
+    this.#context = context;
+    this.#distortion = distortion;
+    this.#scratch = new Float64Array(context.system.layout.size);
   }
 
   look(step: Step): boolean {
     if (this.#ended) return false;
-    const { layout, grid } = this.#system;
-    const { y, time } = step.end;
-    const V = y[layout.voltage];
-    if (cathodeDistortion(layout, grid.spacing, this.#floor, y) > LINEAR_DISTORTION) {
-      this.#sampleUntilDistorted(step);
-      this.#close();
+    const { start, end } = step;
+    if (this.#distortion.of(end.y) > LINEAR_DISTORTION) {
       this.#ended = true;
-      return false;
-    }
-    if (!(Math.abs(V - this.#voltage) <= STEADY_VOLTAGE * Math.abs(this.#voltage))) {
-      this.#close();
-      this.#voltage = V;
-      this.#start = time;
-      return false;
-    }
-    this.#sample(step, 1);
+      const excess = (y: Float64Array): number => this.#distortion.of(y) - LINEAR_DISTORTION;
+      const before = excess(start.y);
+      if (before < 0 && end.time > start.time)
+        this.#sample(
+          step,
+          step.crossing(before, excess(end.y), (_t, y) => excess(y)),
+        );
+      this.#keepLongest();
+    } else this.#sample(step, end.time);
     return false;
   }
 
   /** λ [1/s] of the longest interval; null where none is long enough or the growth too small. */
   rate(): number | null {
-    this.#close();
-    return this.#best === null ? null : fitGrowth(this.#best.t, this.#best.I);
+    this.#keepLongest();
+    return this.#best === null ? null : fitGrowth(this.#best.time, this.#best.current);
   }
 
-  #sample(step: Step, share: number): void {
-    const from = step.start.time;
-    const span = step.end.time - from;
-    for (let j = 1; j <= SAMPLES_PER_STEP; j++) {
-      const theta = (share * j) / SAMPLES_PER_STEP;
-      const t = from + theta * span;
-      if (t < this.#start + SETTLING_TRANSITS * this.#ionTransit) continue;
-      let current = step.end.current;
-      if (theta < 1) {
+  /** Takes the current from the start of the step to `until`: only there once growth has settled, else at the end alone. */
+  #sample(step: Step, until: number): void {
+    const { start, end } = step;
+    const settled = this.#time.length > 0 && end.time >= this.#settledFrom();
+    const count = settled ? SAMPLES_PER_STEP : 1;
+    for (let j = 1; j <= count; j++) {
+      const t = j === count ? until : start.time + (j / count) * (until - start.time);
+      if (t >= end.time) this.#add(end.time, end.current, end.y);
+      else {
         step.stateAt(t, this.#scratch);
-        current = step.currentOf(t, this.#scratch);
+        this.#add(t, step.currentOf(t, this.#scratch), this.#scratch);
       }
-      this.#t.push(t);
-      this.#I.push(Math.abs(current));
     }
   }
 
-  #sampleUntilDistorted(step: Step): void {
-    const { layout, grid } = this.#system;
-    const excess = (y: Float64Array): number => cathodeDistortion(layout, grid.spacing, this.#floor, y) - LINEAR_DISTORTION;
-    const before = excess(step.start.y);
-    const from = step.start.time;
-    const span = step.end.time - from;
-    if (!(before < 0) || !(span > 0)) return;
-    const when = step.crossing(before, excess(step.end.y), (_t, y) => excess(y));
-    this.#sample(step, (when - from) / span);
+  #add(t: number, current: number, y: Float64Array): void {
+    const V = y[this.#context.system.layout.voltage];
+    const least = Math.min(this.#least, V);
+    const most = Math.max(this.#most, V);
+    if (!within(least, most) && this.#time.length > 0) {
+      this.#keepLongest();
+      this.#forget(V);
+    } else {
+      this.#least = least;
+      this.#most = most;
+    }
+    this.#time.push(t);
+    this.#current.push(Math.abs(current));
+    this.#voltage.push(V);
   }
 
-  #close(): void {
-    const t = this.#t;
-    const I = this.#I;
-    const n = t.length;
-    if (n > 1 && t[n - 1] - t[0] >= LEAST_TRANSITS * this.#ionTransit && I[n - 1] > I[0] * 10 ** LEAST_DECADES && I[0] > 0) {
-      const span = t[n - 1] - t[0];
-      const had = this.#best === null ? 0 : this.#best.t[this.#best.t.length - 1] - this.#best.t[0];
-      if (span > had) this.#best = { t, I };
+  /** Drops the oldest samples, as many as keep the voltage from being constant. */
+  #forget(V: number): void {
+    let least = V;
+    let most = V;
+    let first = this.#time.length;
+    for (; first > 0; first--) {
+      const v = this.#voltage[first - 1];
+      if (!within(Math.min(least, v), Math.max(most, v))) break;
+      least = Math.min(least, v);
+      most = Math.max(most, v);
     }
-    this.#t = [];
-    this.#I = [];
+    this.#time = this.#time.slice(first);
+    this.#current = this.#current.slice(first);
+    this.#voltage = this.#voltage.slice(first);
+    this.#least = least;
+    this.#most = most;
   }
+
+  #settledFrom(): number {
+    return this.#time[0] + SETTLING_TRANSITS * this.#context.ionTransit;
+  }
+
+  #keepLongest(): void {
+    if (this.#time.length === 0) return;
+    const from = this.#settledFrom();
+    const first = this.#time.findIndex((t) => t >= from);
+    if (first < 0) return;
+    const time = this.#time.slice(first);
+    const current = this.#current.slice(first);
+    const last = time.length - 1;
+    const span = time[last] - time[0];
+    const grown = current[0] > 0 && current[last] > current[0] * 10 ** LEAST_DECADES;
+    if (!grown || span < LEAST_TRANSITS * this.#context.ionTransit) return;
+    if (this.#best === null || span > this.#best.time[this.#best.time.length - 1] - this.#best.time[0]) this.#best = { time, current };
+  }
+}
+
+function within(least: number, most: number): boolean {
+  return most - least < STEADY_VOLTAGE * Math.max(Math.abs(least), Math.abs(most));
 }

@@ -93,6 +93,6 @@ export interface NumericsReport {
   readonly wall_s: number;
   /** largest violation of the charge balance of gap, walls and circuit, relative to the charge passed */
   readonly charge_defect: number;
-  /** most negative density over the largest of its species at that instant, as a positive number */
+  /** most negative density over the largest its species had had by then, as a positive number */
   readonly worst_undershoot: number;
 }

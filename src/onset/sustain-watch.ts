@@ -1,152 +1,82 @@
 import type { Observer, Step } from '../march/march.ts';
 import { carriers } from '../observables/charge.ts';
-import { cathodeDistortion, seedShare } from '../observables/walls.ts';
-import { distortionFloor, type RunContext } from './context.ts';
-import { SPACE_CHARGE_DISTORTION } from './event-watch.ts';
-import { Trace } from './trace.ts';
+import { seedShare } from '../observables/walls.ts';
+import type { RunContext } from './context.ts';
+import { type Distortion, SPACE_CHARGE_DISTORTION } from './distortion.ts';
+import { RecentCurrent } from './recent-current.ts';
 
 /** Largest share of the seed in the cathode's emission of a discharge that sustains itself. */
 const LARGEST_SEED_SHARE = 0.01;
 /** Relative fall over one ion transit that counts as decay. */
 const DECAY = 0.01;
-/** Gap charge below this share of its peak counts as died out. */
-const DIED_OUT = 1e-6;
+/** Gap charge below this share of its peak counts as gone. */
+const GONE = 1e-6;
+/** The seed's own level is recognised when the seed makes this part of the emission that it makes in a steady state below
+ *  threshold, 1 − q. */
+const SEED_LEVEL = 0.9;
+/** Gap charge below this share of its peak has fallen, not still risen. */
+const FALLEN = 0.01;
 
-/** Follows whether the discharge sustains itself, has died out, or has settled. */
+/** Follows whether the discharge sustains itself, and whether it has died out. */
 export class SustainWatch implements Observer {
   readonly #context: RunContext;
-  readonly trace: Trace = new Trace();
-  /** self-sustaining with distorted field at some time: breakdown */
+  readonly #distortion: Distortion;
+  readonly #recent: RecentCurrent;
+  /** self-sustaining with a distorted field at some time: breakdown */
   brokeDown = false;
   selfSustaining = false;
-  distortedNow = false;
-  #everAbove = false;
+  /** is the field at the cathode distorted by a tenth now? */
+  distorted = false;
+  distortion = 0;
+  /** q_L now */
+  feedback = 0;
+  /** ln of the growth of |I| over the last ion transit; null while there is no past to compare with */
+  growth: number | null = null;
+  /** number of charge carriers in the gap */
+  carriers = 0;
+  /** gap charge gone, or fallen to what the seed keeps? */
+  faded = false;
   #peakCarriers = 0;
-  carriersNow = 0;
-  #lastUnsettled = 0;
-  largestArcTime = 0;
-  #arcSince: number | null = null;
-  arcRisk = false;
-  /** lowest current at which q_L first exceeded 1, for the reason */
-  currentAtThreshold: number | null = null;
+  /** q_L ≥ 1 now, or earlier with no dying out since */
+  #alive = false;
 
-  constructor(context: RunContext) {
+  constructor(context: RunContext, distortion: Distortion) {
     this.#context = context;
+    this.#distortion = distortion;
+    this.#recent = new RecentCurrent(context.ionTransit);
   }
 
   look(step: Step): boolean {
-    const { system, settings } = this.#context;
+    const { system } = this.#context;
     const { layout, grid } = system;
-    const { end, start } = step;
-    const y = end.y;
+    const { time, y, current } = step.end;
     const V = y[layout.voltage];
-    this.trace.add(end.time, end.current, V);
-    const q = this.#context.feedback(V);
-    const distortion = cathodeDistortion(layout, grid.spacing, distortionFloor(this.#context, V), y);
-    this.distortedNow = distortion >= SPACE_CHARGE_DISTORTION;
-    this.carriersNow = carriers(grid, layout, y);
-    this.#peakCarriers = Math.max(this.#peakCarriers, this.carriersNow);
-    if (q >= 1) {
-      this.#everAbove = true;
-      this.currentAtThreshold ??= Math.abs(end.current);
-    }
-    if (this.#faded()) this.#everAbove = q >= 1;
+    this.#recent.add(time, current);
+    this.growth = this.#recent.growth();
+    this.feedback = this.#context.feedback(V);
+    this.distortion = this.#distortion.of(y);
+    this.distorted = this.distortion >= SPACE_CHARGE_DISTORTION;
+    this.carriers = carriers(grid, layout, y);
+    this.#peakCarriers = Math.max(this.#peakCarriers, this.carriers);
+
     const share = seedShare(system.equations.at, V >= 0, layout.cells);
-    this.selfSustaining =
-      share < LARGEST_SEED_SHARE &&
-      end.current !== 0 &&
-      this.growthOverTransit(end.time, end.current) > -DECAY &&
-      (q >= 1 || this.#everAbove || this.distortedNow);
-    if (this.selfSustaining && this.distortedNow) this.brokeDown = true;
-    this.#watchArc(end.time, Math.abs(end.current), Math.abs(V));
-    if (end.time > start.time) this.#watchRates(step, q, settings.observe.until);
-    return this.stopsAs(end.time, q) !== null;
+    const gone = this.#peakCarriers > 0 && this.carriers <= GONE * this.#peakCarriers;
+    const atSeedLevel = this.#drivenBySeed(step) && share >= SEED_LEVEL * (1 - this.feedback);
+    this.faded = gone || (atSeedLevel && this.carriers < FALLEN * this.#peakCarriers);
+    if (this.feedback >= 1) this.#alive = true;
+    else if (gone || atSeedLevel) this.#alive = false;
+
+    // before a whole ion transit has passed only the feedback can tell growth from decay
+    const lasting = this.growth === null ? this.feedback >= 1 : this.growth > -DECAY;
+    this.selfSustaining = share < LARGEST_SEED_SHARE && current !== 0 && lasting && (this.#alive || this.distorted);
+    if (this.selfSustaining && this.distorted) this.brokeDown = true;
+    return false;
   }
 
-  /** ln of the growth of |I| over the last ion transit; +Infinity while there is no past to compare with. */
-  growthOverTransit(t: number, current: number): number {
-    const past = this.trace.currentAt(t - this.#context.ionTransit);
-    if (past === null || past === 0) return Infinity;
-    return Math.log(Math.abs(current) / past);
-  }
-
-  /** Why the run may end at t, or null. */
-  stopsAs(t: number, q: number): 'steady' | 'died-out' | 'tripped-out' | 'model-limit' | null {
-    const march = this.#context.march();
-    if (this.#arcSince !== null && t - this.#arcSince > ARC_SECONDS) return 'model-limit';
-    if (march.trip !== null && Number.isFinite(march.trip.actsAt)) return null;
-    const { circuit } = march.system;
-    if (this.#quiet(t)) return march.trip?.acted ? 'tripped-out' : 'died-out';
-    if (circuit.nextCorner(t) < Infinity && circuit.feed !== 'open') return null;
-    if (!(q <= 1.0001 || this.distortedNow)) return null;
-    const { ionTransit } = this.#context;
-    const window = Math.max(10 * ionTransit, 5 * circuit.resistance * march.system.capacitance);
-    return t - this.#lastUnsettled >= window ? 'steady' : null;
-  }
-
-  /** Gap charge gone, or down to what the seed keeps, and nothing to come that could lift the voltage above V_s. */
-  #quiet(t: number): boolean {
-    const march = this.#context.march();
-    if (!(this.#peakCarriers > 0) || t < this.#context.ionTransit) return false;
-    const { system } = march;
-    const V = march.state[system.layout.voltage];
-    const least = Math.min(this.#context.threshold.positive ?? Infinity, this.#context.threshold.negative ?? Infinity);
-    const future = system.circuit.feed === 'open' ? 0 : system.circuit.largestSupplyFrom(t);
-    if (Math.max(Math.abs(V), future) >= least) return false;
-    return this.#faded();
-  }
-
-  #faded(): boolean {
-    return this.carriersNow <= DIED_OUT * this.#peakCarriers || (this.#fell && this.#atSeedLevel());
-  }
-
-  /** has the charge once been far above what it is now? */
-  get #fell(): boolean {
-    return this.carriersNow < 1e-2 * this.#peakCarriers;
-  }
-
-  #atSeedLevel(): boolean {
-    const { settings, feedback } = this.#context;
-    const seed = settings.seed.cathodeCurrent;
-    const march = this.#context.march();
-    const V = march.state[march.system.layout.voltage];
-    const q = feedback(V);
-    if (!(seed > 0) || q >= 1) return false;
-    const share = seedShare(march.system.equations.at, V >= 0, march.system.layout.cells);
-    // steady below threshold, the seed's share of the emission is 1 − q
-    return share >= 0.9 * (1 - q);
-  }
-
-  #watchRates(step: Step, q: number, until: number): void {
-    const { settings, system } = this.#context;
-    const { start, end } = step;
-    const span = end.time - start.time;
-    const left = until - end.time;
-    const rate = (a: number, b: number): number => (a === b ? 0 : Math.abs(b - a) / (span * Math.max(Math.abs(a), Math.abs(b))));
-    const V = system.layout.voltage;
-    const fastest = Math.max(rate(start.y[V], end.y[V]), rate(start.current, end.current), rate(this.#previousCarriers, this.carriersNow));
-    this.#previousCarriers = this.carriersNow;
-    if (fastest * left > settings.numerics.tolerance || !(q <= 1.0001 || this.distortedNow)) this.#lastUnsettled = end.time;
-  }
-
-  #previousCarriers = 0;
-
-  #watchArc(t: number, current: number, voltage: number): void {
-    const j = current / this.#context.settings.gap.area;
-    const power = voltage * j > ARC_POWER_DENSITY;
-    const beyond = j > ARC_CURRENT_DENSITY || current > ARC_CURRENT;
-    if (beyond) this.arcRisk = true;
-    if (!(beyond || power)) {
-      this.#arcSince = null;
-      return;
-    }
-    this.#arcSince ??= t;
-    if (t - this.#arcSince > ARC_SECONDS) this.arcRisk = true;
+  /** Can only the seed keep a current up? Not where the supply could: a discharge that a high resistance holds just below threshold
+   *  has the same share of seed electrons, yet would go on without them. */
+  #drivenBySeed(step: Step): boolean {
+    const sustained = this.feedback >= 1 || this.#context.feedback(step.openGapAt(step.end.time)) >= 1;
+    return this.#context.settings.seed.cathodeCurrent > 0 && !sustained;
   }
 }
-
-/** Where a glow may pass into an arc; common practice, from memory. */
-const ARC_CURRENT_DENSITY = 1e3; // A/m², 0.1 A/cm²
-const ARC_CURRENT = 1; // A
-const ARC_POWER_DENSITY = 1e6; // W/m², 100 W/cm²
-const ARC_SECONDS = 1e-3;

@@ -6,12 +6,14 @@ export class OpenGap {
   readonly #resistance: number;
   readonly #capacitance: number;
   readonly #limit: number;
-  #time = 0;
+  #time: number;
   #voltage: number;
 
   /** @param capacitance C_p + C_gap [F]
-   *  @param voltage at t = 0 [V] */
-  constructor(circuit: Circuit, capacitance: number, voltage: number) {
+   *  @param voltage at `time` [V]
+   *  @param time [s] from which on it is advanced */
+  constructor(circuit: Circuit, capacitance: number, voltage: number, time = 0) {
+    this.#time = time;
     this.#resistance = circuit.resistance;
     this.#capacitance = capacitance;
     this.#limit = circuit.limit ?? Infinity;

@@ -1,0 +1,47 @@
+import type { Observer, Step } from '../march/march.ts';
+import { OpenGap } from '../supply/open-gap.ts';
+import type { RunContext } from './context.ts';
+import { followOpenGap, turnOfOpenGap } from './highest-voltage.ts';
+
+/** The largest open-gap voltages of a run, of either sign, and the largest voltage the gap itself saw. */
+export class OpenGapWatch implements Observer {
+  readonly #context: RunContext;
+  /** V_open of the largest magnitude, with its sign [V]; the first of equals */
+  largest = 0;
+  highest = 0;
+  lowest = 0;
+  /** |V| [V] */
+  largestGapVoltage = 0;
+
+  constructor(context: RunContext) {
+    this.#context = context;
+  }
+
+  look(step: Step): boolean {
+    const { start, end } = step;
+    const { circuit, layout } = this.#context.system;
+    this.largestGapVoltage = Math.max(this.largestGapVoltage, Math.abs(start.y[layout.voltage]), Math.abs(end.y[layout.voltage]));
+    this.#take(step.openGapAt(start.time));
+    if (circuit.feed !== 'open') {
+      const turned = turnOfOpenGap(circuit, step.openGapAt, start.time, end.time);
+      if (turned !== null) this.#take(turned);
+    }
+    this.#take(step.openGapAt(end.time));
+    return false;
+  }
+
+  /** Takes in what the open gap would still see after the run has ended early, so that an early end changes nothing. */
+  lookAhead(): void {
+    const { march, system, settings } = this.#context;
+    const { openGap, time } = march();
+    if (system.circuit.feed === 'open') return;
+    const ahead = new OpenGap(system.circuit, system.capacitance, openGap.voltage, time);
+    followOpenGap(system.circuit, ahead, time, settings.observe.until, (voltage) => this.#take(voltage));
+  }
+
+  #take(voltage: number): void {
+    if (Math.abs(voltage) > Math.abs(this.largest)) this.largest = voltage;
+    this.highest = Math.max(this.highest, voltage);
+    this.lowest = Math.min(this.lowest, voltage);
+  }
+}

@@ -1,0 +1,37 @@
+import type { GapSystem } from '../march/gap-system.ts';
+import type { Observer, Step } from '../march/march.ts';
+import { Swings } from './swings.ts';
+
+/** Follows the swings of the gap voltage. */
+export class SwingWatch implements Observer {
+  readonly #system: GapSystem;
+  readonly #scratch: Float64Array;
+  readonly swings: Swings;
+
+  /** @param smallest swing that counts [V] */
+  constructor(system: GapSystem, smallest: number) {
+    this.#system = system;
+    this.#scratch = new Float64Array(system.layout.size);
+    this.swings = new Swings(smallest);
+  }
+
+  look(step: Step): boolean {
+    const { start, end } = step;
+    if (end.time > start.time && start.voltageRate * end.voltageRate < 0) this.#turn(step);
+    this.swings.add(end.time, this.#voltage(end.y));
+    return false;
+  }
+
+  #turn(step: Step): void {
+    const time = step.crossing(step.start.voltageRate, step.end.voltageRate, (t, y) => {
+      step.currentOf(t, y);
+      return this.#system.voltageRate;
+    });
+    step.stateAt(time, this.#scratch);
+    this.swings.add(time, this.#voltage(this.#scratch));
+  }
+
+  #voltage(y: Float64Array): number {
+    return y[this.#system.layout.voltage];
+  }
+}
