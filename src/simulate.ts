@@ -6,7 +6,7 @@ import { lawsOf } from './laws/of-case.ts';
 import { GapSystem } from './march/gap-system.ts';
 import { initialState } from './march/initial.ts';
 import { March, MarchFailure } from './march/march.ts';
-import { RODASP } from './march/scheme.ts';
+import { RODAS } from './march/scheme.ts';
 import { Analysis } from './onset/analysis.ts';
 import type { RunContext } from './onset/context.ts';
 import type { Outcome, Stop } from './onset/outcome.ts';
@@ -99,7 +99,7 @@ function assemble(settings: Case, watch: Watch): { march: March; analysis: Analy
     initial,
     {
       until: settings.observe.until,
-      scheme: RODASP,
+      scheme: RODAS,
       errorScale: scales.errorScale(laws.species.length),
       electronTransit: scales.electronTransit,
       ionTransit: scales.ionTransit,
