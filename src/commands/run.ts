@@ -13,9 +13,9 @@ import { coefficientsUsed } from './coefficients.ts';
 import { EXIT } from './exit-codes.ts';
 import { Failure, problemWithoutPlace } from './failure.ts';
 import { printable, printableJson } from './printable.ts';
-import { progressLine } from './progress.ts';
+import { type ProgressLine, progressLine } from './progress.ts';
 import { type FileWritten, runText } from './run-text.ts';
-import { listenForStop } from './signals.ts';
+import { listenForStop, type StopRequest } from './signals.ts';
 import type { Terminal } from './terminal.ts';
 
 /** Simulates a case once and says what happened.
@@ -24,46 +24,64 @@ import type { Terminal } from './terminal.ts';
 export async function run(path: string, options: RunOptions, terminal: Terminal): Promise<number> {
   const loaded = loadCase(path, options.set);
   const stop = listenForStop();
-  const progress = options.quiet ? null : progressLine(terminal);
   const recording = new Recording(loaded, options.set);
   try {
     // before anything is computed: the path may be no good
     if (options.output !== undefined) await recording.prepare(options.output);
+    const { outcome, failure } = await follow(path, loaded, stop, recording, options.quiet ? null : progressLine(terminal));
+    const kept = keep(recording, outcome);
+    const problem = failure ?? kept.failure;
+    // with --json a problem is the one object on stdout; a person may still want to know what was found
+    if (options.json && problem === null) terminal.out(printableJson(outcome));
+    if (!options.json && !options.quiet) terminal.out(textOf(loaded.case, outcome, kept.written, terminal));
+    if (problem !== null) throw problem;
+    if (stop.exitCode !== null && outcome.final.stop === 'interrupted') return stop.exitCode;
+    return expectationMet(outcome, options, terminal) ? EXIT.done : EXIT.unexpected;
+  } catch (thrown) {
+    throw thrown instanceof ResultFileError ? fileFailure(thrown) : thrown;
+  } finally {
+    recording.abandon();
+    stop.release();
+  }
+}
+
+/** Simulates, recorded and shown. What was found up to the last good state is worth as much as a whole run. */
+async function follow(
+  path: string,
+  loaded: LoadedCase,
+  stop: StopRequest,
+  recording: Recording,
+  progress: ProgressLine | null,
+): Promise<{ readonly outcome: Outcome; readonly failure: Failure | null }> {
+  try {
     const outcome = await simulate(loaded.case, {
       interrupted: () => stop.exitCode !== null,
       progress: (p) => progress?.show(p),
       begin: (layout) => recording.begin(layout),
       snapshot: (snapshot) => recording.snapshot(snapshot),
     });
-    progress?.end();
-    report(outcome, recording.finish(outcome));
-    if (stop.exitCode !== null && outcome.final.stop === 'interrupted') return stop.exitCode;
-    return expectationMet(outcome, options, terminal) ? EXIT.done : EXIT.unexpected;
+    return { outcome, failure: null };
   } catch (thrown) {
-    progress?.end();
-    if (thrown instanceof ResultFileError) throw fileFailure(thrown);
     if (!(thrown instanceof SimulationFailure)) throw thrown;
-    // what was found up to the last good state is worth keeping
-    const failure = simulationFailure(path, thrown);
-    const { outcome } = thrown;
-    if (outcome) {
-      const written = recording.finish(outcome);
-      if (!options.json) report(outcome, written);
-    }
-    throw failure;
+    return { outcome: thrown.outcome, failure: simulationFailure(path, thrown) };
   } finally {
-    recording.abandon();
-    stop.release();
+    progress?.end();
   }
+}
 
-  function report(outcome: Outcome, written: FileWritten | null): void {
-    if (options.json) terminal.out(printableJson(outcome));
-    else if (!options.quiet) {
-      const settings = loaded.case;
-      const voltage = theoryVoltage(settings, outcome);
-      terminal.out(runText({ settings, outcome, voltage, prospects: prospects(settings, voltage), written }, terminal));
-    }
+/** Finishes the file; a disk that refuses it does not take the verdict away. */
+function keep(recording: Recording, outcome: Outcome): { readonly written: FileWritten | null; readonly failure: Failure | null } {
+  try {
+    return { written: recording.finish(outcome), failure: null };
+  } catch (thrown) {
+    if (!(thrown instanceof ResultFileError)) throw thrown;
+    return { written: null, failure: fileFailure(thrown) };
   }
+}
+
+function textOf(settings: Case, outcome: Outcome, written: FileWritten | null, terminal: Terminal): string {
+  const voltage = theoryVoltage(settings, outcome);
+  return runText({ settings, outcome, voltage, prospects: prospects(settings, voltage), written }, terminal);
 }
 
 /** The result file of a run, if one was asked for. */
