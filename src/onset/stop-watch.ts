@@ -6,6 +6,9 @@ import type { SustainWatch } from './sustain-watch.ts';
 
 /** q_L up to which an undistorted discharge can be steady: the closed form and the simulated threshold differ by less. */
 const STEADY_FEEDBACK = 1.0001;
+/** Share of the growth that the feedback alone would give, below which an undistorted current counts as held by space charge:
+ *  on a rising characteristic (near and left of the minimum) a discharge settles with q_L > 1 and less than a tenth of distortion. */
+const HELD_SHARE = 0.1;
 /** over how many ion transits, and how many charging times of the circuit, nothing may change */
 const TRANSITS = 10;
 const CHARGING_TIMES = 5;
@@ -63,9 +66,12 @@ export class StopWatch implements Observer {
     const { settings, system } = this.#context;
     const { start, end } = step;
     const { feedback, distorted, carriers } = this.#sustain;
-    if (feedback > STEADY_FEEDBACK && !distorted) return false;
     const { voltage } = system.layout;
-    const changes = [change(start.y[voltage], end.y[voltage]), change(start.current, end.current), change(this.#carriersBefore, carriers)];
+    const currentChange = change(start.current, end.current);
+    // feedback above 1 means growth of about q − 1 an ion transit; a current that grows far less is held by its space charge
+    const expected = ((feedback - 1) * (end.time - start.time)) / this.#context.ionTransit;
+    if (feedback > STEADY_FEEDBACK && !distorted && currentChange > HELD_SHARE * expected) return false;
+    const changes = [change(start.y[voltage], end.y[voltage]), currentChange, change(this.#carriersBefore, carriers)];
     const ahead = (settings.observe.until - end.time) / (end.time - start.time);
     return Math.max(...changes) * ahead <= settings.numerics.tolerance;
   }
