@@ -1,11 +1,11 @@
 import { caseJsonSchema, caseTemplate } from '../casefile/index.ts';
+import { highestOpenGapVoltage } from '../onset/highest-voltage.ts';
 import { prognosisCautions } from '../onset/prognosis.ts';
 import { predict, prospects } from '../theory/predict.ts';
 import { VERSION } from '../version.ts';
 import { loadCase } from './case-source.ts';
 import { checkText } from './check-text.ts';
 import type { CheckOptions } from './cli.ts';
-import { highestOpenGapVoltage } from './highest-voltage.ts';
 import { printableJson } from './printable.ts';
 import type { Terminal } from './terminal.ts';
 

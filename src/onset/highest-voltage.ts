@@ -32,17 +32,19 @@ export function followOpenGap(circuit: Circuit, open: OpenGap, from: number, unt
 /** The open-gap voltage where it turns between two times with no corner between, null where it does not turn [V].
  *
  *  On a straight piece of the programme V_supply − V_open decays towards one value, so it changes its sign once at most, and there
- *  V_open turns. */
+ *  V_open turns. It is flat there, so its value is good to the square of the error in time: false position with halving (Illinois),
+ *  because a table may have a million pieces. */
 export function turnOfOpenGap(circuit: Circuit, openGapAt: (t: number) => number, from: number, to: number): number | null {
-  const side = (t: number): number => Math.sign(circuit.supplyVoltage(t) - openGapAt(t));
-  const before = side(from);
-  if (before === 0 || side(to) === before) return null;
-  let low = from;
-  let high = to;
-  for (let k = 0; k < 60; k++) {
-    const middle = (low + high) / 2;
-    if (side(middle) === before) low = middle;
-    else high = middle;
+  const drop = (t: number): number => circuit.supplyVoltage(t) - openGapAt(t);
+  let [a, b, dropA, dropB] = [from, to, drop(from), drop(to)];
+  if (dropA === 0 || Math.sign(dropA) === Math.sign(dropB)) return null;
+  const small = 1e-7 * Math.max(Math.abs(dropA), Math.abs(dropB));
+  for (let k = 0; k < 40 && Math.abs(dropB) > small; k++) {
+    const t = (a * dropB - b * dropA) / (dropB - dropA);
+    const dropT = drop(t);
+    if (Math.sign(dropT) === Math.sign(dropB)) dropA /= 2;
+    else [a, dropA] = [b, dropB];
+    [b, dropB] = [t, dropT];
   }
-  return openGapAt(high);
+  return openGapAt(b);
 }

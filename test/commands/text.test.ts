@@ -1,11 +1,11 @@
 import fc from 'fast-check';
 import { describe, expect, test } from 'vitest';
 import { readCase } from '../../src/casefile/index.ts';
-import { highestOpenGapVoltage } from '../../src/commands/highest-voltage.ts';
 import { columns, lengthOf, NO_BREAK, wrap } from '../../src/commands/layout.ts';
 import { printable, printableJson } from '../../src/commands/printable.ts';
 import { progressLine } from '../../src/commands/progress.ts';
 import type { Terminal } from '../../src/commands/terminal.ts';
+import { highestOpenGapVoltage } from '../../src/onset/highest-voltage.ts';
 import { openCase } from './program.ts';
 
 describe('layout', () => {

@@ -1,1 +1,0 @@
-export { highestOpenGapVoltage } from '../onset/highest-voltage.ts';
