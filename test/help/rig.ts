@@ -8,7 +8,7 @@ import { lawsOf } from '../../src/laws/of-case.ts';
 import { GapSystem } from '../../src/march/gap-system.ts';
 import { initialState } from '../../src/march/initial.ts';
 import { March, type Observer } from '../../src/march/march.ts';
-import { RODASP, type Scheme } from '../../src/march/scheme.ts';
+import { RODAS, type Scheme } from '../../src/march/scheme.ts';
 import { Stepper } from '../../src/march/stepper.ts';
 import { EnergyWatch } from '../../src/onset/energy-watch.ts';
 import { scalesOf } from '../../src/onset/scales.ts';
@@ -25,7 +25,9 @@ export function systemOf(settings: Case, given?: Grid): { system: GapSystem; ini
   const circuit = new Circuit(settings.supply);
   const system = new GapSystem(new GapEquations(grid, layout, laws), circuit);
   const voltage = circuit.begin(0, settings.supply.initialGapVoltage);
-  const initial = initialState(grid, layout, settings.seed.electrons, scales.firstIsLeft, voltage);
+  const alpha = laws.density * laws.ionisation.valueAt(Math.abs(voltage) / (laws.density * grid.spacing));
+  const released = { electrons: settings.seed.electrons, leftIsCathode: scales.firstIsLeft, alpha };
+  const initial = initialState(grid, layout, released, voltage);
   system.settle(initial);
   return { system, initial };
 }
@@ -50,7 +52,7 @@ export function rigOf(settings: Case, observers: (system: GapSystem, energy: Ene
     initial,
     {
       until: settings.observe.until,
-      scheme: RODASP,
+      scheme: RODAS,
       errorScale: scales.errorScale(system.layout.species),
       electronTransit: scales.electronTransit,
       ionTransit: scales.ionTransit,
@@ -68,7 +70,7 @@ export function run(rig: Rig): Rig {
 }
 
 /** A stepper that stands on a state at time t. */
-export function stepperAt(system: GapSystem, state: Float64Array, t: number, scheme: Scheme = RODASP): Stepper {
+export function stepperAt(system: GapSystem, state: Float64Array, t: number, scheme: Scheme = RODAS): Stepper {
   const stepper = new Stepper(system, scheme);
   stepper.start.set(state);
   system.settle(stepper.start);
