@@ -225,7 +225,7 @@ describe('pipes and terminals', () => {
 
   test('a terminal is coloured, never beyond its width, and NO_COLOR is honoured', () => {
     const inTerminal = (columns: number): string =>
-      `script -qec 'stty cols ${columns}; "$NODE" "$GAPWAKE" run holds.yaml' /dev/null </dev/null`;
+      `script -qec 'stty cols ${columns}; "$NODE" "$GAPWAKE" run holds.yaml 2>/dev/null' /dev/null </dev/null`;
     expect(shell(inTerminal(80), { TERM: 'xterm' })).toMatch(colour);
     expect(shell(inTerminal(80), { TERM: 'dumb' })).not.toMatch(colour);
     for (const columns of [80, 60]) {

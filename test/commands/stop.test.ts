@@ -12,9 +12,9 @@ const sleep = (ms: number): Promise<void> => new Promise((resolve) => setTimeout
 /** Starts a run that would take minutes and waits until it has begun to write. */
 async function longRun(name: string, ...args: string[]): Promise<ChildProcess> {
   let csv = 't [us],bias [V]\n';
-  for (let i = 0; i < 500_000; i++) csv += `${i},${i % 2 === 0 ? 50 : 100}\n`;
+  for (let i = 0; i < 60_000; i++) csv += `${i},${i % 2 === 0 ? 50 : 100}\n`;
   program.write('saw.csv', csv);
-  const path = program.write('long.yaml', openCase({ voltage: 'table: { file: saw.csv, time: t, voltage: bias }', until: '0.5 s' }));
+  const path = program.write('long.yaml', openCase({ voltage: 'table: { file: saw.csv, time: t, voltage: bias }', until: '60 ms' }));
   const child = spawn(process.execPath, [program.main(), 'run', path, '-o', `${name}.h5`, ...args], {
     cwd: program.folder(),
     env: plainEnvironment(),
