@@ -71,7 +71,7 @@ export class Analysis {
     this.#growth = new GrowthWatch(context, distortion);
     this.#currents = new CurrentsWatch(system, settings.observe.currents);
     this.#swing = new SwingWatch(system, SMALLEST_SWING * Math.abs(highestOpenGapVoltage(settings)));
-    this.#trip = new TripWatch(context, this.#energy);
+    this.#trip = new TripWatch(context, this.#energy, this.#threshold);
     this.#sustain = new SustainWatch(context, distortion);
     this.#layer = new LayerWatch(system, this.#sustain);
     this.#arc = new ArcWatch(context);
@@ -156,8 +156,9 @@ export class Analysis {
 
   #findings(onset: Onset, final: Final, theory: Theory, outlook: Prospects): Findings {
     const { settings, ionTransit } = this.#context;
-    const { selfSustaining, feedback, distortion, growth, brokeDown } = this.#sustain;
+    const { selfSustaining, feedback, distortion, growth, carrierGrowth, brokeDown } = this.#sustain;
     const { time, stretches, decades } = this.#threshold;
+    const { time: tripTime, byCharging, timeAbove } = this.#trip;
     const { range } = settings.gas.coefficients.ionisation;
     const x = outlook.breakdownReducedField;
     return {
@@ -167,7 +168,7 @@ export class Analysis {
       onset,
       oscillation: oscillationOf(this.#swing.swings.turns, final.time_s),
       above: { time, stretches, decades },
-      trip: this.#trip.time === null ? null : { time: this.#trip.time, byCharging: this.#trip.byCharging },
+      trip: tripTime === null ? null : { time: tripTime, byCharging, timeAbove },
       end: {
         stop: final.stop,
         time: final.time_s,
@@ -176,11 +177,12 @@ export class Analysis {
         selfSustaining,
         feedback,
         distortion,
-        growth,
+        growth: growth === null || carrierGrowth === null ? null : Math.min(growth, carrierGrowth),
         theoreticalGrowth: predict(settings, final.gap_voltage_V).growth_rate_per_s,
       },
       ionTransit,
       largestGapVoltage: this.#openGap.largestGapVoltage,
+      stillCharging: final.stop === 'until' && this.#openGap.charging(),
       polarities: polaritiesOf(settings, this.#openGap.highest, this.#openGap.lowest),
       thresholdOutsideData: x !== null && range !== null && (x < range.from || x > range.to),
       overvoltage: theory.overvoltage,

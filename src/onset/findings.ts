@@ -11,7 +11,8 @@ export interface Findings {
   readonly oscillation: Outcome['oscillation'];
   /** time with q_L ≥ 1 [s], in how many stretches, and by how many decades the current rose in one */
   readonly above: { readonly time: number; readonly stretches: number; readonly decades: number | null };
-  readonly trip: { readonly time: number; readonly byCharging: boolean } | null;
+  /** when the trip acted [s], on what, and the time with q_L ≥ 1 until then [s] */
+  readonly trip: { readonly time: number; readonly byCharging: boolean; readonly timeAbove: number } | null;
   readonly end: {
     readonly stop: Stop;
     /** [s] */
@@ -22,7 +23,7 @@ export interface Findings {
     /** q_L */
     readonly feedback: number;
     readonly distortion: number;
-    /** ln of the growth of the current over the last ion transit; null if unknown */
+    /** ln of the growth over the last ion transit, of the current or of the charge carriers, whichever is less; null if unknown */
     readonly growth: number | null;
     /** λ of theory at the end's voltage [1/s] */
     readonly theoreticalGrowth: number | null;
@@ -30,6 +31,8 @@ export interface Findings {
   /** [s] */
   readonly ionTransit: number;
   readonly largestGapVoltage: number;
+  /** is the open gap still on its way up to the supply's voltage at the end? */
+  readonly stillCharging: boolean;
   /** the nearest to breakdown first */
   readonly polarities: readonly Polarity[];
   /** E/N at V_s outside the data of α? */

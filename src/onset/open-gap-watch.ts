@@ -3,6 +3,9 @@ import { OpenGap } from '../supply/open-gap.ts';
 import type { RunContext } from './context.ts';
 import { followOpenGap, turnOfOpenGap } from './highest-voltage.ts';
 
+/** Missing share of the supply's voltage that still counts as charging. */
+const STILL_CHARGING = 0.01;
+
 /** The largest open-gap voltages of a run, of either sign, and the largest voltage the gap itself saw. */
 export class OpenGapWatch implements Observer {
   readonly #context: RunContext;
@@ -37,6 +40,14 @@ export class OpenGapWatch implements Observer {
     if (system.circuit.feed === 'open') return;
     const ahead = new OpenGap(system.circuit, system.capacitance, openGap.voltage, time);
     followOpenGap(system.circuit, ahead, time, settings.observe.until, (voltage) => this.#take(voltage));
+  }
+
+  /** Is the open gap still on its way up to the supply's voltage? */
+  charging(): boolean {
+    const { march, system } = this.#context;
+    const { openGap, time } = march();
+    if (system.circuit.feed === 'open') return false;
+    return Math.abs(system.circuit.supplyVoltage(time)) > (1 + STILL_CHARGING) * Math.abs(openGap.voltage);
   }
 
   #take(voltage: number): void {

@@ -1,26 +1,36 @@
 import type { Findings } from './findings.ts';
 import type { Polarity } from './polarity.ts';
-import { amperes, metres, percent, seconds, volts } from './words.ts';
+import { amperes, metres, percent, seconds, volts, voltsApart } from './words.ts';
 
 /** How it broke down and what became of it, as a sentence without its full stop. */
 export function whyItBrokeDown(f: Findings): string {
   return [beginning(f), tripClause(f), ending(f)].filter((clause) => clause !== null).join('; ');
 }
 
-function beginning({ onset, end }: Findings): string {
+function beginning(f: Findings): string {
+  const { onset, end } = f;
   const { formative_lag_s: lag, gap_voltage_V: voltage, lag_ends_at: ends } = onset;
   if (lag === null) {
     const why = onset.threshold_time_s === null ? ' although the feedback never reached 1: so strong a seed lowers the threshold' : '';
     return `Space charge took over at ${seconds(onset.space_charge_time_s ?? end.time)}${why}`;
   }
-  const after = lag > 0 ? `${seconds(lag)} after threshold` : 'at threshold';
+  const what = trippedBefore(f)
+    ? `After the trip at ${seconds(f.trip?.time ?? 0)} the charge stored across the gap broke it down`
+    : 'The gap broke down';
+  const when = lag > 0 ? `${seconds(lag)} after threshold` : 'at threshold';
   const how = ends === 'collapse' ? 'its voltage fell through' : 'space charge set in at';
-  return `The gap broke down ${after}, when ${how} ${volts(Math.abs(voltage ?? 0))}`;
+  return `${what} ${when}, when ${how} ${volts(Math.abs(voltage ?? 0))}`;
 }
 
-function tripClause({ trip }: Findings): string | null {
-  if (trip === null) return null;
-  return `${trip.byCharging ? 'the supply was tripped by charging current' : 'the trip acted'} at ${seconds(trip.time)}`;
+/** Did the trip act before the gap broke down? */
+function trippedBefore({ trip, onset }: Findings): boolean {
+  if (trip === null || onset.threshold_time_s === null || onset.formative_lag_s === null) return false;
+  return trip.time < onset.threshold_time_s + onset.formative_lag_s;
+}
+
+function tripClause(f: Findings): string | null {
+  if (f.trip === null || (trippedBefore(f) && !f.trip.byCharging)) return null;
+  return `${f.trip.byCharging ? 'the supply was tripped by charging current' : 'the trip acted'} at ${seconds(f.trip.time)}`;
 }
 
 function ending({ end, trip, oscillation, arcRisk }: Findings): string {
@@ -57,7 +67,7 @@ export function whyItHolds(f: Findings): string {
     return `The voltage was above threshold for ${seconds(above.time)}${often}${rise}: ${outcome}`;
   }
   const [nearest] = f.polarities;
-  return whyBelow(nearest, f.largestGapVoltage);
+  return `${whyBelow(nearest, f.largestGapVoltage)}${f.stillCharging ? ', with the gap still charging at the end' : ''}`;
 }
 
 function whyBelow({ cathode, largest, breakdown, upper, lowest }: Polarity, seen: number): string {
@@ -67,13 +77,16 @@ function whyBelow({ cathode, largest, breakdown, upper, lowest }: Polarity, seen
     return `No voltage up to 1e4 Td sustains a discharge over this gap${side}; the highest was ${volts(largest)}`;
   }
   if (upper !== null && largest >= upper) {
-    return `The voltage went straight to ${volts(largest)}${side}, above the ${volts(upper)} from which on the feedback is below 1 again`;
+    const [reached, from] = voltsApart(largest, upper);
+    return `The voltage went straight to ${reached}${side}, above the ${from} from which on the feedback is below 1 again`;
   }
   if (largest >= breakdown) {
-    return `Loaded by the current that the seed draws, the gap saw at most ${volts(seen)} of ${volts(largest)}${side}, below its breakdown voltage of ${volts(breakdown)}`;
+    const [saw, of, needed] = voltsApart(seen, largest, breakdown);
+    return `Loaded by the current that the seed draws, the gap saw at most ${saw} of ${of}${side}, below its breakdown voltage of ${needed}`;
   }
-  const highest = `The highest voltage, ${volts(largest)}${side}, stays`;
-  return lowest !== null && lowest.voltage < breakdown
-    ? `${highest} ${percent(1 - largest / lowest.voltage)} below the ${volts(lowest.voltage)} from which on a path of ${metres(lowest.path)} breaks down`
-    : `${highest} ${percent(1 - largest / breakdown)} below the breakdown voltage of ${volts(breakdown)}`;
+  const weakest = lowest !== null && lowest.voltage < breakdown ? lowest : { voltage: breakdown, path: null };
+  const [reached, from] = voltsApart(largest, weakest.voltage);
+  const what =
+    weakest.path === null ? `breakdown voltage of ${from}` : `${from} from which on a path of ${metres(weakest.path)} breaks down`;
+  return `The highest voltage, ${reached}${side}, stays ${percent(1 - largest / weakest.voltage)} below the ${what}`;
 }

@@ -3,7 +3,7 @@ import { carriers } from '../observables/charge.ts';
 import { seedShare } from '../observables/walls.ts';
 import type { RunContext } from './context.ts';
 import { type Distortion, SPACE_CHARGE_DISTORTION } from './distortion.ts';
-import { RecentCurrent } from './recent-current.ts';
+import { Recent } from './recent.ts';
 
 /** Largest share of the seed in the cathode's emission of a discharge that sustains itself. */
 const LARGEST_SEED_SHARE = 0.01;
@@ -21,7 +21,8 @@ const FALLEN = 0.01;
 export class SustainWatch implements Observer {
   readonly #context: RunContext;
   readonly #distortion: Distortion;
-  readonly #recent: RecentCurrent;
+  readonly #recentCurrent: Recent;
+  readonly #recentCarriers: Recent;
   /** self-sustaining with a distorted field at some time: breakdown */
   brokeDown = false;
   selfSustaining = false;
@@ -32,6 +33,8 @@ export class SustainWatch implements Observer {
   feedback = 0;
   /** ln of the growth of |I| over the last ion transit; null while there is no past to compare with */
   growth: number | null = null;
+  /** the same of the charge carriers: what lingers without a field has a current that means nothing */
+  carrierGrowth: number | null = null;
   /** number of charge carriers in the gap */
   carriers = 0;
   /** gap charge gone, or fallen to what the seed keeps? */
@@ -43,7 +46,8 @@ export class SustainWatch implements Observer {
   constructor(context: RunContext, distortion: Distortion) {
     this.#context = context;
     this.#distortion = distortion;
-    this.#recent = new RecentCurrent(context.ionTransit);
+    this.#recentCurrent = new Recent(context.ionTransit);
+    this.#recentCarriers = new Recent(context.ionTransit);
   }
 
   look(step: Step): boolean {
@@ -51,12 +55,14 @@ export class SustainWatch implements Observer {
     const { layout, grid } = system;
     const { time, y, current } = step.end;
     const V = y[layout.voltage];
-    this.#recent.add(time, current);
-    this.growth = this.#recent.growth();
+    this.#recentCurrent.add(time, current);
+    this.growth = this.#recentCurrent.growth();
     this.feedback = this.#context.feedback(V);
     this.distortion = this.#distortion.of(y);
     this.distorted = this.distortion >= SPACE_CHARGE_DISTORTION;
     this.carriers = carriers(grid, layout, y);
+    this.#recentCarriers.add(time, this.carriers);
+    this.carrierGrowth = this.#recentCarriers.growth();
     this.#peakCarriers = Math.max(this.#peakCarriers, this.carriers);
 
     const share = seedShare(system.equations.at, V >= 0, layout.cells);

@@ -1,6 +1,7 @@
 import type { Observer, Step } from '../march/march.ts';
 import type { RunContext } from './context.ts';
 import type { EnergyWatch } from './energy-watch.ts';
+import type { ThresholdWatch } from './threshold-watch.ts';
 
 /** A conduction current below this share of the supply's: what trips is the charging current. */
 const CONDUCTION_SHARE = 0.01;
@@ -9,15 +10,19 @@ const CONDUCTION_SHARE = 0.01;
 export class TripWatch implements Observer {
   readonly #context: RunContext;
   readonly #energy: EnergyWatch;
+  readonly #threshold: ThresholdWatch;
   /** [s]; null until it acts */
   time: number | null = null;
   byCharging = false;
+  /** time with q_L ≥ 1 until then [s] */
+  timeAbove = 0;
   #energyAtTrip = 0;
 
-  /** @param energy looks before this one */
-  constructor(context: RunContext, energy: EnergyWatch) {
+  /** @param energy @param threshold look before this one */
+  constructor(context: RunContext, energy: EnergyWatch, threshold: ThresholdWatch) {
     this.#context = context;
     this.#energy = energy;
+    this.#threshold = threshold;
   }
 
   look(step: Step): boolean {
@@ -26,6 +31,7 @@ export class TripWatch implements Observer {
     const { time, current, supplyCurrent } = step.end;
     this.time = time;
     this.byCharging = trip.settings.senses === 'supply' && Math.abs(current) < CONDUCTION_SHARE * Math.abs(supplyCurrent);
+    this.timeAbove = this.#threshold.time;
     this.#energyAtTrip = this.#energy.gap;
     return false;
   }

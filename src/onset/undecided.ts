@@ -1,5 +1,5 @@
 import type { Findings } from './findings.ts';
-import { amperes, metres, percent, seconds, volts } from './words.ts';
+import { amperes, metres, percent, seconds, voltsApart } from './words.ts';
 
 /** Growth over one ion transit that still counts as growing. */
 const STILL_GROWING = 0.01;
@@ -22,12 +22,12 @@ function cutShort({ end }: Findings): string | null {
   }
 }
 
-function tripped({ trip, onset, above }: Findings): string | null {
+function tripped({ trip, onset }: Findings): string | null {
   const spaceCharge = onset.space_charge_time_s;
   if (trip === null || (spaceCharge !== null && spaceCharge <= trip.time)) return null;
   const when = `${trip.byCharging ? 'The supply was tripped by charging current' : 'The trip acted'} at ${seconds(trip.time)}`;
-  return above.time > 0
-    ? `${when}, after ${seconds(above.time)} above threshold and before space charge set in`
+  return trip.timeAbove > 0
+    ? `${when}, after ${seconds(trip.timeAbove)} above threshold and before space charge set in`
     : `${when}, before the gap reached its breakdown voltage`;
 }
 
@@ -39,7 +39,8 @@ function outsideData(f: Findings): string | null {
 function longerPath(f: Findings): string | null {
   for (const { largest, lowest, breakdown } of f.polarities) {
     if (lowest === null || lowest.voltage >= (breakdown ?? Infinity) || largest < lowest.voltage) continue;
-    return `The gap itself holds, but a path of ${metres(lowest.path)} breaks down from ${volts(lowest.voltage)} on, and the highest voltage was ${volts(largest)}`;
+    const [from, reached] = voltsApart(lowest.voltage, largest);
+    return `The gap itself holds, but a path of ${metres(lowest.path)} breaks down from ${from} on, and the highest voltage was ${reached}`;
   }
   return null;
 }

@@ -7,3 +7,11 @@ export const amperes = (I: number): string => formatQuantity(I, 'A');
 export const metres = (x: number): string => formatQuantity(x, 'm');
 /** a share or a relative change, in per cent with two or three digits */
 export const percent = (x: number): string => `${Number((100 * x).toPrecision(x !== 0 && Math.abs(x) < 0.1 ? 2 : 3))} %`;
+
+/** Voltages with as many digits as it takes to tell them apart, six at most. */
+export function voltsApart(...values: readonly number[]): string[] {
+  for (let digits = 3; ; digits++) {
+    const texts = values.map((V) => formatQuantity(V, 'V', digits));
+    if (digits >= 6 || new Set(texts).size === new Set(values).size) return texts;
+  }
+}

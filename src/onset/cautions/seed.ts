@@ -34,7 +34,7 @@ function ofFewElectrons({ settings, theory, prospects, found }: Evidence, raise:
   const { cathodeCurrent, electrons } = settings.seed;
   // the time that electrons have to come in: the lag, or all the time above threshold if nothing came of it
   const time = found === null ? prospects.timeToSpaceCharge : (found.lag ?? found.timeAboveThreshold);
-  if (time === null) return;
+  if (time === null || time === 0) return;
   const expected = ((cathodeCurrent / ELEMENTARY_CHARGE) * time + electrons) * prospects.breakdownProbability;
   if (!(expected < FEW_ELECTRONS)) return;
   const wait = prospects.meanStatisticalLag === null ? '' : `, ${seconds(prospects.meanStatisticalLag)} on average`;
