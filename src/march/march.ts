@@ -67,8 +67,8 @@ export class MarchFailure extends Error {
   }
 }
 
-const SAFETY = 0.85;
-const MOST_GROWTH = 4;
+const SAFETY = 0.9;
+const MOST_GROWTH = 5;
 const LEAST_SHRINK = 0.15;
 /** a switch counts as due when its function exceeds this; it is located at zero, so it is not due again at once */
 const DUE = 1e-7;

@@ -86,29 +86,20 @@ export class CurrentsWatch implements Observer {
   }
 }
 
-/** Where f is largest in [0, 1], by golden section to 1e-3: the maximum itself is then right to 1e-6. */
+/** Where f is largest in [0, 1]: the best of three points inside, then three parabolas through the best and its neighbours.
+ *  On the smooth dense output of a step that leaves the maximum itself right to 1e-5. */
 function maximise(f: (theta: number) => number): number {
-  const golden = (Math.sqrt(5) - 1) / 2;
-  let a = 0;
-  let b = 1;
-  let x1 = b - golden;
-  let x2 = golden;
-  let f1 = f(x1);
-  let f2 = f(x2);
-  while (b - a > 1e-3) {
-    if (f1 > f2) {
-      b = x2;
-      x2 = x1;
-      f2 = f1;
-      x1 = b - golden * (b - a);
-      f1 = f(x1);
-    } else {
-      a = x1;
-      x1 = x2;
-      f1 = f2;
-      x2 = a + golden * (b - a);
-      f2 = f(x2);
-    }
+  const points = [0, 0.25, 0.5, 0.75, 1].map((theta) => ({ theta, value: f(theta) }));
+  for (let k = 0; k < 3; k++) {
+    const best = points.reduce((top, p, i) => (p.value > points[top].value ? i : top), 0);
+    if (best === 0 || best === points.length - 1) break;
+    const [a, b, c] = points.slice(best - 1, best + 2);
+    const left = (b.theta - a.theta) * (b.value - c.value);
+    const right = (b.theta - c.theta) * (b.value - a.value);
+    const theta = b.theta - (0.5 * ((b.theta - a.theta) * left - (b.theta - c.theta) * right)) / (left - right);
+    if (!(theta > a.theta && theta < c.theta) || Math.abs(theta - b.theta) < 1e-4) break;
+    points.push({ theta, value: f(theta) });
+    points.sort((p, q) => p.theta - q.theta);
   }
-  return (a + b) / 2;
+  return points.reduce((top, p) => (p.value > top.value ? p : top)).theta;
 }

@@ -22,11 +22,10 @@ export class SwingWatch implements Observer {
     return false;
   }
 
+  /** Where dV/dt, taken as straight over the step, is zero: the voltage there is right to second order in what that misses. */
   #turn(step: Step): void {
-    const time = step.crossing(step.start.voltageRate, step.end.voltageRate, (t, y) => {
-      step.currentOf(t, y);
-      return this.#system.voltageRate;
-    });
+    const { start, end } = step;
+    const time = start.time + ((end.time - start.time) * start.voltageRate) / (start.voltageRate - end.voltageRate);
     step.stateAt(time, this.#scratch);
     this.swings.add(time, this.#voltage(this.#scratch));
   }
