@@ -1,0 +1,125 @@
+import { describe, expect, it } from 'vitest';
+import type { Outcome } from '../../src/onset/outcome.ts';
+import { simulateNow } from '../../src/simulate.ts';
+import { type Changes, openCaseWith, outcomeOf, step, table, V_S } from './set-up.ts';
+
+describe('a run ends', () => {
+  it('as steady once nothing changes any more', () => {
+    const { final } = outcomeOf();
+    expect(final.stop).toBe('steady');
+    expect(final.time_s).toBeLessThan(1e-3);
+  });
+
+  it('not as steady before ten ion transits and five charging times', () => {
+    const slow = outcomeOf({ supply: { programme: step(0.5 * V_S), seriesResistance: 1e7 }, observe: { until: 0.1 } });
+    expect(slow.final.stop).toBe('steady');
+    expect(slow.final.time_s).toBeGreaterThan(5 * 1e7 * 100.9e-12);
+    // to the tolerance of the run
+    expect(slow.final.gap_voltage_V / (0.5 * V_S)).toBeCloseTo(1, 3);
+  });
+
+  it('as died-out when the charge is gone and nothing can bring the voltage back above V_s', () => {
+    const { final, verdict } = outcomeOf({ seed: { cathodeCurrent: 0, electrons: 1000 }, supply: { programme: step(0.7 * V_S) } });
+    expect(final.stop).toBe('died-out');
+    expect(final.time_s).toBeLessThan(0.5e-3);
+    expect(verdict.state).toBe('holds');
+  });
+
+  it('as died-out after a discharge that the supply cannot feed', () => {
+    const { final, verdict } = outcomeOf({ supply: { programme: step(0), initialGapVoltage: 230.202, seriesResistance: 1e9 } });
+    expect(verdict.state).toBe('breaks-down');
+    expect(verdict.reason).toMatch(/; the discharge died out by 1\d\d µs\.$/);
+    expect(final.stop).toBe('died-out');
+    expect(final.gap_voltage_V).toBeGreaterThan(100);
+  });
+
+  it('not as died-out while the supply could charge the gap up again', () => {
+    const { final } = outcomeOf({ supply: { seriesResistance: 3e6, parallelCapacitance: 1e-9 }, observe: { until: 9e-3 } });
+    expect(final.stop).toBe('until');
+    expect(final.time_s).toBe(9e-3);
+  });
+
+  it('not as died-out before a later pulse', () => {
+    const programme = table([0, 0], [1e-6, 230], [20e-6, 230], [21e-6, 0], [1e-3, 0], [1.001e-3, 230]);
+    const { final, onset } = outcomeOf({ supply: { programme } });
+    expect(onset.collapse_time_s).toBeGreaterThan(1e-3);
+    expect(final.time_s).toBeGreaterThan(1e-3);
+  });
+
+  it('as tripped-out when that happens after a trip', () => {
+    const { final } = outcomeOf({ supply: { trip: { current: 1e-3, delay: 1e-6, senses: 'gap', action: 'open' } } });
+    expect(final.stop).toBe('tripped-out');
+  });
+
+  it('at its time where none of this is reached', () => {
+    const { final } = outcomeOf({ observe: { until: 90e-6 } });
+    expect(final).toMatchObject({ stop: 'until', time_s: 90e-6 });
+  });
+
+  it('where the model ends, a millisecond after the current has entered the range of arcs for good', () => {
+    const { final, verdict, cautions } = outcomeOf({
+      gap: { area: 1e-6 },
+      supply: { programme: step(800), parallelCapacitance: 0 },
+      seed: { cathodeCurrent: 1e-13 },
+      observe: { until: 0.1 },
+    });
+    expect(final.stop).toBe('model-limit');
+    expect(verdict).toMatchObject({ state: 'breaks-down', regime: 'arc-risk' });
+    expect(verdict.reason).toMatch(/ it carries \S+ mA at \d+ V, in the range of arcs, where the model ends\.$/);
+    expect(cautions[1].code).toBe('arc-risk');
+    expect(final.current_A / 1e-6).toBeGreaterThan(1e3);
+    expect(final.time_s).toBeGreaterThan(1e-3);
+    expect(final.time_s).toBeLessThan(1.1e-3);
+  });
+
+  it('as interrupted when it is told to, with what was found so far', () => {
+    let looks = 0;
+    const { final, verdict } = simulateNow(openCaseWith(), { interrupted: () => ++looks > 25 });
+    expect(final.stop).toBe('interrupted');
+    expect(final.time_s).toBeLessThan(60e-6);
+    expect(verdict.state).toBe('undecided');
+    expect(verdict.reason).toMatch(/^Interrupted at \S+ µs, before breakdown; nothing can be said of what follows\.$/);
+  });
+
+  it('as interrupted after a breakdown without taking it back', () => {
+    let looks = 0;
+    const { verdict } = simulateNow(openCaseWith(), { interrupted: () => ++looks > 62 });
+    expect(verdict.state).toBe('breaks-down');
+    expect(verdict.reason).toMatch(/; the run was interrupted at \S+ µs\.$/);
+  });
+});
+
+/** What must not depend on how long the run was meant to last. */
+function told({ verdict, theory, onset, peak, cautions, currents }: Outcome): unknown {
+  const rounded = (x: number | null): number | null => (x === null ? null : Number(x.toPrecision(3)));
+  return {
+    verdict: { ...verdict, reason: verdict.reason.replace(/ by \S+ µs/, '') },
+    theory,
+    onset: Object.values(onset).map((v) => (typeof v === 'number' ? rounded(v) : v)),
+    peak: rounded(peak.current_A),
+    cautions: cautions.map((c) => c.code),
+    currents,
+  };
+}
+
+describe('an early end changes nothing', () => {
+  const cases: readonly (readonly [string, Changes, readonly [number, number]])[] = [
+    ['a glow', {}, [1e-3, 1]],
+    ['a hold', { supply: { programme: step(0.9 * V_S) } }, [5e-3, 10]],
+    [
+      'a hold whose charge dies out while the gap is still charging',
+      { seed: { cathodeCurrent: 0, electrons: 100 }, supply: { programme: step(0.9 * V_S), seriesResistance: 1e7 } },
+      [60e-3, 1],
+    ],
+    ['a trip', { supply: { trip: { current: 1e-3, delay: 1e-6, senses: 'gap', action: 'open' } } }, [0.3e-3, 1]],
+    ['stored charge', { supply: { programme: step(0), initialGapVoltage: 230.202, seriesResistance: 1e9 } }, [0.3e-3, 1]],
+    ['a strong seed', { seed: { cathodeCurrent: 1e-6 }, supply: { programme: step(0.95 * V_S) } }, [2e-3, 1]],
+  ];
+
+  it.each(cases)('of %s', (_name, changes, [short, long]) => {
+    const [first, second] = [short, long].map((until) => outcomeOf({ ...changes, observe: { until, currents: [1e-9, 1e-6] } }));
+    expect(told(first)).toEqual(told(second));
+    // and it did end early
+    expect(second.final.time_s).toBeLessThan(long / 2);
+  });
+});
