@@ -19,6 +19,7 @@ vi.mock('../../src/simulate.ts', async (original) => {
     simulate: async (...[settings, watch]: Parameters<typeof real.simulate>): Promise<Outcome> => {
       let polls = 0;
       const outcome = await real.simulate(settings, { ...watch, interrupted: () => ++polls > 20 });
+      if (settings.title === 'fault') throw new TypeError('planted fault');
       const { time_s } = outcome.final;
       const cause = new MarchFailure(`no acceptable step at t = ${time_s} s`, time_s, 20, 7);
       throw new real.SimulationFailure(cause, 'try more \u001b[1m cells', { ...outcome, final: { ...outcome.final, stop: 'failed' } });
@@ -83,4 +84,11 @@ describe('a simulation that cannot go on', () => {
     expect(await exitCodeOf(['run', path, '--expect', 'holds', '--quiet'], terminal)).toBe(3);
     expect(out).toBe('');
   });
+});
+
+test('an internal fault on the way leaves neither a file nor a lock', async () => {
+  const before = readdirSync(folder).sort();
+  expect(await exitCodeOf(['run', path, '--set', 'title=fault', '-o', join(folder, 'fault.h5')], terminal)).toBe(70);
+  expect(err).toBe('gapwake: internal fault: planted fault; GAPWAKE_TRACE=1 shows where\n');
+  expect(readdirSync(folder).sort()).toEqual(before);
 });
