@@ -83,7 +83,7 @@ function onsetRows({ settings, outcome, prospects }: RunAnswer): Row[] {
   if (spaceCharge !== null) {
     const sinceThreshold =
       threshold === null ? `at ${quantity(spaceCharge, 's')}` : `${quantity(spaceCharge - threshold, 's')} after the threshold`;
-    rows.push(['space charge', sudden(settings, prospects) ? quantity(prospects.timeToSpaceCharge, 's') : '', sinceThreshold]);
+    rows.push(['space charge', sudden(settings, threshold, spaceCharge) ? quantity(prospects.timeToSpaceCharge, 's') : '', sinceThreshold]);
   }
   if (onset.formative_lag_s !== null) {
     const end = onset.lag_ends_at === 'collapse' ? 'the collapse' : 'space charge';
@@ -95,10 +95,9 @@ function onsetRows({ settings, outcome, prospects }: RunAnswer): Row[] {
   return rows;
 }
 
-/** Whether the gap has its full voltage long before space charge matters, so that the closed form for a sudden step applies. */
-function sudden({ supply }: Case, { timeToSpaceCharge }: Prospects): boolean {
-  if (supply.programme.kind !== 'step' || timeToSpaceCharge === null) return false;
-  return supply.programme.riseTime < 0.02 * timeToSpaceCharge;
+/** Whether the gap passed its threshold so early that the closed form for a sudden step applies. */
+function sudden({ supply }: Case, threshold: number | null, spaceCharge: number): boolean {
+  return supply.programme.kind === 'step' && threshold !== null && threshold < 0.05 * (spaceCharge - threshold);
 }
 
 const STOPS: Readonly<Record<Stop, string>> = {
