@@ -122,7 +122,7 @@ export class LinearSystem {
         const s = (side === 0 ? -1 : 1) / width;
         const along = y[field + f] < 0 ? 1 : -1;
         const made = half * alpha[f] * along;
-        const lost = half * eta[f] * (electronFlux[f] < 0 ? -1 : 1);
+        const lost = half * eta[f] * Math.sign(electronFlux[f]);
         const netSlope = eq.alphaSlope[f] - eq.etaSlope[f];
         const madeByField = half * eq.alphaSlope[f] * along * electronFlux[f] + ionBend * netSlope;
         const lostByField = half * eq.etaSlope[f] * Math.abs(electronFlux[f]) + attachBend * netSlope;

@@ -2,7 +2,7 @@
  *
  *  Source: Dowell and Jarratt, BIT 11, 168, 1971.
  *  @param first, last g(0) and g(1), of opposite signs (a zero counts as either)
- *  @returns θ on the far side of the root, within 1e-9 of it: far closer than dense output is to the truth */
+ *  @returns θ within 1e-9 of the root, or where |g| is 1e-9 of the smaller end: far closer than dense output is to the truth */
 export function locate(g: (theta: number) => number, first: number, last: number): number {
   let a = 0;
   let b = 1;
@@ -10,6 +10,7 @@ export function locate(g: (theta: number) => number, first: number, last: number
   let fb = last;
   if (fa === 0) return 0;
   if (fa * fb > 0) return 1;
+  const enough = 1e-9 * Math.min(Math.abs(first), Math.abs(last));
   let side = 0;
   for (let k = 0; k < 80 && b - a > 1e-9; k++) {
     let theta = k % 8 === 7 ? (a + b) / 2 : b - (fb * (b - a)) / (fb - fa);
@@ -27,7 +28,7 @@ export function locate(g: (theta: number) => number, first: number, last: number
       if (side === -1) fb /= 2;
       side = -1;
     }
-    if (Math.abs(f) < 1e-9 * Math.max(Math.abs(first), Math.abs(last))) return b;
+    if (Math.abs(f) < enough) return theta;
   }
   return b;
 }
