@@ -121,6 +121,8 @@ describe('the mirror image of a gap', () => {
       expect(other.frames.length).toBe(one.frames.length);
       const scale = (pick: (f: Followed['frames'][number]) => number): number => Math.max(...one.frames.map((f) => Math.abs(pick(f))));
       const scalarScales = one.frames[0].scalars.map((_, i) => scale((f) => f.scalars[i]));
+      const largestOf = (values: Float64Array): number => values.reduce((most, v) => Math.max(most, Math.abs(v)), 0);
+      const profileScales = one.frames[0].profiles.map((_, i) => scale((f) => largestOf(f.profiles[i])));
       one.frames.forEach((frame, n) => {
         frame.scalars.forEach((value, i) => {
           expect(Math.abs(other.frames[n].scalars[i] - value), `scalar ${i} at ${frame.scalars[0]} s`).toBeLessThanOrEqual(
@@ -128,9 +130,11 @@ describe('the mirror image of a gap', () => {
           );
         });
         frame.profiles.forEach((values, i) => {
-          const largest = values.reduce((most, v) => Math.max(most, Math.abs(v)), 0);
           const off = values.reduce((most, v, x) => Math.max(most, Math.abs(other.frames[n].profiles[i][x] - v)), 0);
-          expect(off, `profile ${i} at ${frame.scalars[0]} s`).toBeLessThanOrEqual(1e-9 * largest);
+          const where = `profile ${i} at ${frame.scalars[0]} s`;
+          expect(off, where).toBeLessThanOrEqual(1e-9 * profileScales[i]);
+          // and against the profile of that instant, which rounding of larger ones before it still blurs where a discharge dies away
+          expect(off, where).toBeLessThanOrEqual(1e-8 * largestOf(values) + 1e-13 * profileScales[i]);
         });
       });
     });
