@@ -1,5 +1,5 @@
 import type { Findings } from './findings.ts';
-import { amperes, metres, percent, seconds, voltsApart } from './words.ts';
+import { amperes, metres, percent, roughly, seconds, voltsApart } from './words.ts';
 
 /** Growth over one ion transit that still counts as growing. */
 const STILL_GROWING = 0.01;
@@ -53,11 +53,11 @@ function stillGoing(f: Findings): string | null {
     const needed = timeToSpaceCharge(f);
     return needed === null
       ? 'The gap is above threshold at the end: extend observe.until'
-      : `The gap is above threshold at the end and space charge needs about ${seconds(needed)} more: extend observe.until`;
+      : `The gap is above threshold at the end and space charge needs about ${roughly(needed)} more: extend observe.until`;
   }
   if (growing) {
     const needed = timeToSettle(f);
-    const more = needed === null ? '' : `; to settle it needs about ${seconds(needed)} more`;
+    const more = needed === null ? '' : `; to settle it needs about ${roughly(needed)} more`;
     return `The current still grows at the end, by ${percent(Math.expm1(growth))} in an ion transit${more}: extend observe.until`;
   }
   return selfSustaining

@@ -3,6 +3,8 @@ import { formatQuantity } from '../units/format.ts';
 /** Quantities in sentences, in engineering units. */
 export const volts = (V: number): string => formatQuantity(V, 'V');
 export const seconds = (t: number): string => formatQuantity(t, 's');
+/** a time that is only estimated */
+export const roughly = (t: number): string => formatQuantity(t, 's', 2);
 export const amperes = (I: number): string => formatQuantity(I, 'A');
 export const metres = (x: number): string => formatQuantity(x, 'm');
 /** a share or a relative change, in per cent with two or three digits */
