@@ -47,10 +47,11 @@ describe('the cathode layer', () => {
     const slope = (12 * (moment - (L / 2) * area)) / L ** 3;
     const expected = L / 2 - area / L / slope;
     const curved = (x: number): number => 1e5 * Math.exp(-x / l);
-    const [coarse, fine] = [100, 200].map((cells) => Math.abs((thickness(curved, cells) ?? 0) / expected - 1));
-    expect(fine).toBeLessThan(1e-4);
-    // only the straight pieces between faces are in the way: second order
-    expect(Math.log2(coarse / fine)).toBeCloseTo(2, 1);
+    const [coarse, fine] = [50, 400].map((cells) => Math.abs((thickness(curved, cells) ?? 0) / expected - 1));
+    expect(fine).toBeLessThan(1e-5);
+    // only the straight pieces between faces are in the way: second order, give or take where half falls within a cell
+    const order = Math.log(coarse / fine) / Math.log(8);
+    expect(Math.abs(order - 2)).toBeLessThan(0.3);
   });
 
   it('counts the cells within it', () => {
