@@ -30,6 +30,10 @@ export class LinearSystem {
   readonly #gauss: Gauss;
   /** right-hand side of the field at the right wall in the last solve */
   #rightRate = 0;
+  /** part of Σ weights·δE that a unit charge density in cell i gives, seen from E(0) */
+  readonly #moments: Float64Array;
+  /** that part for the last solve [V]; null where it was not summed on the way */
+  #integralOfCharge: number | null = null;
   /** answer of all unknowns to δj = 1 */
   readonly column: Float64Array;
 
@@ -50,6 +54,7 @@ export class LinearSystem {
     this.#fieldInRow = equations.charges.map(() => new Float64Array(2 * cells));
     this.#b = new Float64Array(rows);
     this.column = new Float64Array(size);
+    this.#moments = momentsOf(equations.grid.widths, equations.grid.faceWeights);
   }
 
   /** Assembles and factors for a = 1/(hγ), from the derivatives that `equations.linearise` left.
@@ -179,23 +184,53 @@ export class LinearSystem {
    *  r holds rates of densities and of E(0); that of E elsewhere follows by Gauss's law, which rates obey too. */
   solveDensities(r: Float64Array, U: Float64Array): void {
     const { layout, charges, grid } = this.#equations;
+    if (charges.length === 2 && this.#matrix === this.#tight) {
+      this.#solveTwo(r, U);
+      return;
+    }
     const { cells, row, first } = layout;
     const b = this.#b;
     const species = charges.length;
-    if (species === 2) {
-      this.#rightRate = gatherTwo(r, layout, grid.widths, this.#fieldInRow[0], this.#fieldInRow[1], b, this.#slots[0], this.#slots[1]);
-    } else {
-      this.#rightRate = gatherAny(r, layout, grid.widths, charges, this.#fieldInRow, b, this.#slots);
-    }
+    this.#rightRate = gather(r, layout, grid.widths, charges, this.#fieldInRow, b, this.#slots);
     this.#matrix.solve(b);
     for (let k = 0; k < species; k++) scatter(b, species, this.#slots[k], U, k * row + first, cells);
+    this.#integralOfCharge = null;
+  }
+
+  /** Gathering, both substitutions and the integral of the charge in two passes over the cells, for two species. */
+  #solveTwo(r: Float64Array, U: Float64Array): void {
+    const { layout, grid } = this.#equations;
+    const { row, first, leftField, cells } = layout;
+    const electronsFirst = this.#slots[0] === 0;
+    const baseA = electronsFirst ? first : row + first;
+    const baseB = electronsFirst ? row + first : first;
+    const reachA = this.#fieldInRow[electronsFirst ? 0 : 1];
+    const reachB = this.#fieldInRow[electronsFirst ? 1 : 0];
+    const { entries, inverse } = this.#tight;
+    this.#rightRate = forward(
+      r,
+      leftField,
+      baseA,
+      baseB,
+      electronsFirst ? 1 : -1,
+      grid.widths,
+      reachA,
+      reachB,
+      entries,
+      inverse,
+      this.#b,
+      cells,
+    );
+    const moment = backward(this.#b, entries, U, baseA, baseB, this.#moments, cells);
+    this.#integralOfCharge = electronsFirst ? moment : -moment;
   }
 
   /** Completes U's field at x = 0 for δj = 0 and field right-hand side rE there. @returns Σ weights·δE over the gap [V] */
   fieldOf(U: Float64Array, rE: number): number {
     const { layout } = this.#equations;
     U[layout.leftField] = this.fieldAtLeftWall(U, rE, 0);
-    return this.#gauss.integral(U);
+    if (this.#integralOfCharge === null) return this.#gauss.integral(U);
+    return U[layout.leftField] * this.#equations.grid.spacing + this.#integralOfCharge;
   }
 
   /** δE at the left wall for densities U, field right-hand side rE there and δj [A/m²]. */
@@ -268,32 +303,8 @@ export class LinearSystem {
   }
 }
 
-/** b ← right-hand sides of electrons and ions with the eliminated field taken out. @returns that of the field at the right wall */
-function gatherTwo(
-  r: Float64Array,
-  layout: Layout,
-  widths: Float64Array,
-  reachE: Float64Array,
-  reachI: Float64Array,
-  b: Float64Array,
-  slotE: number,
-  slotI: number,
-): number {
-  const { cells, row, first, leftField } = layout;
-  const c = ELEMENTARY_CHARGE / VACUUM_PERMITTIVITY;
-  let left = r[leftField];
-  for (let i = 0; i < cells; i++) {
-    const e = r[first + i];
-    const p = r[row + first + i];
-    const right = left + c * widths[i] * (p - e);
-    b[2 * i + slotE] = e - reachE[2 * i] * left - reachE[2 * i + 1] * right;
-    b[2 * i + slotI] = p - reachI[2 * i] * left - reachI[2 * i + 1] * right;
-    left = right;
-  }
-  return left;
-}
-
-function gatherAny(
+/** b ← right-hand sides with the eliminated field taken out. @returns that of the field at the right wall */
+function gather(
   r: Float64Array,
   layout: Layout,
   widths: Float64Array,
@@ -316,6 +327,100 @@ function gatherAny(
     left = right;
   }
   return left;
+}
+
+/** (e/ε0) Δx_i × Σ weights of the faces right of cell i. */
+function momentsOf(widths: Float64Array, faceWeights: Float64Array): Float64Array {
+  const moments = new Float64Array(widths.length);
+  let beyond = 0;
+  for (let i = widths.length - 1; i >= 0; i--) {
+    beyond += faceWeights[i + 1];
+    moments[i] = (ELEMENTARY_CHARGE / VACUUM_PERMITTIVITY) * widths[i] * beyond;
+  }
+  return moments;
+}
+
+/** w ← L⁻¹ of the right-hand sides with the eliminated field taken out; species A stands first in a cell's block, B second.
+ *  @param chargeOfB +1 where B is the ions, −1 where it is the electrons
+ *  @returns the right-hand side of the field at the right wall */
+function forward(
+  r: Float64Array,
+  leftField: number,
+  baseA: number,
+  baseB: number,
+  chargeOfB: number,
+  widths: Float64Array,
+  reachA: Float64Array,
+  reachB: Float64Array,
+  entries: Float64Array,
+  inverse: Float64Array,
+  w: Float64Array,
+  cells: number,
+): number {
+  const c = (chargeOfB * ELEMENTARY_CHARGE) / VACUUM_PERMITTIVITY;
+  let left = r[leftField];
+  let p1 = 0;
+  let p2 = 0;
+  let p3 = 0;
+  let p4 = 0;
+  for (let i = 0; i < cells; i++) {
+    const a = r[baseA + i];
+    const b = r[baseB + i];
+    const right = left + c * widths[i] * (b - a);
+    const j = 2 * i;
+    const o = 18 * i;
+    const s0 =
+      (a - reachA[j] * left - reachA[j + 1] * right) * inverse[j] -
+      entries[o] * p4 -
+      entries[o + 1] * p3 -
+      entries[o + 2] * p2 -
+      entries[o + 3] * p1;
+    const s1 =
+      (b - reachB[j] * left - reachB[j + 1] * right) * inverse[j + 1] -
+      entries[o + 9] * p3 -
+      entries[o + 10] * p2 -
+      entries[o + 11] * p1 -
+      entries[o + 12] * s0;
+    w[j] = s0;
+    w[j + 1] = s1;
+    p4 = p2;
+    p3 = p1;
+    p2 = s0;
+    p1 = s1;
+    left = right;
+  }
+  return left;
+}
+
+/** U ← the solution for w = L⁻¹ b. @returns Σ moments × (B − A) */
+function backward(
+  w: Float64Array,
+  entries: Float64Array,
+  U: Float64Array,
+  baseA: number,
+  baseB: number,
+  moments: Float64Array,
+  cells: number,
+): number {
+  let q1 = 0;
+  let q2 = 0;
+  let q3 = 0;
+  let q4 = 0;
+  let sum = 0;
+  for (let i = cells - 1; i >= 0; i--) {
+    const j = 2 * i;
+    const o = 18 * i;
+    const x1 = w[j + 1] - entries[o + 17] * q4 - entries[o + 16] * q3 - entries[o + 15] * q2 - entries[o + 14] * q1;
+    const x0 = w[j] - entries[o + 8] * q3 - entries[o + 7] * q2 - entries[o + 6] * q1 - entries[o + 5] * x1;
+    U[baseA + i] = x0;
+    U[baseB + i] = x1;
+    sum += moments[i] * (x1 - x0);
+    q4 = q2;
+    q3 = q1;
+    q2 = x1;
+    q1 = x0;
+  }
+  return sum;
 }
 
 function scatter(b: Float64Array, species: number, slot: number, U: Float64Array, base: number, cells: number): void {

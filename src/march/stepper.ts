@@ -88,9 +88,12 @@ export class Stepper {
       if (i === 0) r.set(this.startRates);
       else {
         // the last stage of a stiffly accurate scheme starts where the one before did, plus its increment
-        if (this.#continues[i]) accumulate(this.#stage, stages[i - 1], n);
-        else combine(this.#stage, this.start, stages, a[i], 1, i, n);
-        combine(r, this.#zero, stages, g[i], 1 / h, i, n);
+        if (this.#continues[i]) {
+          accumulate(this.#stage, stages[i - 1], n);
+          combine(r, this.#zero, stages, g[i], 1 / h, i, n);
+        } else {
+          combineTwice(this.#stage, this.start, a[i], r, g[i], 1 / h, stages, i, n);
+        }
         system.addRates(t + c[i] * h, this.#stage, r);
       }
       system.addTimeSlope(r, d[i] * h);
@@ -135,6 +138,64 @@ function accumulate(target: Float64Array, increment: Float64Array, n: number): v
 
 function sum(out: Float64Array, one: Float64Array, other: Float64Array, n: number): void {
   for (let i = 0; i < n; i++) out[i] = one[i] + other[i];
+}
+
+/** state ← base + Σ aⱼ Uⱼ and r ← factor Σ gⱼ Uⱼ over j < count ≤ 4, each U read once. */
+function combineTwice(
+  state: Float64Array,
+  base: Float64Array,
+  a: readonly number[],
+  r: Float64Array,
+  g: readonly number[],
+  factor: number,
+  U: readonly Float64Array[],
+  count: number,
+  n: number,
+): void {
+  const [a0 = 0, a1 = 0, a2 = 0, a3 = 0] = a;
+  const g0 = factor * (g[0] ?? 0);
+  const g1 = factor * (g[1] ?? 0);
+  const g2 = factor * (g[2] ?? 0);
+  const g3 = factor * (g[3] ?? 0);
+  const [u0, u1, u2, u3] = U;
+  switch (count) {
+    case 1:
+      for (let i = 0; i < n; i++) {
+        const p = u0[i];
+        state[i] = base[i] + a0 * p;
+        r[i] = g0 * p;
+      }
+      return;
+    case 2:
+      for (let i = 0; i < n; i++) {
+        const p = u0[i];
+        const q = u1[i];
+        state[i] = base[i] + a0 * p + a1 * q;
+        r[i] = g0 * p + g1 * q;
+      }
+      return;
+    case 3:
+      for (let i = 0; i < n; i++) {
+        const p = u0[i];
+        const q = u1[i];
+        const s = u2[i];
+        state[i] = base[i] + a0 * p + a1 * q + a2 * s;
+        r[i] = g0 * p + g1 * q + g2 * s;
+      }
+      return;
+    case 4:
+      for (let i = 0; i < n; i++) {
+        const p = u0[i];
+        const q = u1[i];
+        const s = u2[i];
+        const t = u3[i];
+        state[i] = base[i] + a0 * p + a1 * q + a2 * s + a3 * t;
+        r[i] = g0 * p + g1 * q + g2 * s + g3 * t;
+      }
+      return;
+    default:
+      throw new RangeError(`${count} stages`);
+  }
 }
 
 /** out ← base + factor Σ weightⱼ Uⱼ over j < count. */

@@ -1,7 +1,8 @@
 /** A square matrix with entries only within `lower` places left and `upper` places right of the diagonal, factored in place
  *  without pivoting. Row r, column c is at entries[r·stride + (c − r + lower)], stride = lower + upper + 1.
  *
- *  Without pivoting it suits matrices that are dominated by their diagonal blocks; `factor` reports a pivot that has
+ *  After `factor` a matrix with lower = upper = 4 holds both triangles divided by their row's pivot (`solve44` shows how they are
+ *  used); any other holds the multipliers and the upper triangle as they are. Without pivoting it suits matrices that are dominated by their diagonal blocks; `factor` reports a pivot that has
  *  vanished or is not finite. */
 export class BandMatrix {
   readonly size: number;
@@ -9,8 +10,8 @@ export class BandMatrix {
   readonly upper: number;
   readonly stride: number;
   readonly entries: Float64Array;
-  /** reciprocal pivots */
-  readonly #inverse: Float64Array;
+  /** reciprocal pivots, after `factor` */
+  readonly inverse: Float64Array;
 
   constructor(size: number, lower: number, upper: number) {
     this.size = size;
@@ -18,7 +19,7 @@ export class BandMatrix {
     this.upper = upper;
     this.stride = lower + upper + 1;
     this.entries = new Float64Array(size * this.stride);
-    this.#inverse = new Float64Array(size);
+    this.inverse = new Float64Array(size);
   }
 
   clear(): void {
@@ -28,14 +29,14 @@ export class BandMatrix {
   /** entries ← L U. @returns the first row whose pivot is unusable, or −1 */
   factor(): number {
     return this.lower === 4 && this.upper === 4
-      ? factor44(this.entries, this.#inverse, this.size)
-      : factorBand(this.entries, this.#inverse, this.size, this.lower, this.upper);
+      ? factor44(this.entries, this.inverse, this.size)
+      : factorBand(this.entries, this.inverse, this.size, this.lower, this.upper);
   }
 
   /** b ← A⁻¹ b, after `factor`. */
   solve(b: Float64Array): void {
-    if (this.lower === 4 && this.upper === 4) solve44(this.entries, this.#inverse, this.size, b);
-    else solveBand(this.entries, this.#inverse, this.size, this.lower, this.upper, b);
+    if (this.lower === 4 && this.upper === 4) solve44(this.entries, this.inverse, this.size, b);
+    else solveBand(this.entries, this.inverse, this.size, this.lower, this.upper, b);
   }
 }
 
@@ -58,14 +59,7 @@ function factorBand(a: Float64Array, inverse: Float64Array, n: number, lower: nu
   return -1;
 }
 
-function solveBand(
-  a: Float64Array,
-  inverse: Float64Array,
-  n: number,
-  lower: number,
-  upper: number,
-  b: Float64Array,
-): void {
+function solveBand(a: Float64Array, inverse: Float64Array, n: number, lower: number, upper: number, b: Float64Array): void {
   const stride = lower + upper + 1;
   for (let r = 1; r < n; r++) {
     const reach = Math.min(lower, r);
