@@ -155,11 +155,6 @@ export class March {
     return this.#stepper.solves;
   }
 
-  /** The next step at most, h [s]. */
-  get stepSize(): number {
-    return this.#h;
-  }
-
   /** One accepted step. @throws MarchFailure when no step, however small, is acceptable */
   advance(): void {
     const from = this.time;
@@ -304,18 +299,22 @@ export class March {
     const { circuit, layout } = system;
     let changed = false;
     const y = this.#stepper.start;
-    if (trip && !trip.acted && t >= trip.actsAt) {
-      trip.acted = true;
-      y[layout.voltage] = circuit.act(trip.settings.action, t, y[layout.voltage]);
-      changed = true;
-    } else if (circuit.limit !== null && circuit.excess(t, y[layout.voltage], this.#needed) > -DUE) {
-      y[layout.voltage] = circuit.change(t, y[layout.voltage], this.#needed);
-      changed = true;
-    }
-    if (changed) {
+    const take = (voltage: number): void => {
+      y[layout.voltage] = voltage;
       system.settle(y);
       this.#stepper.begin(t);
       this.#now = this.#read(t);
+      changed = true;
+    };
+    if (trip && !trip.acted && t >= trip.actsAt) {
+      trip.acted = true;
+      take(circuit.act(trip.settings.action, t, y[layout.voltage]));
+    } else if (circuit.limit !== null && circuit.excess(t, y[layout.voltage], this.#needed) > -DUE) {
+      take(circuit.change(t, y[layout.voltage], this.#needed));
+    }
+    // the new feed may be past its own end at once: an ideal supply whose slope asks for more than the limit
+    for (let k = 0; changed && k < 2 && circuit.excess(t, y[layout.voltage], this.#needed) > DUE; k++) {
+      take(circuit.change(t, y[layout.voltage], this.#needed));
     }
     if (changed || (t > 0 && circuit.isCorner(t))) this.#h = Math.min(this.#h, 0.05 * this.#settings.ionTransit);
   }

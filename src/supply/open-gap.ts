@@ -47,8 +47,10 @@ export class OpenGap {
     const sign = Math.sign(drop);
     const closing = sign * rate - slope; // dV/dt − dV_supply/dt
     const meet = drop / closing;
-    if (meet >= 0 && meet <= span && Math.abs(slope) <= rate) return end;
-    return this.#voltage + sign * rate * span;
+    if (!(meet >= 0 && meet <= span)) return this.#voltage + sign * rate * span;
+    if (Math.abs(slope) <= rate) return end;
+    // the supply has come past and runs away faster than the limit lets the gap follow
+    return this.#voltage + sign * rate * meet + Math.sign(slope) * rate * (span - meet);
   }
 
   #behindResistance(span: number, supply: number, slope: number): number {
