@@ -8,8 +8,8 @@ const OUTSIDE_SHARE = 1e-4;
 const COLLISIONLESS = 0.1;
 /** Gas-kinetic cross-section where the gas is not known [m²]: argon, nitrogen and air lie within a sixth of it. */
 const TYPICAL_CROSS_SECTION = 4e-19;
-/** Growth within an electron transit that the model still describes; from memory. */
-const FASTEST_GROWTH = 0.3;
+/** Growth within an electron transit, λτ, that the model still describes; a choice of the program. */
+const FASTEST_GROWTH = 0.1;
 
 /** Where the gas data and the local, collisional picture of the gas end. */
 export function ofGas(evidence: Evidence, raise: Raise): void {

@@ -2,7 +2,7 @@ import type { Case } from '../../case.ts';
 import type { Prospects, Theory } from '../../theory/predict.ts';
 import type { Caution, CautionCode } from '../outcome.ts';
 import { ofCathode } from './cathode.ts';
-import { defaultsCaution } from './defaults.ts';
+import { defaultsCaution, fallbackYields } from './defaults.ts';
 import type { Evidence, Raise, RunFindings } from './evidence.ts';
 import { ofGap } from './gap.ts';
 import { ofGas } from './gas.ts';
@@ -60,7 +60,7 @@ export function cautionsOf(settings: Case, voltage: number, theory: Theory, pros
 /** The same cautions and the one about the defaults that a case leaves to the program.
  *  @param paths of every default used */
 export function withDefaults(cautions: readonly Caution[], settings: Case, paths: readonly string[]): Caution[] {
-  const more = defaultsCaution(settings, paths);
+  const more = defaultsCaution([...paths, ...fallbackYields(settings)]);
   return more === null ? [...cautions] : sorted([...cautions, more]);
 }
 
