@@ -155,7 +155,8 @@ export class Analysis {
   }
 
   #findings(onset: Onset, final: Final, theory: Theory, outlook: Prospects): Findings {
-    const { settings, ionTransit } = this.#context;
+    const { settings, system, ionTransit } = this.#context;
+    const oscillation = oscillationOf(this.#swing.swings.turns, final.time_s);
     const { selfSustaining, feedback, distortion, growth, carrierGrowth, brokeDown } = this.#sustain;
     const { time, stretches, decades } = this.#threshold;
     const { time: tripTime, byCharging, timeAbove } = this.#trip;
@@ -166,7 +167,9 @@ export class Analysis {
       arcRisk: this.#arc.risk,
       largestDistortion: this.#lag.largestDistortion,
       onset,
-      oscillation: oscillationOf(this.#swing.swings.turns, final.time_s),
+      oscillation,
+      // within the last period
+      supplyChanges: oscillation !== null && system.circuit.nextCorner(final.time_s - oscillation.period_s) < Infinity,
       above: { time, stretches, decades },
       trip: tripTime === null ? null : { time: tripTime, byCharging, timeAbove },
       end: {

@@ -1,29 +1,36 @@
 import type { GapSystem } from '../march/gap-system.ts';
 import type { Observer, Step } from '../march/march.ts';
 
-/** Nodes and weights of three-point Gauss–Legendre quadrature on [0, 1]: exact to degree 5. */
-const NODES: readonly number[] = [0.5 - Math.sqrt(0.15), 0.5, 0.5 + Math.sqrt(0.15)];
-const WEIGHTS: readonly number[] = [5 / 18, 8 / 18, 5 / 18];
+/** ∫ Lᵢ L′ⱼ dθ of the cubics Lᵢ that are 1 at θ = i/3 and 0 at the other thirds of [0, 1] (computed exactly). */
+const WEIGHTS: readonly (readonly number[])[] = [
+  [-1 / 2, 57 / 80, -3 / 10, 7 / 80],
+  [-57 / 80, 0, 81 / 80, -3 / 10],
+  [3 / 10, -81 / 80, 0, 57 / 80],
+  [-7 / 80, 3 / 10, -57 / 80, 1 / 2],
+];
 
-/** ∫V dQ over a step for V and Q cubic in time (Hermite), V and Q given at both ends with their rates. Exact for the cubics.
- *
- *  The charges come from the integrated unknowns, not from sampled currents; so V dQ_s − V dQ = C V dV holds to rounding and the
- *  energy balance closes whatever the steps. */
-export function voltTimesCharge(V0: number, V1: number, dV0: number, dV1: number, Q1: number, dQ0: number, dQ1: number, h: number): number {
+/** ∫V dQ of two cubics in time given at the thirds of a step; exact. */
+export function voltTimesCharge(V: Float64Array, Q: Float64Array): number {
   let sum = 0;
-  for (let k = 0; k < 3; k++) {
-    const s = NODES[k];
-    const r = 1 - s;
-    const V = r * r * ((1 + 2 * s) * V0 + s * h * dV0) + s * s * ((3 - 2 * s) * V1 - r * h * dV1);
-    const dQ = 6 * s * r * Q1 + h * (r * (1 - 3 * s) * dQ0 + s * (3 * s - 2) * dQ1);
-    sum += WEIGHTS[k] * V * dQ;
-  }
+  // differences of Q, so that a charge counted over a long run loses nothing
+  for (let i = 0; i < 4; i++) for (let j = 1; j < 4; j++) sum += V[i] * WEIGHTS[i][j] * (Q[j] - Q[0]);
   return sum;
 }
 
-/** Energies [J] since t = 0: into the gas, out of the source, into the series resistance; and the charge passed [C]. */
+/** Energies [J] since t = 0: into the gas, out of the source, into the series resistance; and the charge passed [C].
+ *
+ *  Voltages and charges are unknowns of the equations, so their dense output, cubic in time, obeys every linear law of the circuit
+ *  to rounding: dQ_s = dQ + C dV. The integrals of those cubics are exact, and the balance of energy closes whatever the steps.
+ *  (Their rates at the ends of a step must not enter: behind a small capacitance dV/dt is a small difference of large currents,
+ *  and times a long step worth nothing.) */
 export class EnergyWatch implements Observer {
   readonly #system: GapSystem;
+  readonly #scratch: Float64Array;
+  readonly #gapVoltage: Float64Array = new Float64Array(4);
+  readonly #supplyVoltage: Float64Array = new Float64Array(4);
+  readonly #drop: Float64Array = new Float64Array(4);
+  readonly #conducted: Float64Array = new Float64Array(4);
+  readonly #supplied: Float64Array = new Float64Array(4);
   gap = 0;
   source = 0;
   resistor = 0;
@@ -32,37 +39,37 @@ export class EnergyWatch implements Observer {
 
   constructor(system: GapSystem) {
     this.#system = system;
+    this.#scratch = new Float64Array(system.layout.size);
   }
 
   look(step: Step): boolean {
-    const { start: a, end: b } = step;
-    const h = b.time - a.time;
+    const { start, end } = step;
+    const h = end.time - start.time;
     if (!(h > 0)) return false;
-    const { layout, gapCapacitance, circuit } = this.#system;
-    const V0 = a.y[layout.voltage];
-    const V1 = b.y[layout.voltage];
-    const supplied = b.y[layout.supplyCharge] - a.y[layout.supplyCharge];
-    const conducted = b.y[layout.terminalCharge] - a.y[layout.terminalCharge] - gapCapacitance * (V1 - V0);
-    this.gap += voltTimesCharge(V0, V1, a.voltageRate, b.voltageRate, conducted, a.current, b.current, h);
-    this.passed += Math.abs(supplied) + Math.abs(conducted);
+    const { circuit } = this.#system;
+    this.#take(0, start.y, start.supplyVoltage);
+    for (const i of [1, 2]) {
+      step.stateAt(start.time + (i / 3) * h, this.#scratch);
+      // an ideal supply is the gap's voltage, any other is straight over a step
+      this.#take(i, this.#scratch, start.supplyVoltage + (i / 3) * (end.supplyVoltage - start.supplyVoltage));
+    }
+    this.#take(3, end.y, end.supplyVoltage);
+    this.gap += voltTimesCharge(this.#gapVoltage, this.#conducted);
+    this.passed += Math.abs(this.#supplied[3] - this.#supplied[0]) + Math.abs(this.#conducted[3] - this.#conducted[0]);
     if (circuit.feed === 'open') return false;
-    // an ideal supply is the gap's voltage, any other is straight over a step
-    const s0 = a.supplyVoltage;
-    const s1 = b.supplyVoltage;
-    const slope = (s1 - s0) / h;
-    const ds0 = circuit.feed === 'ideal' ? a.voltageRate : slope;
-    const ds1 = circuit.feed === 'ideal' ? b.voltageRate : slope;
-    this.source += voltTimesCharge(s0, s1, ds0, ds1, supplied, a.supplyCurrent, b.supplyCurrent, h);
-    this.resistor += voltTimesCharge(
-      s0 - V0,
-      s1 - V1,
-      ds0 - a.voltageRate,
-      ds1 - b.voltageRate,
-      supplied,
-      a.supplyCurrent,
-      b.supplyCurrent,
-      h,
-    );
+    this.source += voltTimesCharge(this.#supplyVoltage, this.#supplied);
+    this.resistor += voltTimesCharge(this.#drop, this.#supplied);
     return false;
+  }
+
+  #take(i: number, y: Float64Array, supplyVoltage: number): void {
+    const { layout, gapCapacitance, circuit } = this.#system;
+    const V = y[layout.voltage];
+    const supply = circuit.feed === 'ideal' ? V : supplyVoltage;
+    this.#gapVoltage[i] = V;
+    this.#supplyVoltage[i] = supply;
+    this.#drop[i] = supply - V;
+    this.#conducted[i] = y[layout.terminalCharge] - gapCapacitance * V;
+    this.#supplied[i] = y[layout.supplyCharge];
   }
 }

@@ -9,6 +9,8 @@ export interface Findings {
   readonly largestDistortion: number;
   readonly onset: Onset;
   readonly oscillation: Outcome['oscillation'];
+  /** does the supply still change at the end? */
+  readonly supplyChanges: boolean;
   /** time with q_L ≥ 1 [s], in how many stretches, and by how many decades the current rose in one */
   readonly above: { readonly time: number; readonly stretches: number; readonly decades: number | null };
   /** when the trip acted [s], on what, and the time with q_L ≥ 1 until then [s] */

@@ -33,7 +33,7 @@ function tripClause(f: Findings): string | null {
   return `${f.trip.byCharging ? 'the supply was tripped by charging current' : 'the trip acted'} at ${seconds(f.trip.time)}`;
 }
 
-function ending({ end, trip, oscillation, arcRisk }: Findings): string {
+function ending({ end, trip, oscillation, supplyChanges, arcRisk }: Findings): string {
   const carries = `${amperes(end.current)} at ${volts(end.voltage)}`;
   switch (end.stop) {
     case 'steady':
@@ -48,7 +48,8 @@ function ending({ end, trip, oscillation, arcRisk }: Findings): string {
     case 'failed':
       return `the simulation could not go on past ${seconds(end.time)}`;
     case 'until':
-      if (oscillation !== null) return `it fires again every ${seconds(oscillation.period_s)}`;
+      if (oscillation !== null)
+        return `${supplyChanges ? 'the gap voltage repeats' : 'it fires again'} every ${seconds(oscillation.period_s)}`;
       if (end.selfSustaining) return `it carries ${carries} at the end${arcRisk ? ', having been in the range of arcs' : ''}`;
       return trip === null ? 'at the end it no longer sustains itself' : 'the discharge no longer sustains itself';
   }

@@ -24,6 +24,9 @@ export interface Scales {
  *  this many tolerances. Chosen so that crossing times are right to a tenth of the tolerance in per cent: about 0.05 % at the default. */
 const ESTIMATE_PER_TOLERANCE = 10;
 
+/** E/N that sets the times of a gap without any voltage [V m²]. */
+const IDLE_FIELD = 1e-19;
+
 export function scalesOf(settings: Case): Scales {
   const { gap, gas, seed, supply, observe } = settings;
   const programme = Voltage.of(supply.programme);
@@ -35,7 +38,9 @@ export function scalesOf(settings: Case): Scales {
   const thresholds = { positive: limit(1), negative: limit(-1) };
   const first = Math.sign(supply.initialGapVoltage) || firstSign(programme, observe.until);
 
-  const reference = Math.min(thresholds.positive ?? largestVoltage, thresholds.negative ?? largestVoltage);
+  const highest = Math.min(thresholds.positive ?? largestVoltage, thresholds.negative ?? largestVoltage);
+  // a gap that nothing breaks down and nothing is applied to still needs a scale of time
+  const reference = highest > 0 ? highest : IDLE_FIELD * gas.density * gap.spacing;
   const x = reference / (gas.density * gap.spacing);
   const transit = (mobility: Case['gas']['coefficients']['ionMobility']): number =>
     gap.spacing / driftSpeed(curveOf(mobility.form).valueAt(x), x);

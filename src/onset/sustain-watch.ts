@@ -40,7 +40,8 @@ export class SustainWatch implements Observer {
   /** gap charge gone, or fallen to what the seed keeps? */
   faded = false;
   #peakCarriers = 0;
-  /** q_L ≥ 1 now, or earlier with no dying out since */
+  /** q_L ≥ 1 now, or earlier with no dying out since. A discharge that a high resistance holds just below threshold counts where the
+   *  open gap would be above it: its share of seed electrons is 1 − q like that of a driven current, but it would go on without them. */
   #alive = false;
 
   constructor(context: RunContext, distortion: Distortion) {
@@ -67,9 +68,11 @@ export class SustainWatch implements Observer {
 
     const share = seedShare(system.equations.at, V >= 0, layout.cells);
     const gone = this.#peakCarriers > 0 && this.carriers <= GONE * this.#peakCarriers;
-    const atSeedLevel = this.#drivenBySeed(step) && share >= SEED_LEVEL * (1 - this.feedback);
+    const withoutSeed = this.feedback >= 1 || this.#context.feedback(step.openGapAt(time)) >= 1;
+    const seeded = this.#context.settings.seed.cathodeCurrent > 0;
+    const atSeedLevel = seeded && !withoutSeed && share >= SEED_LEVEL * (1 - this.feedback);
     this.faded = gone || (atSeedLevel && this.carriers < FALLEN * this.#peakCarriers);
-    if (this.feedback >= 1) this.#alive = true;
+    if (this.feedback >= 1 || (withoutSeed && share < LARGEST_SEED_SHARE)) this.#alive = true;
     else if (gone || atSeedLevel) this.#alive = false;
 
     // before a whole ion transit has passed only the feedback can tell growth from decay
@@ -77,12 +80,5 @@ export class SustainWatch implements Observer {
     this.selfSustaining = share < LARGEST_SEED_SHARE && current !== 0 && lasting && (this.#alive || this.distorted);
     if (this.selfSustaining && this.distorted) this.brokeDown = true;
     return false;
-  }
-
-  /** Can only the seed keep a current up? Not where the supply could: a discharge that a high resistance holds just below threshold
-   *  has the same share of seed electrons, yet would go on without them. */
-  #drivenBySeed(step: Step): boolean {
-    const sustained = this.feedback >= 1 || this.#context.feedback(step.openGapAt(step.end.time)) >= 1;
-    return this.#context.settings.seed.cathodeCurrent > 0 && !sustained;
   }
 }

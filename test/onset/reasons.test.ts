@@ -33,6 +33,7 @@ const judged = ({ end, ...changes }: Changes): ReturnType<typeof judge> =>
     largestDistortion: 0,
     onset: noOnset,
     oscillation: null,
+    supplyChanges: false,
     above: { time: 0, stretches: 0, decades: null },
     trip: null,
     end: {
@@ -100,6 +101,11 @@ describe('the reason of a breakdown', () => {
       'oscillating',
       { oscillation: { period_s: 4.7e-3, amplitude_V: 30 }, end: { stop: 'until' } },
       `${start}; it fires again every 4.7 ms.`,
+    ],
+    [
+      'following an alternating supply',
+      { oscillation: { period_s: 4e-4, amplitude_V: 30 }, supplyChanges: true, end: { stop: 'until' } },
+      `${start}; the gap voltage repeats every 400 µs.`,
     ],
     ['died out', { end: { stop: 'died-out' } }, `${start}; the discharge died out by 1 ms.`],
     [

@@ -72,6 +72,15 @@ describe('a run ends', () => {
     expect(final.time_s).toBeLessThan(1.1e-3);
   });
 
+  it('at once in every respect where nothing is applied, even to a gap that no voltage breaks down', () => {
+    const narrow = { spacing: 5e-4, longestPath: 5e-4 };
+    for (const gap of [{}, narrow]) {
+      const { final, verdict } = outcomeOf({ gap, supply: { programme: step(0) } });
+      expect(final.stop).toBe('steady');
+      expect(verdict).toEqual({ state: 'holds', regime: 'dark', self_sustaining: false, reason: 'No voltage was applied.' });
+    }
+  });
+
   it('as interrupted when it is told to, with what was found so far', () => {
     let looks = 0;
     const { final, verdict } = simulateNow(openCaseWith(), { interrupted: () => ++looks > 25 });

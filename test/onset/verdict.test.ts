@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { openCase } from '../oracles/open-case.ts';
 import { voltageCurrentCurve } from '../oracles/steady-gap.ts';
-import { codes, ION_TRANSIT, openCaseWith, outcomeOf, step, table, V_S } from './set-up.ts';
+import { codes, ION_TRANSIT, openCaseWith, outcomeOf, ramp, step, table, V_S } from './set-up.ts';
 
 describe('breaks-down', () => {
   it('a step of 10 % overvoltage leads to a steady glow', () => {
@@ -36,6 +36,18 @@ describe('breaks-down', () => {
       observe: { until: 5 },
     });
     expect(peak.current_A).toBeGreaterThan(5 * final.current_A);
+    expect(verdict).toMatchObject({ state: 'breaks-down', regime: 'dark', self_sustaining: true });
+  });
+
+  it('a discharge behind a high resistance breaks down too where a slow ramp never lifts the gap above V_s', () => {
+    // the open gap goes to 1.9 V_s; the seed makes up 1e-5 of the emission
+    const { verdict, onset, theory } = outcomeOf({
+      seed: { cathodeCurrent: 1e-12 },
+      supply: { programme: ramp(400, 100), seriesResistance: 1e8, parallelCapacitance: 1e-11 },
+      observe: { until: 5 },
+    });
+    expect(onset.threshold_time_s).toBeNull();
+    expect(theory.overvoltage).toBeGreaterThan(0.9);
     expect(verdict).toMatchObject({ state: 'breaks-down', regime: 'dark', self_sustaining: true });
   });
 
