@@ -31,6 +31,8 @@ export interface Step {
   openGapAt(t: number): number;
   /** state at time t within the step, into `out` (third order) */
   stateAt(t: number, out: Float64Array): void;
+  /** one integrated unknown (see `Layout`) at time t within the step; cheaper than `stateAt` */
+  unknownAt(t: number, index: number): number;
   /** conduction current [A] of a state */
   currentOf(t: number, y: Float64Array): number;
   /** time in the step at which g passes through zero, given g at both ends, of opposite signs */
@@ -351,6 +353,10 @@ export class March {
         if (t >= end.time) out.set(end.y);
         else if (t <= from) out.set(start.y);
         else stepper.stateAt((t - from) / span, out);
+      },
+      unknownAt: (t, index) => {
+        if (t >= end.time) return end.y[index];
+        return t <= from ? start.y[index] : stepper.unknownAt((t - from) / span, index);
       },
       currentOf: (t, y) => {
         system.rates(t, y, rates);

@@ -106,6 +106,20 @@ export class Stepper {
     return -1;
   }
 
+  /** One unknown of `stateAt`, by its index among the integrated unknowns. */
+  unknownAt(theta: number, index: number): number {
+    const { k, l } = this.scheme;
+    let K = 0;
+    let L = 0;
+    for (let j = 0; j < k.length; j++) {
+      const u = this.#stages[j][index];
+      K += k[j] * u;
+      L += l[j] * u;
+    }
+    const rest = 1 - theta;
+    return rest * this.#from[index] + theta * (this.#to[index] + rest * (K + theta * L));
+  }
+
   /** The state at time + θ·span of the last attempt, 0 ≤ θ ≤ 1, into `out`. Third order. */
   stateAt(theta: number, out: Float64Array): void {
     const n = this.#size;

@@ -150,7 +150,8 @@ export class Analysis {
       gap_voltage_V: now.y[system.layout.voltage],
       current_A: now.current,
       cathode_field_V_per_m: Math.abs(cathodeField(system.layout, now.y)),
-      cathode_layer_m: cathodeLayer(system.grid, system.layout, now.y)?.thickness ?? null,
+      // where next to nothing is left of the field its profile says nothing
+      cathode_layer_m: this.#sustain.distorted ? (cathodeLayer(system.grid, system.layout, now.y)?.thickness ?? null) : null,
     };
   }
 

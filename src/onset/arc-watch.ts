@@ -5,6 +5,8 @@ import type { RunContext } from './context.ts';
 const CURRENT_DENSITY = 1e3; // A/m², 0.1 A/cm²
 const CURRENT = 1; // A
 const POWER_DENSITY = 1e6; // W/m², 100 W/cm²
+/** Times a limit beyond which nothing is left of the model: it ends at once. */
+const RUNAWAY = 1e4;
 /** how long a power density must last, and how long the model is followed beyond any of the limits [s] */
 const DURATION = 1e-3;
 
@@ -38,7 +40,8 @@ export class ArcWatch implements Observer {
     if (beyond) this.risk = true;
     if (!(beyond || hot)) this.#since = null;
     else this.#since ??= time;
-    this.over = this.#since !== null && time >= this.#since + DURATION;
+    const runaway = density > RUNAWAY * CURRENT_DENSITY || current > RUNAWAY * CURRENT;
+    this.over = runaway || (this.#since !== null && time >= this.#since + DURATION);
     if (this.over) this.risk = true;
     return false;
   }

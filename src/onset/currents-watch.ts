@@ -81,8 +81,7 @@ export class CurrentsWatch implements Observer {
   }
 
   #voltageAt(step: Step, time: number): number {
-    step.stateAt(time, this.#scratch);
-    return this.#scratch[this.#system.layout.voltage];
+    return step.unknownAt(time, this.#system.layout.voltage);
   }
 }
 

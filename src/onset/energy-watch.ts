@@ -25,7 +25,6 @@ export function voltTimesCharge(V: Float64Array, Q: Float64Array): number {
  *  and times a long step worth nothing.) */
 export class EnergyWatch implements Observer {
   readonly #system: GapSystem;
-  readonly #scratch: Float64Array;
   readonly #gapVoltage: Float64Array = new Float64Array(4);
   readonly #supplyVoltage: Float64Array = new Float64Array(4);
   readonly #drop: Float64Array = new Float64Array(4);
@@ -39,7 +38,6 @@ export class EnergyWatch implements Observer {
 
   constructor(system: GapSystem) {
     this.#system = system;
-    this.#scratch = new Float64Array(system.layout.size);
   }
 
   look(step: Step): boolean {
@@ -47,13 +45,12 @@ export class EnergyWatch implements Observer {
     const h = end.time - start.time;
     if (!(h > 0)) return false;
     const { circuit } = this.#system;
-    this.#take(0, start.y, start.supplyVoltage);
+    this.#take(0, step, start.time, start.supplyVoltage);
     for (const i of [1, 2]) {
-      step.stateAt(start.time + (i / 3) * h, this.#scratch);
       // an ideal supply is the gap's voltage, any other is straight over a step
-      this.#take(i, this.#scratch, start.supplyVoltage + (i / 3) * (end.supplyVoltage - start.supplyVoltage));
+      this.#take(i, step, start.time + (i / 3) * h, start.supplyVoltage + (i / 3) * (end.supplyVoltage - start.supplyVoltage));
     }
-    this.#take(3, end.y, end.supplyVoltage);
+    this.#take(3, step, end.time, end.supplyVoltage);
     this.gap += voltTimesCharge(this.#gapVoltage, this.#conducted);
     this.passed += Math.abs(this.#supplied[3] - this.#supplied[0]) + Math.abs(this.#conducted[3] - this.#conducted[0]);
     if (circuit.feed === 'open') return false;
@@ -62,14 +59,14 @@ export class EnergyWatch implements Observer {
     return false;
   }
 
-  #take(i: number, y: Float64Array, supplyVoltage: number): void {
+  #take(i: number, step: Step, t: number, supplyVoltage: number): void {
     const { layout, gapCapacitance, circuit } = this.#system;
-    const V = y[layout.voltage];
+    const V = step.unknownAt(t, layout.voltage);
     const supply = circuit.feed === 'ideal' ? V : supplyVoltage;
     this.#gapVoltage[i] = V;
     this.#supplyVoltage[i] = supply;
     this.#drop[i] = supply - V;
-    this.#conducted[i] = y[layout.terminalCharge] - gapCapacitance * V;
-    this.#supplied[i] = y[layout.supplyCharge];
+    this.#conducted[i] = step.unknownAt(t, layout.terminalCharge) - gapCapacitance * V;
+    this.#supplied[i] = step.unknownAt(t, layout.supplyCharge);
   }
 }

@@ -5,13 +5,11 @@ import { Swings } from './swings.ts';
 /** Follows the swings of the gap voltage. */
 export class SwingWatch implements Observer {
   readonly #system: GapSystem;
-  readonly #scratch: Float64Array;
   readonly swings: Swings;
 
   /** @param smallest swing that counts [V] */
   constructor(system: GapSystem, smallest: number) {
     this.#system = system;
-    this.#scratch = new Float64Array(system.layout.size);
     this.swings = new Swings(smallest);
   }
 
@@ -26,8 +24,7 @@ export class SwingWatch implements Observer {
   #turn(step: Step): void {
     const { start, end } = step;
     const time = start.time + ((end.time - start.time) * start.voltageRate) / (start.voltageRate - end.voltageRate);
-    step.stateAt(time, this.#scratch);
-    this.swings.add(time, this.#voltage(this.#scratch));
+    this.swings.add(time, step.unknownAt(time, this.#system.layout.voltage));
   }
 
   #voltage(y: Float64Array): number {

@@ -102,6 +102,7 @@ export function play(script: Script, observers: readonly Observer[]): number {
       stateAt: (t, out) => {
         fill(t, out);
       },
+      unknownAt: (t, index) => fill(t, new Float64Array(3))[index],
       currentOf: (t) => current(t),
       crossing: (before, _after, g) => {
         let [low, high] = [from.time, end.time];

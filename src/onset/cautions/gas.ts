@@ -11,6 +11,10 @@ const TYPICAL_CROSS_SECTION = 4e-19;
 /** Growth within an electron transit, λτ, that the model still describes; a choice of the program. */
 const FASTEST_GROWTH = 0.1;
 
+/** pd from which on photons from the gas feed back long before ions do [Pa m], 20 Torr cm: air at 200 to 760 Torr, 1 cm and 2 % overvoltage breaks
+ *  down in about 1 µs (Fisher and Bederson, Phys. Rev. 81, 109, 1951; from memory, M), where ions alone need 0.2 ms. */
+const DENSE_GAS = 26.7;
+
 /** Where the gas data and the local, collisional picture of the gas end. */
 export function ofGas(evidence: Evidence, raise: Raise): void {
   ofData(evidence, raise);
@@ -30,6 +34,12 @@ export function ofGas(evidence: Evidence, raise: Raise): void {
       'timescales',
       `The current grows by a factor of ${Math.exp(growth).toPrecision(2)} within one electron transit: photons, which the model leaves out, then act before the ions do.`,
       growth,
+    );
+  } else if (theory.pd_Pa_m > DENSE_GAS && theory.feedback > 1) {
+    raise(
+      'timescales',
+      'In gas as dense as this photons feed back within an electron transit and real lags are up to hundreds of times shorter than ions alone give: take the lag as an upper bound, and no hold on the strength of a short pulse.',
+      theory.pd_Pa_m,
     );
   }
 }
