@@ -42,7 +42,7 @@ export function jetFunction(heatRatio: number, drop: number): number {
  *  1 % there. It is held at 1 above δ = 13.9, where the fit overshoots by at most 9 % of the rise (3 % of W): so flows stay monotone.
  *  Source: Sharipov, J. Fluid Mech. 518, 35, 2004; from memory (M). Carried over to other gases, discharge coefficients and pressure ratios we
  *  reckon with 10 %
- *  @example continuumShare(1) // 0.26226 */
+ *  @example continuumShare(1) // 0.262198 */
 export function continuumShare(rarefaction: number): number {
   if (!(rarefaction > 0)) return 0;
   const root = Math.sqrt(rarefaction);

@@ -22,7 +22,7 @@ export interface Vent {
  *  @param from, to  [Pa], ≥ 0
  *  @returns [Pa m³/s] at the gas temperature, the same on both sides; positive out of `from`, exactly antisymmetric, zero at equal pressures
  *  Source: orifice and tube in series: Dushman 1962; exit loss of viscous flow: Santeler, J. Vac. Sci. Technol. A 4, 348, 1986; from memory (M)
- *  @example ventFlow(FLOW_GASES.air, 293.15, { diameter: 0.01, length: 0.01, count: 1, dischargeCoefficient: 0.7 }, 1e-6, 0) // 4.6746e-9 */
+ *  @example ventFlow(FLOW_GASES.air, 293.15, { diameter: 0.01, length: 0.01, count: 1, dischargeCoefficient: 0.7 }, 1e-6, 0) // 4.6745e-9 */
 export function ventFlow(gas: FlowGas, temperature: number, vent: Vent, from: number, to: number): number {
   if (from < to) return -ventFlow(gas, temperature, vent, to, from);
   const drop = from - to;

@@ -40,7 +40,7 @@ const TURBULENT = (64 / 0.316) ** (4 / 3);
  *  elsewhere 5 % (molecular to laminar) and 10 % (turbulent, to Re 1e5).
  *  @returns [Pa m³/s]
  *  Source: Knudsen 1909; Poiseuille in a compressible isothermal gas; Blasius 1913; from memory (H)
- *  @example tubeFlow(FLOW_GASES.air, 293.15, 0.01, 1, 0, 1e-6) // 1.2e-11 */
+ *  @example tubeFlow(FLOW_GASES.air, 293.15, 0.01, 1, 0, 1e-6) // 1.1984e-10 */
 export function tubeFlow(gas: FlowGas, temperature: number, diameter: number, length: number, downstream: number, drop: number): number {
   if (!(drop > 0)) return 0;
   const radius = diameter / 2;
