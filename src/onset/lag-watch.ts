@@ -22,7 +22,6 @@ export class LagWatch implements Observer {
   readonly #context: RunContext;
   readonly #threshold: ThresholdWatch;
   readonly #distortion: Distortion;
-  readonly #scratch: Float64Array;
   #latest: Rise | null = null;
   #firstToSpaceCharge: Rise | null = null;
   #collapse: Passing | null = null;
@@ -35,7 +34,6 @@ export class LagWatch implements Observer {
     this.#context = context;
     this.#threshold = threshold;
     this.#distortion = distortion;
-    this.#scratch = new Float64Array(context.system.layout.size);
   }
 
   look(step: Step): boolean {
@@ -98,7 +96,6 @@ export class LagWatch implements Observer {
   }
 
   #at(step: Step, time: number): Passing {
-    step.stateAt(time, this.#scratch);
-    return { time, voltage: this.#scratch[this.#context.system.layout.voltage] };
+    return { time, voltage: step.unknownAt(time, this.#context.system.layout.voltage) };
   }
 }

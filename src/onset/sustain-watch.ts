@@ -69,8 +69,8 @@ export class SustainWatch implements Observer {
     const share = seedShare(system.equations.at, V >= 0, layout.cells);
     const gone = this.#peakCarriers > 0 && this.carriers <= GONE * this.#peakCarriers;
     const withoutSeed = this.feedback >= 1 || this.#context.feedback(step.openGapAt(time)) >= 1;
-    const seeded = this.#context.settings.seed.cathodeCurrent > 0;
-    const atSeedLevel = seeded && !withoutSeed && share >= SEED_LEVEL * (1 - this.feedback);
+    const seeded = this.#context.settings.seed.cathodeCurrent > 0 && this.feedback < 1;
+    const atSeedLevel = seeded && share >= SEED_LEVEL * (1 - this.feedback);
     this.faded = gone || (atSeedLevel && this.carriers < FALLEN * this.#peakCarriers);
     if (this.feedback >= 1 || (withoutSeed && share < LARGEST_SEED_SHARE)) this.#alive = true;
     else if (gone || atSeedLevel) this.#alive = false;

@@ -407,6 +407,23 @@ describe('timescales', () => {
   });
 });
 
+describe('timescales in dense gas', () => {
+  // 20 Torr cm
+  const dense = (torr: number, voltage: number): Changes => {
+    const pressure = (torr * 101325) / 760;
+    return { gas: { pressure, density: pressure / (1.380649e-23 * 300) }, supply: { programme: step(voltage) } };
+  };
+
+  it('is raised above threshold, where real lags are far shorter', () => {
+    const threshold = exponentialBreakdownVoltage(12, 180, 25, 0.07) ?? 0;
+    expect(find(beforeRun(dense(25, 1.02 * threshold)), 'timescales')?.value).toBeCloseTo((25 * 101325) / 760 / 100, 6);
+    expect(find(beforeRun(dense(25, 1.02 * threshold)), 'timescales')?.text).toMatch(/real lags are up to hundreds of times shorter/);
+    expect(find(beforeRun(dense(25, 0.98 * threshold)), 'timescales')).toBeUndefined();
+    const thinner = exponentialBreakdownVoltage(12, 180, 15, 0.07) ?? 0;
+    expect(find(beforeRun(dense(15, 1.02 * thinner)), 'timescales')).toBeUndefined();
+  });
+});
+
 describe('insulator and edges', () => {
   it('edges is raised where the gap is wide for its electrodes', () => {
     // radius of a disc of the same area

@@ -19,6 +19,7 @@ const onsetOf = (script: Script, scene: Scene = {}): ReturnType<LagWatch['onset'
 describe('threshold_time', () => {
   it('is 0 where the initial state is already above, and null where the voltage never gets there', () => {
     expect(onsetOf({ times: upTo(4), voltage: () => 120 }).threshold_time_s).toBe(0);
+    expect(onsetOf({ times: upTo(4), voltage: () => 100 }).threshold_time_s).toBe(0);
     expect(onsetOf({ times: upTo(4), voltage: () => 99 }).threshold_time_s).toBeNull();
   });
 

@@ -109,11 +109,13 @@ describe('the field at the cathode', () => {
 });
 
 describe('the share of the seed in the emission', () => {
-  const values = (seed: number, ions: number, cells: number): Parameters<typeof seedShare>[0] => {
+  const values = (seed: number, ions: number, cells: number, rightSeed = seed): Parameters<typeof seedShare>[0] => {
     const flux = [new Float64Array(cells + 1), new Float64Array(cells + 1)];
     flux[1][0] = -ions;
     flux[1][cells] = ions;
-    return { flux, emissionLeft: 0.1, emissionRight: 0.1, seedLeft: seed, seedRight: seed } as unknown as Parameters<typeof seedShare>[0];
+    return { flux, emissionLeft: 0.1, emissionRight: 0.1, seedLeft: seed, seedRight: rightSeed } as unknown as Parameters<
+      typeof seedShare
+    >[0];
   };
 
   it('is the seed over seed and ions at the wall that is the cathode', () => {
@@ -123,6 +125,8 @@ describe('the share of the seed in the emission', () => {
       expect(seedShare(values(1, -30, 5), left, 5)).toBe(1);
       expect(seedShare(values(0, 0, 5), left, 5)).toBe(1);
     }
+    expect(seedShare(values(1, 30, 5, 7), true, 5)).toBeCloseTo(0.25, 12);
+    expect(seedShare(values(1, 30, 5, 7), false, 5)).toBeCloseTo(0.7, 12);
   });
 });
 

@@ -1,6 +1,15 @@
 import { describe, expect, it } from 'vitest';
+import { cellsFor } from '../../src/gap/cells.ts';
+import { makeLayout } from '../../src/gap/layout.ts';
+import type { GapSystem } from '../../src/march/gap-system.ts';
+import type { Instant, Step } from '../../src/march/march.ts';
+import type { ArcWatch } from '../../src/onset/arc-watch.ts';
+import { LayerWatch } from '../../src/onset/layer-watch.ts';
 import type { Outcome } from '../../src/onset/outcome.ts';
+import { StopWatch } from '../../src/onset/stop-watch.ts';
+import type { SustainWatch } from '../../src/onset/sustain-watch.ts';
 import { simulateNow } from '../../src/simulate.ts';
+import { play, type Scene, type Script, sceneOf, upTo } from './script.ts';
 import { type Changes, openCaseWith, outcomeOf, step, table, V_S } from './set-up.ts';
 
 describe('a run ends', () => {
@@ -81,9 +90,19 @@ describe('a run ends', () => {
     }
   });
 
+  /** interrupts the open case after a time */
+  const interruptedAfter = (time: number): Outcome => {
+    let late = false;
+    return simulateNow(openCaseWith(), {
+      snapshot: (s) => {
+        late = s.time > time;
+      },
+      interrupted: () => late,
+    });
+  };
+
   it('as interrupted when it is told to, with what was found so far', () => {
-    let looks = 0;
-    const { final, verdict } = simulateNow(openCaseWith(), { interrupted: () => ++looks > 25 });
+    const { final, verdict } = interruptedAfter(20e-6);
     expect(final.stop).toBe('interrupted');
     expect(final.time_s).toBeLessThan(60e-6);
     expect(verdict.state).toBe('undecided');
@@ -91,11 +110,11 @@ describe('a run ends', () => {
   });
 
   it('as interrupted after a breakdown without taking it back', () => {
-    let looks = 0;
-    const { verdict } = simulateNow(openCaseWith(), { interrupted: () => ++looks > 62 });
+    const { verdict } = interruptedAfter(90e-6);
     expect(verdict.state).toBe('breaks-down');
     expect(verdict.reason).toMatch(/; the run was interrupted at \S+ µs\.$/);
   });
+});
 });
 
 /** What must not depend on how long the run was meant to last. */
@@ -111,6 +130,68 @@ function told({ verdict, theory, onset, peak, cautions, currents }: Outcome): un
   };
 }
 
+describe('the rules for an early end', () => {
+  /** @returns why a run ends whose charge has faded or not, given what its supply may still do */
+  const stopOf = (script: Script, scene: Scene, { faded = false, distorted = false, over = false } = {}): string | null => {
+    const context = sceneOf(scene);
+    const sustain = { faded, distorted, carriers: 1, feedback: 0.5 } as SustainWatch;
+    const watch = new StopWatch(context, sustain, { over } as ArcWatch);
+    play(script, [watch]);
+    return watch.stop;
+  };
+  const quiet: Script = { times: upTo(20), voltage: () => 50, current: () => 1e-9 };
+
+  it('know steady, died-out, tripped-out and the end of the model', () => {
+    expect(stopOf(quiet, {})).toBe('steady');
+    expect(stopOf(quiet, {}, { faded: true })).toBe('died-out');
+    expect(stopOf(quiet, { trip: { acted: true, actsAt: Infinity } })).toBe('tripped-out');
+    expect(stopOf(quiet, { trip: { acted: true, actsAt: Infinity } }, { faded: true })).toBe('tripped-out');
+    expect(stopOf(quiet, {}, { over: true })).toBe('model-limit');
+  });
+
+  it('wait for corners of the supply, unless it is disconnected, and for a pending trip', () => {
+    expect(stopOf(quiet, { nextCorner: 50 })).toBeNull();
+    expect(stopOf(quiet, { nextCorner: 50, feed: 'open' })).toBe('steady');
+    expect(stopOf(quiet, { trip: { acted: false, actsAt: 30 } })).toBeNull();
+    expect(stopOf(quiet, { trip: { acted: false, actsAt: 30 } }, { faded: true })).toBeNull();
+  });
+
+  it('do not call a gap dead that holds, or could be given, more than V_s', () => {
+    const faded = { faded: true };
+    expect(stopOf({ ...quiet, voltage: (t) => 120 + t }, {}, faded)).toBeNull();
+    expect(stopOf({ ...quiet, voltage: (t) => -120 - t }, {}, faded)).toBeNull();
+    expect(stopOf({ ...quiet, voltage: (t) => 50 + t }, { largestSupply: 120 }, faded)).toBeNull();
+    expect(stopOf({ ...quiet, voltage: (t) => 50 + t }, { largestSupply: 90 }, faded)).toBe('died-out');
+  });
+
+  it('let nothing that would change by more than the tolerance until the end pass as steady', () => {
+    // 1e-3 until 100: 1e-5 a second at the end of the window
+    expect(stopOf({ ...quiet, voltage: (t) => 50 * (1 + 3e-5 * t) }, {})).toBeNull();
+    expect(stopOf({ ...quiet, voltage: (t) => 50 * (1 + 0.5e-5 * t) }, {})).toBe('steady');
+    expect(stopOf({ ...quiet, current: (t) => 1e-9 * (1 + 3e-5 * t) }, {})).toBeNull();
+    expect(stopOf({ ...quiet, times: upTo(9) }, {})).toBeNull();
+  });
+});
+
+describe('the cells of the cathode layer', () => {
+  it('are counted only while a discharge sustains itself and distorts the field', () => {
+    const { layout, grid } = { layout: makeLayout(40, 2), grid: cellsFor(openCaseWith().gap, 40, { left: true, right: false }, 2e-3) };
+    const y = new Float64Array(layout.size);
+    y[layout.voltage] = 200;
+    for (let j = 0; j <= 40; j++) y[layout.field + j] = -Math.max(1e5 * (1 - grid.faces[j] / 1e-3), 1e3);
+    const at = { time: 0, y } as unknown as Instant;
+    const lookWith = (selfSustaining: boolean, distorted: boolean): number | null => {
+      const watch = new LayerWatch({ layout, grid } as GapSystem, { selfSustaining, distorted } as SustainWatch);
+      watch.look({ start: at, end: at } as Step);
+      expect(watch.largestField).toBe(1e5);
+      return watch.fewestCells;
+    };
+    expect(lookWith(true, true)).toBe(Array.from(grid.faces).filter((x) => x > 0 && x <= 1e-3).length);
+    expect(lookWith(true, false)).toBeNull();
+    expect(lookWith(false, true)).toBeNull();
+  });
+});
+
 describe('an early end changes nothing', () => {
   const cases: readonly (readonly [string, Changes, readonly [number, number]])[] = [
     ['a glow', {}, [1e-3, 1]],
@@ -125,9 +206,27 @@ describe('an early end changes nothing', () => {
     ['a strong seed', { seed: { cathodeCurrent: 1e-6 }, supply: { programme: step(0.95 * V_S) } }, [2e-3, 1]],
   ];
 
+  it('of a steady power in the range of arcs, which counts as if it had been followed for its millisecond', () => {
+    const { left } = openCaseWith().electrodes;
+    const weak = { ...left, ionYield: { ...left.ionYield, typical: 1e-3, low: 1e-3, high: 1e-3 } };
+    const { final, verdict, cautions } = outcomeOf({
+      gap: { area: 1e-5 },
+      electrodes: { left: weak, right: weak },
+      supply: { programme: step(2800, 200e-6), seriesResistance: 0, parallelCapacitance: 0 },
+      observe: { until: 3e-3 },
+    });
+    // 614 A/m² at 2.8 kV, from 0.15 ms on at the earliest
+    expect(final).toMatchObject({ stop: 'steady', time_s: expect.closeTo(0.9e-3, 3) });
+    expect(verdict.regime).toBe('arc-risk');
+    expect(cautions[1].code).toBe('arc-risk');
+  });
+
   it.each(cases)('of %s', (_name, changes, [short, long]) => {
     const [first, second] = [short, long].map((until) => outcomeOf({ ...changes, observe: { until, currents: [1e-9, 1e-6] } }));
     expect(told(first)).toEqual(told(second));
+    // as if the run had gone on: the supply would have charged the gap
+    const { voltage } = { voltage: 0.1, ...openCaseWith(changes).supply.programme };
+    expect(second.theory.overvoltage).toBeCloseTo(Math.max(voltage, openCaseWith(changes).supply.initialGapVoltage) / V_S - 1, 6);
     // and it did end early
     expect(second.final.time_s).toBeLessThan(long / 2);
   });

@@ -56,6 +56,13 @@ describe('polarity', () => {
     expect(verdict.reason).toBe(
       'The highest voltage, 200 V with the left electrode as cathode, stays 4.4 % below the breakdown voltage of 209 V.',
     );
+    const swapped = outcomeOf({
+      electrodes: { left: right, right: left },
+      supply: { programme: table([0, 0], [1e-4, 220], [2e-4, 220], [4e-4, -200], [6e-4, -200]) },
+    });
+    expect(swapped.verdict.reason).toBe(
+      'The highest voltage, 200 V with the right electrode as cathode, stays 4.4 % below the breakdown voltage of 209 V.',
+    );
   });
 });
 

@@ -29,6 +29,15 @@ describe('breaks-down', () => {
     expect(theory.overvoltage).toBeCloseTo(0.1, 4);
   });
 
+  it('the same discharge counts as driven by its seed where that makes up more than 1 % of the emission', () => {
+    const townsend = (cathodeCurrent: number): ReturnType<typeof outcomeOf> =>
+      outcomeOf({ seed: { cathodeCurrent }, supply: { seriesResistance: 1e9, parallelCapacitance: 0 }, observe: { until: 1 } });
+    // the current is (V_0 − V_s)/R, the emission γ/(1 + γ) of it
+    const emission = (((openCase.supplyVoltage - V_S) / 1e9) * 0.07) / 1.07;
+    expect(townsend(0.007 * emission).verdict).toMatchObject({ state: 'breaks-down', self_sustaining: true });
+    expect(townsend(0.013 * emission).verdict).toMatchObject({ state: 'holds', self_sustaining: false });
+  });
+
   it('the same discharge counts as self-sustaining although it settles far below its first overshoot', () => {
     const { verdict, peak, final } = outcomeOf({
       seed: { cathodeCurrent: 1e-14 },
