@@ -115,7 +115,6 @@ describe('a run ends', () => {
     expect(verdict.reason).toMatch(/; the run was interrupted at \S+ µs\.$/);
   });
 });
-});
 
 /** What must not depend on how long the run was meant to last. */
 function told({ verdict, theory, onset, peak, cautions, currents }: Outcome): unknown {
