@@ -131,9 +131,9 @@ function told({ verdict, theory, onset, peak, cautions, currents }: Outcome): un
 
 describe('the rules for an early end', () => {
   /** @returns why a run ends whose charge has faded or not, given what its supply may still do */
-  const stopOf = (script: Script, scene: Scene, { faded = false, distorted = false, over = false } = {}): string | null => {
+  const stopOf = (script: Script, scene: Scene, { faded = false, distorted = false, over = false, feedback = 0.5 } = {}): string | null => {
     const context = sceneOf(scene);
-    const sustain = { faded, distorted, carriers: 1, feedback: 0.5 } as SustainWatch;
+    const sustain = { faded, distorted, carriers: 1, feedback } as SustainWatch;
     const watch = new StopWatch(context, sustain, { over } as ArcWatch);
     play(script, [watch]);
     return watch.stop;
@@ -161,6 +161,16 @@ describe('the rules for an early end', () => {
     expect(stopOf({ ...quiet, voltage: (t) => -120 - t }, {}, faded)).toBeNull();
     expect(stopOf({ ...quiet, voltage: (t) => 50 + t }, { largestSupply: 120 }, faded)).toBeNull();
     expect(stopOf({ ...quiet, voltage: (t) => 50 + t }, { largestSupply: 90 }, faded)).toBe('died-out');
+  });
+
+  it('do not call a current steady that feedback above 1 lets grow, however slowly, unless space charge holds it', () => {
+    const slowly = (rate: number): Script => ({ ...quiet, current: (t) => 1e-9 * Math.exp(rate * t) });
+    const above = { feedback: 1 + 2e-4 };
+    // q − 1 an ion transit of 1 s; within the tolerance until 21 s
+    expect(stopOf(slowly(0.5e-4), { until: 21 }, above)).toBeNull();
+    expect(stopOf(slowly(0.5e-4), { until: 21 }, { ...above, distorted: true })).toBe('steady');
+    expect(stopOf(slowly(0.5e-4), { until: 21 })).toBe('steady');
+    expect(stopOf(slowly(0.1e-4), { until: 21 }, above)).toBe('steady');
   });
 
   it('let nothing that would change by more than the tolerance until the end pass as steady', () => {
