@@ -15,7 +15,10 @@ export function check(path: string, options: CheckOptions, terminal: Terminal): 
   const settings = loaded.case;
   const voltage = highestOpenGapVoltage(settings);
   const theory = predict(settings, voltage);
-  const cautions = prognosisCautions(settings);
+  const cautions = prognosisCautions(
+    settings,
+    loaded.defaults.map((entry) => entry.path),
+  );
   if (options.json) {
     const { title, sha256 } = settings;
     const answer = { format: 'gapwake.check/1', title, version: VERSION, case_sha256: sha256, case: loaded.resolved, theory, cautions };

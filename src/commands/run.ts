@@ -1,5 +1,6 @@
 import { statSync } from 'node:fs';
 import type { Case } from '../case.ts';
+import { withDefaults } from '../onset/cautions/index.ts';
 import type { Outcome } from '../onset/outcome.ts';
 import { ResultFileError } from '../results/errors.ts';
 import { type PreparedRunFile, prepareRunFile, type RunWriter } from '../results/write.ts';
@@ -60,13 +61,25 @@ async function follow(
       begin: (layout) => recording.begin(layout),
       snapshot: (snapshot) => recording.snapshot(snapshot),
     });
-    return { outcome, failure: null };
+    return { outcome: withAssumptions(outcome, loaded), failure: null };
   } catch (thrown) {
     if (!(thrown instanceof SimulationFailure)) throw thrown;
-    return { outcome: thrown.outcome, failure: simulationFailure(path, thrown) };
+    return { outcome: withAssumptions(thrown.outcome, loaded), failure: simulationFailure(path, thrown) };
   } finally {
     progress?.end();
   }
+}
+
+/** Adds the caution about the defaults that the case leaves to the program: only who read the case knows them. */
+function withAssumptions(outcome: Outcome, { case: settings, defaults }: LoadedCase): Outcome {
+  return {
+    ...outcome,
+    cautions: withDefaults(
+      outcome.cautions,
+      settings,
+      defaults.map(({ path }) => path),
+    ),
+  };
 }
 
 /** Finishes the file; a disk that refuses it does not take the verdict away. */

@@ -178,6 +178,7 @@ export class Analysis {
         time: final.time_s,
         current: Math.abs(final.current_A),
         voltage: Math.abs(final.gap_voltage_V),
+        loaded: this.#openGap.loaded(),
         selfSustaining,
         feedback,
         distortion,

@@ -21,6 +21,8 @@ export interface Findings {
     readonly time: number;
     readonly current: number;
     readonly voltage: number;
+    /** does the current keep the gap's voltage below that of the open gap? */
+    readonly loaded: boolean;
     readonly selfSustaining: boolean;
     /** q_L */
     readonly feedback: number;

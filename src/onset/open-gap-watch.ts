@@ -5,6 +5,8 @@ import { followOpenGap, turnOfOpenGap } from './highest-voltage.ts';
 
 /** Missing share of the supply's voltage that still counts as charging. */
 const STILL_CHARGING = 0.01;
+/** Share of the open-gap voltage that the current must take to load the gap. */
+const LOADED = 0.01;
 
 /** The largest open-gap voltages of a run, of either sign, and the largest voltage the gap itself saw. */
 export class OpenGapWatch implements Observer {
@@ -48,6 +50,13 @@ export class OpenGapWatch implements Observer {
     const { openGap, time } = march();
     if (system.circuit.feed === 'open') return false;
     return Math.abs(system.circuit.supplyVoltage(time)) > (1 + STILL_CHARGING) * Math.abs(openGap.voltage);
+  }
+
+  /** Does the current keep the gap's voltage below that of the open gap now? */
+  loaded(): boolean {
+    const { march, system } = this.#context;
+    const { openGap, state } = march();
+    return Math.abs(state[system.layout.voltage]) < (1 - LOADED) * Math.abs(openGap.voltage);
   }
 
   #take(voltage: number): void {

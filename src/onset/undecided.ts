@@ -46,23 +46,24 @@ function longerPath(f: Findings): string | null {
 }
 
 function stillGoing(f: Findings): string | null {
-  const { feedback, growth, selfSustaining, current } = f.end;
-  const growing = growth !== null && growth > STILL_GROWING;
+  const { feedback, growth, selfSustaining, loaded, current } = f.end;
+  const unsettled = selfSustaining
+    ? `A discharge of ${amperes(current)} sustains itself at the end without having settled: extend observe.until`
+    : null;
+  // a discharge that the circuit holds at the threshold swings about it
+  if (unsettled !== null && loaded) return unsettled;
   if (feedback >= 1) {
     if (current === 0) return 'The gap is above threshold at the end, but no charge has started to multiply: extend observe.until';
     const needed = timeToSpaceCharge(f);
-    return needed === null
-      ? 'The gap is above threshold at the end: extend observe.until'
-      : `The gap is above threshold at the end and space charge needs about ${roughly(needed)} more: extend observe.until`;
+    const more = needed === null ? '' : ` and space charge needs about ${roughly(needed)} more`;
+    return `The gap is above threshold at the end${more}: extend observe.until`;
   }
-  if (growing) {
+  if (growth !== null && growth > STILL_GROWING) {
     const needed = timeToSettle(f);
     const more = needed === null ? '' : `; to settle it needs about ${roughly(needed)} more`;
     return `The current still grows at the end, by ${percent(Math.expm1(growth))} in an ion transit${more}: extend observe.until`;
   }
-  return selfSustaining
-    ? `A discharge of ${amperes(current)} sustains itself at the end without having settled: extend observe.until`
-    : null;
+  return unsettled;
 }
 
 /** Time until the field is distorted by a tenth at the present growth [s]; null where it does not grow. */

@@ -10,7 +10,7 @@ import { predict, prospects } from '../../src/theory/predict.ts';
 import { coefficient } from '../theory/make-case.ts';
 import { type Changes, codes, openCaseWith, outcomeOf, step, V_S } from './set-up.ts';
 
-const beforeRun = (changes: Changes = {}): Caution[] => prognosisCautions(openCaseWith(changes));
+const beforeRun = (changes: Changes = {}): Caution[] => prognosisCautions(openCaseWith(changes), []);
 const afterRun = (changes: Changes = {}): readonly Caution[] => outcomeOf(changes).cautions;
 
 function find(list: readonly Caution[], code: CautionCode): Caution | undefined {

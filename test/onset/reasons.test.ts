@@ -41,6 +41,7 @@ const judged = ({ end, ...changes }: Changes): ReturnType<typeof judge> =>
       time: 1e-3,
       current: 1e-9,
       voltage: 150,
+      loaded: false,
       selfSustaining: false,
       feedback: 0.5,
       distortion: 0,
@@ -283,6 +284,11 @@ describe('the reason of a doubt', () => {
       'growing below threshold',
       { end: { stop: 'until', growth: Math.log(1.1), theoreticalGrowth: -1e4 } },
       `The current still grows at the end, by 10 % in an ion transit; to settle it needs about 230 µs more: extend observe.until.`,
+    ],
+    [
+      'held at the threshold by the circuit',
+      { end: { stop: 'until', selfSustaining: true, loaded: true, current: 2e-8, feedback: 1.001, growth: 0.02 } },
+      'A discharge of 20 nA sustains itself at the end without having settled: extend observe.until.',
     ],
     [
       'sustaining itself without having settled',
