@@ -302,21 +302,22 @@ function ionisedRates(
   let leftElectrons = electrons[0];
   let leftIons = ions[0];
   let leftAlpha = alpha[0];
-  let leftMade = y[field] < 0 ? leftAlpha * leftElectrons : -leftAlpha * leftElectrons;
+  let leftAlong = y[field] < 0 ? leftElectrons : -leftElectrons;
   for (let i = 0; i < widths.length; i++) {
     const e = electrons[i + 1];
     const p = ions[i + 1];
     const a = alpha[i + 1];
-    const made = y[field + i + 1] < 0 ? a * e : -a * e;
+    const along = y[field + i + 1] < 0 ? e : -e;
     const width = widths[i];
-    const source = 0.5 * cellFactor(0.5 * (leftAlpha + a) * width) * (leftMade + made);
+    const mean = 0.5 * (leftAlpha + a);
+    const source = 0.5 * cellFactor(mean * width) * mean * (leftAlong + along);
     const per = 1 / width;
     out[first + i] += source - (e - leftElectrons) * per;
     out[firstIon + i] += source - (p - leftIons) * per;
     leftElectrons = e;
     leftIons = p;
     leftAlpha = a;
-    leftMade = made;
+    leftAlong = along;
   }
 }
 
@@ -338,9 +339,8 @@ function attachedRates(
     const left = electrons[i];
     const right = electrons[i + 1];
     const half = 0.5 * cellFactor(0.5 * (alpha[i] + alpha[i + 1] - eta[i] - eta[i + 1]) * width);
-    const ionised =
-      half * (alpha[i] * (y[field + i] < 0 ? left : -left) + alpha[i + 1] * (y[field + i + 1] < 0 ? right : -right));
-    const attached = half * (eta[i] * Math.abs(left) + eta[i + 1] * Math.abs(right));
+    const ionised = half * 0.5 * (alpha[i] + alpha[i + 1]) * ((y[field + i] < 0 ? left : -left) + (y[field + i + 1] < 0 ? right : -right));
+    const attached = half * 0.5 * (eta[i] + eta[i + 1]) * (Math.abs(left) + Math.abs(right));
     out[first + i] += ionised - attached - (right - left) / width;
     out[row + first + i] += ionised - (flux[1][i + 1] - flux[1][i]) / width;
     if (flux.length > 2) out[2 * row + first + i] += attached - (flux[2][i + 1] - flux[2][i]) / width;

@@ -1,4 +1,6 @@
-/** Ions made per cell from the flux form S = α|Γ_e|: the mean of the two face values, times φ(z), z = (α − η)Δx.
+/** Ions made per cell from the flux form: α times the mean of the two face fluxes, α the mean of its face values, times φ(z),
+ *  z = (α − η)Δx. (Weighing each face's flux by its own α would answer unequally to the field at the two faces and put a term
+ *  linear in the current into the voltage of a dark discharge, which should depart from V_s as its square.)
  *
  *  φ(z) = tanh(z/2)/(z/2) makes the growth of a steady flux over a cell exact, exp(z), whatever the cell's width; it tends
  *  to 1 as z², so the order of the scheme is unchanged. tanh by its continued fraction, (60 + z²)/(60 + 6z²), right to

@@ -84,6 +84,13 @@ export class GapSystem {
     return -1;
   }
 
+  /** dV/dI [ohm] of the gap's steady states at the state last linearised: what δj = 1 does once everything has had time to follow.
+   *  @param y that state
+   *  @param long far longer than anything in the gap takes [s] */
+  differentialResistance(y: Float64Array, long: number): number | null {
+    return this.factor(y, 1 / long) >= 0 ? null : this.#columnSum / this.grid.area;
+  }
+
   /** U ← (a − J)⁻¹ r. Σ w r_E = −r_V must hold, as it does for rates and their combinations. */
   solve(r: Float64Array, U: Float64Array): void {
     const { layout } = this;

@@ -116,8 +116,10 @@ export class LinearSystem {
       const left = electronFlux[i];
       const right = electronFlux[i + 1];
       const bend = 0.25 * cellFactorSlope(z) * width;
-      const ionBend = bend * (alpha[i] * (y[field + i] < 0 ? left : -left) + alpha[i + 1] * (y[field + i + 1] < 0 ? right : -right));
-      const attachBend = bend * (eta[i] * Math.abs(left) + eta[i + 1] * Math.abs(right));
+      const meanAlpha = 0.5 * (alpha[i] + alpha[i + 1]);
+      const meanEta = 0.5 * (eta[i] + eta[i + 1]);
+      const alongSum = (y[field + i] < 0 ? left : -left) + (y[field + i + 1] < 0 ? right : -right);
+      const sizeSum = Math.abs(left) + Math.abs(right);
       for (let k = 0; k < species; k++) {
         const diagonal = (species * i + this.#slots[k]) * stride + lower;
         entries[diagonal] += a;
@@ -126,11 +128,11 @@ export class LinearSystem {
         const f = i + side;
         const s = (side === 0 ? -1 : 1) / width;
         const along = y[field + f] < 0 ? 1 : -1;
-        const made = half * alpha[f] * along;
-        const lost = half * eta[f] * Math.sign(electronFlux[f]);
+        const made = half * meanAlpha * along;
+        const lost = half * meanEta * Math.sign(electronFlux[f]);
         const netSlope = eq.alphaSlope[f] - eq.etaSlope[f];
-        const madeByField = half * eq.alphaSlope[f] * along * electronFlux[f] + ionBend * netSlope;
-        const lostByField = half * eq.etaSlope[f] * Math.abs(electronFlux[f]) + attachBend * netSlope;
+        const madeByField = (0.5 * half * eq.alphaSlope[f] + bend * meanAlpha * netSlope) * alongSum;
+        const lostByField = (0.5 * half * eq.etaSlope[f] + bend * meanEta * netSlope) * sizeSum;
         B.fill(0);
         for (let k = 0; k < species; k++) {
           const fromElectrons = k === 0 ? -made + lost : k === 1 ? -made : -lost;
@@ -459,10 +461,12 @@ function assembleTwo(eq: GapEquations, a: number, response: Float64Array, fieldI
     const sizeR = along * electronFlux[f];
     const z = 0.5 * (alphaL + alphaR) * width;
     const half = 0.5 * cellFactor(z);
-    const bend = 0.25 * cellFactorSlope(z) * width * (alphaL * sizeL + alphaR * sizeR);
+    const mean = 0.5 * (alphaL + alphaR);
+    // source = half × mean α × (sum of the fluxes): its slope by either α
+    const byAlpha = (0.5 * half + 0.25 * cellFactorSlope(z) * width * mean) * (sizeL + sizeR);
 
-    const madeL = along * half * alphaL;
-    const byFieldL = alphaSlope[i] * (half * sizeL + bend);
+    const madeL = along * half * mean;
+    const byFieldL = alphaSlope[i] * byAlpha;
     const geL = ((-s - madeL) * eByField[i] - byFieldL) * response[i];
     const giL = (-s * iByField[i] - madeL * eByField[i] - byFieldL) * response[i];
     const beeL = -s - madeL + geL * c;
@@ -474,8 +478,8 @@ function assembleTwo(eq: GapEquations, a: number, response: Float64Array, fieldI
       biiL -= bieL * emissionLeft;
     }
 
-    const madeR = along * half * alphaR;
-    const byFieldR = alphaSlope[f] * (half * sizeR + bend);
+    const madeR = along * half * mean;
+    const byFieldR = alphaSlope[f] * byAlpha;
     const geR = ((s - madeR) * eByField[f] - byFieldR) * response[f];
     const giR = (s * iByField[f] - madeR * eByField[f] - byFieldR) * response[f];
     const beeR = s - madeR + geR * c;

@@ -24,6 +24,7 @@ import { RangeWatch } from './range-watch.ts';
 import { type Snapshot, SnapshotWatch } from './snapshot-watch.ts';
 import { StopWatch } from './stop-watch.ts';
 import { SustainWatch } from './sustain-watch.ts';
+import { SwingGuard } from './swing-guard.ts';
 import { SwingWatch } from './swing-watch.ts';
 import { ThresholdWatch } from './threshold-watch.ts';
 import { TripWatch } from './trip-watch.ts';
@@ -75,7 +76,8 @@ export class Analysis {
     this.#sustain = new SustainWatch(context, distortion);
     this.#layer = new LayerWatch(system, this.#sustain);
     this.#arc = new ArcWatch(context);
-    this.#stop = new StopWatch(context, this.#sustain, this.#arc);
+    const guard = new SwingGuard(context, this.#sustain);
+    this.#stop = new StopWatch(context, this.#sustain, this.#arc, guard);
     takers.begin?.({ x: system.grid.centres, negativeIons: system.equations.charges.length > 2 });
     const take = takers.snapshot?.bind(takers);
     this.#snapshots = take ? new SnapshotWatch(system, this.#energy, take) : null;
@@ -96,6 +98,7 @@ export class Analysis {
       this.#arc,
       ...(this.#snapshots ? [this.#snapshots] : []),
       { look: (step) => this.#keep(step) },
+      guard,
       this.#stop,
     ];
   }

@@ -144,6 +144,6 @@ function profiles(
     out.electricField[i] = middle;
     out.potential[i] = potential - half * 0.5 * (left + middle);
     potential -= 2 * half * middle;
-    out.ionisationRate[i] = 0.5 * (alpha[i] * Math.abs(electronFlux[i]) + alpha[i + 1] * Math.abs(electronFlux[i + 1]));
+    out.ionisationRate[i] = 0.25 * (alpha[i] + alpha[i + 1]) * Math.abs(electronFlux[i] + electronFlux[i + 1]);
   }
 }

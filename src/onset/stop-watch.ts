@@ -3,6 +3,7 @@ import type { ArcWatch } from './arc-watch.ts';
 import type { RunContext } from './context.ts';
 import type { Stop } from './outcome.ts';
 import type { SustainWatch } from './sustain-watch.ts';
+import type { SwingGuard } from './swing-guard.ts';
 
 /** q_L up to which an undistorted discharge can be steady: the closed form and the simulated threshold differ by less. */
 const STEADY_FEEDBACK = 1.0001;
@@ -18,13 +19,15 @@ export class StopWatch implements Observer {
   readonly #context: RunContext;
   readonly #sustain: SustainWatch;
   readonly #arc: ArcWatch;
+  readonly #guard: SwingGuard | null;
   /** why the run ends here; null while it goes on */
   stop: Stop | null = null;
   #lastUnsettled = 0;
   #carriersBefore = 0;
 
   /** @param sustain @param arc look before this one */
-  constructor(context: RunContext, sustain: SustainWatch, arc: ArcWatch) {
+  constructor(context: RunContext, sustain: SustainWatch, arc: ArcWatch, guard: SwingGuard | null = null) {
+    this.#guard = guard;
     this.#context = context;
     this.#sustain = sustain;
     this.#arc = arc;
@@ -34,15 +37,16 @@ export class StopWatch implements Observer {
     const { time } = step.end;
     if (time > step.start.time && !this.#settled(step)) this.#lastUnsettled = time;
     this.#carriersBefore = this.#sustain.carriers;
-    this.stop = this.#reason(time, step.end.y[this.#context.system.layout.voltage]);
+    this.stop = this.#reason(time, step.end.y, step.end.current);
     return this.stop !== null;
   }
 
-  #reason(t: number, V: number): Stop | null {
+  #reason(t: number, y: Float64Array, current: number): Stop | null {
     if (this.#arc.over) return 'model-limit';
     const { trip } = this.#context.march();
     if (trip !== null && Number.isFinite(trip.actsAt)) return null;
-    const ended = this.#quiet(t, V) ? 'died-out' : this.#steady(t) ? 'steady' : null;
+    const ended = this.#quiet(t, y[this.#context.system.layout.voltage]) ? 'died-out' : this.#steady(t) ? 'steady' : null;
+    if (ended === 'steady' && this.#sustain.distorted && this.#guard !== null && !this.#guard.allows(t, y, current)) return null;
     return ended !== null && trip?.acted ? 'tripped-out' : ended;
   }
 
