@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { readCase } from '../../src/casefile/index.ts';
 import { gases } from '../../src/gases/index.ts';
 import { defaultsCaution, fallbackYields } from '../../src/onset/cautions/defaults.ts';
 import { cautionsOf, withDefaults } from '../../src/onset/cautions/index.ts';
@@ -473,6 +474,32 @@ describe('defaults', () => {
       text: 'The result rests on defaults: gas.temperature, gas.coefficients.electron_energy. Give them if you know better.',
       value: 2,
     });
+  });
+
+  it('is raised for what a case file leaves out', () => {
+    const text = (gas: string, electrodes: string): string =>
+      `gap: { geometry: planar, spacing: 1 cm, area: 10 cm^2 }
+gas: ${gas}
+electrodes: { left: ${electrodes} }
+seed: { cathode_current: 1 pA }
+supply: { voltage: { step: 300 V }, series_resistance: 10 kohm }
+observe: { until: 1 ms }`;
+    const raised = (gas: string, electrodes: string): string | undefined => {
+      const read = readCase(text(gas, electrodes), 'case.yaml', () => ({ ok: false, reason: 'no tables' }));
+      if (!read.ok) throw new Error(JSON.stringify(read.problems));
+      const paths = read.defaults.map((d) => d.path);
+      return find(prognosisCautions(read.case, paths), 'defaults')?.text;
+    };
+    const own =
+      'coefficients: { ionisation: { form: exponential, A: 12 1/(cm Torr), B: 180 V/(cm Torr) }, electron_mobility: 3e5 cm^2 Torr/(V s), ion_mobility: 1400 cm^2 Torr/(V s)';
+    expect(raised('{ name: argon, pressure: 3 Torr }', '{ material: nickel }')).toMatch(/rests on defaults: gas\.temperature\./);
+    expect(raised('{ name: argon, pressure: 3 Torr, temperature: 300 K }', '{ material: nickel }')).toBeUndefined();
+    expect(raised(`{ pressure: 3 Torr, temperature: 300 K, ${own} } }`, '{ ion_yield: 0.07 }')).toMatch(
+      /rests on defaults: gas\.coefficients\.electron_energy\./,
+    );
+    expect(raised(`{ pressure: 3 Torr, temperature: 300 K, ${own}, electron_energy: 1 V } }`, '{ material: nickel }')).toMatch(
+      /rests on defaults: electrodes\.left\.ion_yield, electrodes\.right\.ion_yield\./,
+    );
   });
 
   it('is not raised for the others', () => {
