@@ -11,20 +11,6 @@ const LOOKS = 60;
  *  @param current as many values above zero [A]
  *  @returns λ [1/s], above zero, or null where the samples do not determine it */
 export function fitGrowth(t: readonly number[], current: readonly number[]): number | null {
-  const whole = bestRate(t, current);
-  // space charge first acts in proportion to the current: without the end its part is a third, and λ must not mind
-  const end = current[current.length - 1];
-  const kept = current.findIndex((I) => I > END_SHARE * end);
-  if (whole === null || kept < LEAST_SAMPLES) return whole;
-  const shorter = bestRate(t.slice(0, kept), current.slice(0, kept));
-  return shorter !== null && Math.abs(shorter / whole - 1) > LARGEST_DOUBT ? null : whole;
-}
-
-/** Share of the last current at which the shorter fit ends, and how far the two may differ. */
-const END_SHARE = 1 / 3;
-const LARGEST_DOUBT = 2.5e-3;
-
-function bestRate(t: readonly number[], current: readonly number[]): number | null {
   const n = t.length;
   if (n < LEAST_SAMPLES) return null;
   const mean = Math.log(current[n - 1] / current[0]) / (t[n - 1] - t[0]);
