@@ -15,13 +15,23 @@ const banner = { js: "import{createRequire as __cr}from'node:module';const requi
 
 async function bundle(name) {
   const outfile = join(folder, `${name}.mjs`);
-  await build({ entryPoints: [join(here, `${name}.ts`)], bundle: true, platform: 'node', target: 'node20', format: 'esm', outfile, banner, logLevel: 'warning' });
+  await build({
+    entryPoints: [join(here, `${name}.ts`)],
+    bundle: true,
+    platform: 'node',
+    target: 'node20',
+    format: 'esm',
+    outfile,
+    banner,
+    logLevel: 'warning',
+  });
   return outfile;
 }
 
 const worker = await bundle('worker');
 const converge = await bundle('converge');
-const measure = (name, cells, repeats) => JSON.parse(execFileSync(process.execPath, [worker, name, String(cells), String(repeats)], { maxBuffer: 1e8 }));
+const measure = (name, cells, repeats) =>
+  JSON.parse(execFileSync(process.execPath, [worker, name, String(cells), String(repeats)], { maxBuffer: 1e8 }));
 const exact = (name) => JSON.parse(execFileSync(process.execPath, [converge, name], { maxBuffer: 1e8 }));
 
 function relative(a, b) {

@@ -66,15 +66,34 @@ describe('the steady voltage–current curve', () => {
         p.voltage / exact[i].voltage - 1,
         p.cathodeField,
         p.cathodeField / exact[i].cathodeField - 1,
+        p.layer === null ? '' : p.layer / layerOf(exact[i].x, exact[i].field) - 1,
       ]);
-      printTable(`V(j) ${name}, V_s = ${least.toPrecision(6)} V`, ['current A', 'V', 'error', 'cathode field V/m', 'error'], rows);
+      printTable(`V(j) ${name}, V_s = ${least.toPrecision(6)} V`, ['current A', 'V', 'error', 'cathode field V/m', 'error', 'layer'], rows);
       for (const row of rows) {
-        expect(Math.abs(row[2]), `V at ${row[0]} A`).toBeLessThan(5e-3);
-        expect(Math.abs(row[4]), `cathode field at ${row[0]} A`).toBeLessThan(5e-3);
+        expect(Math.abs(Number(row[2])), `V at ${row[0]} A`).toBeLessThan(5e-3);
+        expect(Math.abs(Number(row[4])), `cathode field at ${row[0]} A`).toBeLessThan(5e-3);
+        expect(Math.abs(Number(row[5])), `cathode layer at ${row[0]} A`).toBeLessThan(5e-3);
       }
     });
   }
 });
+
+/** Where the least-squares line through the field, from the cathode to where it has fallen to half, reaches zero; every length counts alike. */
+function layerOf(x: Float64Array, field: Float64Array): number {
+  const half = field[0] / 2;
+  const points: [number, number][] = [];
+  for (let i = 0; field[i] > half; i++) {
+    // ten points to an interval, so that a graded mesh counts by length
+    for (let k = 0; k < 10; k++) points.push([x[i] + ((x[i + 1] - x[i]) * k) / 10, field[i] + ((field[i + 1] - field[i]) * k) / 10]);
+  }
+  const weights = points.map(([at], i) => ((points[i + 1]?.[0] ?? at) - (points[i - 1]?.[0] ?? at)) / 2);
+  const sum = (f: (x: number, e: number) => number): number =>
+    points.reduce((total, [at, e], i) => (e >= half ? total + weights[i] * f(at, e) : total), 0);
+  const n = sum(() => 1);
+  const [sx, se, sxx, sxe] = [sum((at) => at), sum((_, e) => e), sum((at) => at * at), sum((at, e) => at * e)];
+  const slope = (n * sxe - sx * se) / (n * sxx - sx * sx);
+  return (sx - se / slope) / n;
+}
 
 /** The linear cathode layer of lowest voltage: E = E_c (1 − x/d_c), ∫α dx = ln(1 + 1/γ), V_c = ½ E_c d_c least.
  *  (von Engel & Steenbeck 1934; here by Simpson's rule and a golden section) */

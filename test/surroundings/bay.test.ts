@@ -162,6 +162,20 @@ describe('a bay', () => {
     }
   });
 
+  it('on an ascent keeps the overpressure that drives the jet through its vent', () => {
+    // Bernoulli: Δp = ½ ρ [V̇/(C_d A)]², V̇ = V |d ln p/dt| = V 5 m/s ρ g/p; 60 ppm of the pressure, of which friction adds a few per cent
+    const hole = { diameter: 2e-3, length: 0, count: 1, dischargeCoefficient: 0.7 };
+    const ascent = { from: 0, to: 5000, rate: 5 };
+    const bay = followBay({ ...sealed, start: airAt(0).pressure, outside: { kind: 'ascent', ascent }, vents: [hole] }, T, 1000);
+    for (const t of [100, 400, 900]) {
+      const air = airAt(5 * t);
+      const leaving = (0.012 * 5 * air.density * 9.80665) / air.pressure;
+      const rho = air.pressure / thermalSpeed(gas, 295) ** 2;
+      const drop = 0.5 * rho * (leaving / (0.7 * Math.PI * 1e-6)) ** 2;
+      expect(Math.abs((bay.pressureAt(t) - air.pressure) / drop - 1)).toBeLessThan(0.03);
+    }
+  });
+
   it('fills from outside as it empties: never beyond what drives it, and the slower the smaller the vent', () => {
     fc.assert(
       fc.property(
