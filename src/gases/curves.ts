@@ -116,7 +116,7 @@ class ExponentialSum implements Curve {
     if (!(x > 0)) return 0;
     let y = 0;
     for (let k = 0; k < this.#a.length; k++) y += this.#a[k] * Math.exp(-this.#b[k] / x);
-    return y > 0 ? y : 0;
+    return Math.max(0, y);
   }
   slopeAt(x: number): number {
     if (!(x > 0)) return 0;
