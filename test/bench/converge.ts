@@ -12,5 +12,6 @@ process.stdout.write(
     voltage: outcome.final.gap_voltage_V,
     current: outcome.final.current_A,
     gap_J: outcome.energy.gap_J,
+    time: outcome.final.time_s,
   }),
 );

@@ -37,6 +37,7 @@ process.stdout.write(
       voltage: outcome.final.gap_voltage_V,
       current: outcome.final.current_A,
       gap_J: outcome.energy.gap_J,
+      time: outcome.final.time_s,
       growth: outcome.onset.growth_rate_per_s,
       period: outcome.oscillation?.period_s ?? null,
     },
