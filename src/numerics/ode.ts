@@ -83,7 +83,6 @@ export function solveScalar(
   let slope = rate(t, y);
   let h = (to - from) / 100;
   if (Math.abs(slope) > 0) h = Math.min(h, Math.sqrt(tolerance) / Math.abs(slope));
-  let retry = false;
   let tries = 0;
 
   for (let next = 0; next < stops.length; ) {
@@ -100,9 +99,7 @@ export function solveScalar(
     if (solveStages(rate, t, y, step, derivative, tolerance, stages)) {
       const combined = (ESTIMATE[0] * stages[0] + ESTIMATE[1] * stages[1] + ESTIMATE[2] * stages[2]) / step;
       const damping = EIGENVALUE / step - derivative;
-      let error = (slope + combined) / damping;
-      // once more through the damping, so that a stiff transient is not mistaken for an error (Hairer and Wanner, eq. IV.8.20)
-      if (Math.abs(error) > tolerance && (retry || pieces.length === 0)) error = (rate(t, y + error) + combined) / damping;
+      const error = (slope + combined) / damping;
       const polynomial = [y, ...differences(stages)];
       const between = Math.abs(defect(rate, t, step, polynomial) / damping);
       const ratio = Math.max(Math.abs(error), between) / tolerance;
@@ -119,12 +116,10 @@ export function solveScalar(
         }
         // a step cut short by a corner says little about the next one
         h = Math.max(step * factor, lands ? Math.min(h, to - t) : 0);
-        retry = false;
         continue;
       }
     }
     rejected++;
-    retry = true;
     h = step * Math.min(0.9, factor);
   }
   return new ScalarSolution(times, pieces, rejected);

@@ -9,11 +9,15 @@ const table: HistorySettings = { duration: 60, pressure: { kind: 'table', rows }
 describe('a history', () => {
   it('from a table is linear between rows and held at its ends, and says so', () => {
     const history = historyOf(table);
-    expect([0, 10, 15, 30, 40, 60].map((t) => history.pressureAt(t))).toEqual([100, 100, 75, 30, 10, 10]);
+    expect([0, 10, 15, 22, 30, 40, 60].map((t) => history.pressureAt(t))).toEqual([100, 100, 75, 46, 30, 10, 10]);
     expect(history.temperatureAt(17)).toBe(295);
     expect(history.corners).toEqual([10, 20, 40]);
     expect(history.notes).toEqual(['The rows of the pressure span 10 to 40 s; outside them their end values are held.']);
-    expect(historyOf({ ...table, pressure: { kind: 'table', rows: { ...rows, times: [0, 20, 60] } } }).notes).toEqual([]);
+    const notes = (times: number[]): readonly string[] =>
+      historyOf({ ...table, pressure: { kind: 'table', rows: { ...rows, times } } }).notes;
+    expect(notes([0, 20, 60])).toEqual([]);
+    expect(notes([5, 20, 60])).toHaveLength(1);
+    expect(notes([0, 20, 59])).toHaveLength(1);
   });
 
   it('is the same from a data set', () => {
@@ -27,14 +31,14 @@ describe('a history', () => {
     const history = historyOf({
       duration: 10800,
       pressure: { kind: 'ascent', ascent: { from: 0, to: 35000, rate: 5 } },
-      temperature: { times: [0, 10800], values: [300, 260] },
+      temperature: { times: [0, 5000, 10800], values: [300, 290, 260] },
     });
     expect(history.pressureAt(2000)).toBe(airAt(10000).pressure);
     expect(history.pressureAt(9000)).toBe(airAt(35000).pressure);
-    expect(history.temperatureAt(5400)).toBe(280);
+    expect(history.temperatureAt(2500)).toBe(295);
     expect(history.notes.some((note) => note.startsWith('The ascent ends at 7000 s'))).toBe(true);
-    // 11, 20 and 32 km of geopotential height, and the arrival
-    expect(history.corners.map(Math.round)).toEqual([2204, 4013, 6432, 7000]);
+    // 11, 20 and 32 km of geopotential height, the row of the temperature, the arrival
+    expect(history.corners.map(Math.round)).toEqual([2204, 4013, 5000, 6432, 7000]);
   });
 
   it('that ends before its ascent says where', () => {
