@@ -8,7 +8,7 @@ const layers = [
   ['march', 'observables', 'theory'],
   ['laws', 'supply'],
   ['gap'],
-  ['gases', 'surfaces'],
+  ['gases', 'surfaces', 'surroundings'],
   ['numerics', 'units'],
 ];
 /** types of a case: declared beside `simulate`, used below it as a type only */
