@@ -2,7 +2,9 @@
 const layers = [
   ['main'],
   ['commands'],
-  ['results', 'casefile'],
+  ['scan'],
+  ['report', 'results', 'casefile'],
+  ['search'],
   ['simulate'],
   ['onset'],
   ['march', 'observables', 'theory'],
@@ -25,7 +27,7 @@ const forbidden = [
     name: 'no-files-below',
     comment: 'nothing below casefile and results touches files, HDF5 or processes',
     severity: 'error',
-    from: { path: '^src/', pathNot: '^src/(commands|results|main)' },
+    from: { path: '^src/', pathNot: '^src/(commands|scan|report|results|main)' },
     to: { path: '^(node:)?(fs|child_process|worker_threads|path)$|^h5wasm|^jsfive' },
   },
   {
