@@ -1,3 +1,4 @@
+import { expOfNegative } from '../numerics/exponential.ts';
 import { Monotone } from '../numerics/monotone.ts';
 import type { Form } from './forms.ts';
 
@@ -81,22 +82,22 @@ class Exponential implements Curve {
     this.#B = Math.max(B, Number.MIN_VALUE); // B = 0 at x = 0 would be 0/0
   }
   valueAt(x: number): number {
-    return x > 0 ? this.#A * Math.exp(-this.#B / x) : 0;
+    return x > 0 ? this.#A * expOfNegative(-this.#B / x) : 0;
   }
   slopeAt(x: number): number {
-    return x > 0 ? slopeOrZero((this.#A * Math.exp(-this.#B / x) * this.#B) / (x * x)) : 0;
+    return x > 0 ? slopeOrZero((this.#A * expOfNegative(-this.#B / x) * this.#B) / (x * x)) : 0;
   }
   fill(x: Float64Array, n: number, factor: number, value: Float64Array): void {
     const A = factor * this.#A;
     const B = -this.#B;
-    for (let i = 0; i < n; i++) value[i] = A * Math.exp(B / x[i]); // x = 0: exp(−∞) = 0
+    for (let i = 0; i < n; i++) value[i] = A * expOfNegative(B / x[i]); // x = 0: exp(−∞) = 0
   }
   fillWithSlope(x: Float64Array, n: number, factor: number, value: Float64Array, slope: Float64Array): void {
     const A = this.#A;
     const B = this.#B;
     for (let i = 0; i < n; i++) {
       const r = 1 / x[i];
-      const y = A * Math.exp(-B * r);
+      const y = A * expOfNegative(-B * r);
       value[i] = factor * y;
       slope[i] = y > 0 ? y * B * r * r : 0;
     }
@@ -115,7 +116,7 @@ class ExponentialSum implements Curve {
   valueAt(x: number): number {
     if (!(x > 0)) return 0;
     let y = 0;
-    for (let k = 0; k < this.#a.length; k++) y += this.#a[k] * Math.exp(-this.#b[k] / x);
+    for (let k = 0; k < this.#a.length; k++) y += this.#a[k] * expOfNegative(-this.#b[k] / x);
     return Math.max(0, y);
   }
   slopeAt(x: number): number {
@@ -123,7 +124,7 @@ class ExponentialSum implements Curve {
     let y = 0;
     let d = 0;
     for (let k = 0; k < this.#a.length; k++) {
-      const t = this.#a[k] * Math.exp(-this.#b[k] / x);
+      const t = this.#a[k] * expOfNegative(-this.#b[k] / x);
       y += t;
       d += slopeOrZero((t * this.#b[k]) / (x * x));
     }
@@ -134,7 +135,7 @@ class ExponentialSum implements Curve {
     for (let k = 0; k < this.#a.length; k++) {
       const a = this.#a[k];
       const b = this.#b[k];
-      for (let i = 0; i < n; i++) value[i] += a * Math.exp(-b / x[i]);
+      for (let i = 0; i < n; i++) value[i] += a * expOfNegative(-b / x[i]);
     }
     for (let i = 0; i < n; i++) value[i] = value[i] > 0 ? factor * value[i] : 0;
   }
@@ -146,7 +147,7 @@ class ExponentialSum implements Curve {
       const b = this.#b[k];
       for (let i = 0; i < n; i++) {
         const r = 1 / x[i];
-        const t = a * Math.exp(-b * r);
+        const t = a * expOfNegative(-b * r);
         value[i] += t;
         if (t !== 0) slope[i] += t * b * r * r;
       }
