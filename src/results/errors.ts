@@ -12,6 +12,8 @@ export type ResultFileCode =
   | 'foreign'
   /** a gapwake result of another kind than the one asked for */
   | 'other-kind'
+  /** unfinished results of another case, version or part */
+  | 'other-study'
   /** written by a newer gapwake */
   | 'newer'
   /** cut short or its contents are inconsistent */
