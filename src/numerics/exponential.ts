@@ -17,7 +17,7 @@ export function expOfNegative(u: number): number {
 const PER_PIECE = 64 / Math.LN2;
 /** ln 2/64 in two parts, the first so short that its product with k is exact */
 const PIECE_HIGH = Math.fround(Math.LN2 / 64);
-const PIECE_LOW = Math.LN2 / 64 - PIECE_HIGH + 2.319046813846299558e-17 / 64;
+const PIECE_LOW = Math.LN2 / 64 - PIECE_HIGH + 2.3190468138463e-17 / 64;
 const LEAST_POWER = 1023;
 const FRACTIONS: Float64Array = Float64Array.from({ length: 64 }, (_, j) => 2 ** (j / 64));
 const POWERS: Float64Array = Float64Array.from({ length: LEAST_POWER + 1 }, (_, m) => 2 ** (m - LEAST_POWER));
