@@ -67,22 +67,32 @@ function facePositions(d: number, cells: number, grading: Grading): Float64Array
     if (grading.right) c += crowd * l * (Math.exp((x - d) / l) - tail);
     return c;
   };
+  const density = (x: number): number => {
+    let c = 1;
+    if (grading.left) c += crowd * Math.exp(-x / l);
+    if (grading.right) c += crowd * Math.exp((x - d) / l);
+    return c;
+  };
   const total = count(d);
   const faces = new Float64Array(cells + 1);
   const both = grading.left && grading.right;
   const last = both ? Math.floor(cells / 2) : cells;
-  for (let f = 1; f <= last; f++) {
-    const target = (f / cells) * total;
-    let low = faces[f - 1];
-    let high = d;
-    for (let k = 0; k < 200 && high - low > 1e-17 * d; k++) {
-      const mid = (low + high) / 2;
-      if (mid <= low || mid >= high) break;
-      if (count(mid) < target) low = mid;
-      else high = mid;
-    }
-    faces[f] = (low + high) / 2;
-  }
+  for (let f = 1; f <= last; f++) faces[f] = place(count, density, (f / cells) * total, faces[f - 1], d);
   if (both) for (let f = last + 1; f <= cells; f++) faces[f] = d - faces[cells - f];
   return faces;
+}
+
+/** Where a rising function reaches a value between low and high: Newton's method, kept inside by bisection. */
+function place(rising: (x: number) => number, slope: (x: number) => number, value: number, low: number, high: number): number {
+  let x = low;
+  for (let k = 0; k < 100; k++) {
+    const excess = rising(x) - value;
+    if (excess < 0) low = x;
+    else high = x;
+    let next = x - excess / slope(x);
+    if (!(next > low && next < high)) next = (low + high) / 2;
+    if (Math.abs(next - x) <= 2 * Number.EPSILON * x) return next;
+    x = next;
+  }
+  return x;
 }

@@ -75,6 +75,9 @@ const LEAST_SHRINK = 0.15;
 /** a switch counts as due when its function exceeds this; it is located at zero, so it is not due again at once */
 const DUE = 1e-7;
 
+/** How closely observers' events are located, as a share of the step: far closer than dense output is to the truth */
+const EVENT_PLACE = 1e-6;
+
 /** The loop: attempt a step, judge it, end it at the first switch or corner inside it, hand it to the observers.
  *
  *  It knows no event by name. Steps end exactly at corners of the supply, at changes of its feed, when the trip acts and at
@@ -367,7 +370,7 @@ export class March {
           stepper.stateAt(theta, scratch);
           return g(from + theta * span, scratch);
         };
-        return from + span * locate(at, before, after);
+        return from + span * locate(at, before, after, EVENT_PLACE);
       },
     };
     let ends = false;

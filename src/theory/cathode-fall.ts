@@ -31,14 +31,39 @@ export function cathodeLayer(ionisation: (x: number) => number, ionYield: number
  *  @example normalCathodeLayer((x) => (x > 0 ? 1e-20 * Math.exp(-5e-19 / x) : 0), 0.01)?.voltage // 696.2 */
 export function normalCathodeLayer(ionisation: (x: number) => number, ionYield: number): CathodeLayer | null {
   const voltageAt = (x: number): number => cathodeLayer(ionisation, ionYield, x)?.voltage ?? Number.POSITIVE_INFINITY;
-  // every tenth scanned field (26 % apart) is enough: the minimum is broad
-  const fields = SCANNED_FIELDS.filter((_, i) => i % 10 === 0);
-  const voltages = fields.map(voltageAt);
-  let lowest = 0;
-  for (let i = 1; i < fields.length; i++) if (voltages[i] < voltages[lowest]) lowest = i;
-  if (lowest === 0 || lowest === fields.length - 1) return null;
-  const best = minimumBetween((u) => voltageAt(Math.exp(u)), Math.log(fields[lowest - 1]), Math.log(fields[lowest + 1]));
+  const lowest = lowestScanned(ionisation);
+  if (lowest === null) return null;
+  const best = minimumBetween(
+    (u) => voltageAt(Math.exp(u)),
+    Math.log(SCANNED_FIELDS[lowest - 1]),
+    Math.log(SCANNED_FIELDS[lowest + 1]),
+    LAYER_PLACE,
+  );
   return cathodeLayer(ionisation, ionYield, Math.exp(best));
+}
+
+/** How closely the field of the lowest layer is sought, relative to its logarithm: the voltage follows as the square. */
+const LAYER_PLACE = 1e-7;
+
+/** Index of the scanned field whose layer has the lowest voltage, V ∝ x²/∫₀ˣ α dx; null when it is the first or the last. The
+ *  integral is the running trapezoid over the scan (2.3 % steps): close enough to say which. */
+function lowestScanned(ionisation: (x: number) => number): number | null {
+  const fields = SCANNED_FIELDS;
+  let lowest = 0;
+  let least = Number.POSITIVE_INFINITY;
+  let before = ionisation(fields[0]);
+  let integral = 0.5 * before * fields[0];
+  for (let i = 1; i < fields.length; i++) {
+    const here = ionisation(fields[i]);
+    integral += 0.5 * (before + here) * (fields[i] - fields[i - 1]);
+    before = here;
+    const voltage = (fields[i] * fields[i]) / integral;
+    if (voltage < least) {
+      least = voltage;
+      lowest = i;
+    }
+  }
+  return lowest < 2 || lowest >= fields.length - 1 ? null : lowest;
 }
 
 /** The abnormal layer of a given voltage, thinner than the normal one and with a stronger field at the cathode; null below the

@@ -60,16 +60,16 @@ export function rootBetween(f: (x: number) => number, a: number, b: number): num
   return b;
 }
 
-/** Place of the minimum of f between a and b, where f has one minimum; accuracy about 1e-8 of the interval's ends, as
- *  doubles allow. Golden section. Source: Kiefer 1953 (common practice).
+/** Place of the minimum of f between a and b, where f has one minimum, to `near` relative to the ends (by default about as
+ *  closely as doubles allow). Golden section. Source: Kiefer 1953 (common practice).
  *  @example minimumBetween((x) => (x - 0.3) ** 2, 0, 1) // 0.3 */
-export function minimumBetween(f: (x: number) => number, a: number, b: number): number {
+export function minimumBetween(f: (x: number) => number, a: number, b: number, near = 1e-9): number {
   const shrink = (Math.sqrt(5) - 1) / 2;
   let left = b - shrink * (b - a);
   let right = a + shrink * (b - a);
   let fLeft = f(left);
   let fRight = f(right);
-  while (Math.abs(b - a) > 1e-9 * (Math.abs(a) + Math.abs(b)) + Number.MIN_VALUE) {
+  while (Math.abs(b - a) > near * (Math.abs(a) + Math.abs(b)) + Number.MIN_VALUE) {
     if (fLeft <= fRight) {
       b = right;
       right = left;
