@@ -1,0 +1,90 @@
+import type { Case } from '../case.ts';
+import type { Outcome } from '../onset/outcome.ts';
+import { SimulationFailure } from '../simulate.ts';
+import type { Answer, Change, Simulate } from './found.ts';
+
+/** One value of the searched quantity and what its run said. */
+export interface Sample {
+  readonly value: number;
+  readonly settings: Case;
+  /** of a failed run: up to its last good state */
+  readonly outcome: Outcome;
+  readonly answer: Answer;
+  /** why the run could not be completed; null where it could */
+  readonly failure: SimulationFailure | null;
+}
+
+/** What a search makes of its case and of an outcome. */
+export interface Question {
+  /** the case with the searched quantity at this value */
+  settings(value: number): Case;
+  /** @param failed whether the run ended as a failure; `outcome` is then what was found up to its last good state */
+  answer(outcome: Outcome, settings: Case, failed: boolean): Answer;
+}
+
+/** The runs of one search: each value is simulated once, failures are kept as undecided. */
+export class Runs {
+  readonly #question: Question;
+  readonly #simulate: Simulate;
+  /** by value, rising */
+  readonly #samples: Sample[] = [];
+  #made = 0;
+
+  constructor(question: Question, simulate: Simulate) {
+    this.#question = question;
+    this.#simulate = simulate;
+  }
+
+  /** simulations made */
+  get made(): number {
+    return this.#made;
+  }
+
+  /** Every sample so far, rising in value. */
+  get all(): readonly Sample[] {
+    return this.#samples;
+  }
+
+  /** The sample at a value, simulated unless it has been. */
+  at(value: number): Sample {
+    const known = this.#samples.find((s) => s.value === value);
+    if (known !== undefined) return known;
+    const settings = this.#question.settings(value);
+    const { outcome, failure } = this.once(settings);
+    const sample = { value, settings, outcome, failure, answer: this.#question.answer(outcome, settings, failure !== null) };
+    const after = this.#samples.findIndex((s) => s.value > value);
+    this.#samples.splice(after < 0 ? this.#samples.length : after, 0, sample);
+    return sample;
+  }
+
+  /** A run beside the samples, counted. */
+  once(settings: Case): { readonly outcome: Outcome; readonly failure: SimulationFailure | null } {
+    this.#made++;
+    try {
+      return { outcome: this.#simulate(settings), failure: null };
+    } catch (thrown) {
+      if (!(thrown instanceof SimulationFailure)) throw thrown;
+      return { outcome: thrown.outcome, failure: thrown };
+    }
+  }
+
+  /** Samples strictly between two values. */
+  between(lower: number, upper: number): readonly Sample[] {
+    return this.#samples.filter((s) => s.value > lower && s.value < upper);
+  }
+
+  /** @throws SimulationFailure the last one, where every run failed: there is then nothing to report */
+  refuseIfAllFailed(): void {
+    const last = this.#samples.at(-1);
+    if (last?.failure && this.#samples.every((s) => s.failure !== null)) throw last.failure;
+  }
+}
+
+/** Neighbours whose answers differ, rising. */
+export function changesOf(samples: readonly Sample[]): Change[] {
+  return samples.slice(1).flatMap((above, i) => {
+    const below = samples[i];
+    if (below.answer === above.answer) return [];
+    return [{ lower: below.value, upper: above.value, below: below.answer, above: above.answer }];
+  });
+}
