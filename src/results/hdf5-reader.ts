@@ -1,5 +1,5 @@
 import { closeSync, openSync, readFileSync, readSync, statSync } from 'node:fs';
-import { Dataset, File } from 'jsfive';
+import { Dataset, File, Group } from 'jsfive';
 import { ResultFileError, resultFileError } from './errors.ts';
 
 /** The one place that touches jsfive: it throws strings, warns on the console, returns plain arrays with holes and allocates whatever a
@@ -12,10 +12,18 @@ export interface Hdf5Reader {
   float64(name: string, shape: readonly (number | null)[]): Float64Array;
   /** Values of a 32-bit dataset of the given shape. */
   float32(name: string, shape: readonly (number | null)[]): Float32Array;
+  int32(name: string, shape: readonly (number | null)[]): Int32Array;
+  int8(name: string, shape: readonly (number | null)[]): Int8Array;
+  /** Bytes of any number. */
+  bytes(name: string): Uint8Array;
+  /** Names in a group, sorted; none when there is no such group. */
+  members(group: string): string[];
   /** A text, without padding. */
   text(name: string): string;
 }
 
+/** number formats and their bytes */
+const widths = { '<f8': 8, '<f4': 4, '<i4': 4, '<i1': 1, '<u1': 1 } as const;
 /** Largest file read: the reader holds all of it in memory. */
 const largestFile = 2 ** 30;
 /** Deflate packs at most 1032 bytes into one (zlib's technical notes): a file that declares more is damaged. */
@@ -38,14 +46,14 @@ export function openHdf5(path: string): Hdf5Reader {
   const damaged = (what: string): ResultFileError => new ResultFileError('damaged', path, `the file is damaged: ${what}`);
 
   const dataset = (name: string): Dataset => {
-    if (!names.has(name)) throw damaged(`${name} is missing`);
+    if (!names.has(name.split('/', 1)[0] ?? '')) throw damaged(`${name} is missing`);
     const found = file.get(name);
     if (!(found instanceof Dataset)) throw damaged(`${name} is not a variable`);
     return found;
   };
 
   /** Plain array of the values, once shape and type are as expected and can be in a file of this size. */
-  const values = (name: string, shape: readonly (number | null)[], dtype: '<f8' | '<f4'): unknown[] => {
+  const values = (name: string, shape: readonly (number | null)[], dtype: keyof typeof widths): number[] => {
     const found = dataset(name);
     const declared = found.shape;
     if (found.dtype !== dtype) throw damaged(`${name} has another number format than expected`);
@@ -53,7 +61,7 @@ export function openHdf5(path: string): Hdf5Reader {
       throw damaged(`${name} has the shape (${declared.join(', ')}), expected (${shape.map((length) => length ?? 'any').join(', ')})`);
     }
     const count = product(declared);
-    const bytes = count * (dtype === '<f8' ? 8 : 4);
+    const bytes = count * widths[dtype];
     const chunk = found._dataobjects.chunks;
     if (bytes > size * (chunk ? largestCompression : 1)) throw damaged(`${name} declares more values than the file can hold`);
     if (chunk && !(product(chunk) <= largestChunk)) throw damaged(`${name} declares chunks of ${product(chunk)} values`);
@@ -61,7 +69,7 @@ export function openHdf5(path: string): Hdf5Reader {
     if (read.length !== count) throw damaged(`${name} holds ${read.length} values, expected ${count}`);
     // An indexed loop: array methods would skip the holes this looks for.
     for (let i = 0; i < count; i++) if (typeof read[i] !== 'number') throw damaged(`${name} has values that were never written`);
-    return read;
+    return read as number[];
   };
 
   return {
@@ -71,8 +79,18 @@ export function openHdf5(path: string): Hdf5Reader {
         const value = file.attrs[name];
         return typeof value === 'string' ? withoutPadding(value) : null;
       }),
-    float64: (name, shape) => decoding(path, () => Float64Array.from(values(name, shape, '<f8') as number[])),
-    float32: (name, shape) => decoding(path, () => Float32Array.from(values(name, shape, '<f4') as number[])),
+    float64: (name, shape) => decoding(path, () => Float64Array.from(values(name, shape, '<f8'))),
+    float32: (name, shape) => decoding(path, () => Float32Array.from(values(name, shape, '<f4'))),
+    int32: (name, shape) => decoding(path, () => Int32Array.from(values(name, shape, '<i4'))),
+    int8: (name, shape) => decoding(path, () => Int8Array.from(values(name, shape, '<i1'))),
+    bytes: (name) => decoding(path, () => Uint8Array.from(values(name, [null], '<u1'))),
+    members: (group) =>
+      decoding(path, () => {
+        if (!names.has(group)) return [];
+        const found = file.get(group);
+        if (!(found instanceof Group)) throw damaged(`${group} is not a group`);
+        return found.keys.sort();
+      }),
     text: (name) =>
       decoding(path, () => {
         const found = dataset(name);

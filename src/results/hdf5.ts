@@ -12,14 +12,22 @@ import type { Dataset, File } from 'h5wasm/node';
 export interface Hdf5Writer {
   /** Text attribute of the file or, with `dataset`, of one of its datasets; at most 32 kB. */
   attribute(name: string, text: string, dataset?: string): void;
+  /** Attribute of a dataset that lists small whole numbers, as `flag_values` does. */
+  flagValues(name: string, values: Int8Array, dataset: string): void;
   /** One-dimensional dimension scale: fixed with `data`, growing by {@link Hdf5Writer.append} without. */
-  scale(name: string, options: { readonly data: Float64Array } | { readonly chunk: number }): void;
+  scale(name: string, options: { readonly data: Float64Array | Int32Array } | { readonly chunk: number }): void;
+  /** Fixed, compressed dataset over `scales`, filled by {@link Hdf5Writer.put}. */
+  grid(name: string, options: GridOptions): void;
+  /** Fills a rectangle of a grid: a range [from, to) for each of its dimensions. */
+  put(name: string, ranges: readonly (readonly [number, number])[], values: GridValues): void;
   /** Growing dataset over (scales[0]) or (scales[0], scales[1]); only the first grows. `chunk` rows are stored together. */
   variable(name: string, options: VariableOptions): void;
   /** Adds whole rows at the end of a growing scale or variable. */
   append(name: string, rows: Float64Array | Float32Array): void;
   /** Text of any length. Ends at a NUL, which the format cannot hold. */
   text(name: string, text: string): void;
+  /** Bytes, compressed as one chunk: `group/name`, at most 2^22 of them. */
+  bytes(name: string, bytes: Uint8Array): void;
   /** Hands everything to the operating system. */
   flush(): void;
   /** Releases the file, whatever happened before; never throws twice. */
@@ -33,6 +41,15 @@ interface VariableOptions {
   readonly chunk: number;
   /** float32 is also compressed */
   readonly precision: 'float64' | 'float32';
+}
+
+export type GridValues = Float64Array | Int32Array | Int8Array;
+
+interface GridOptions {
+  readonly scales: readonly string[];
+  readonly shape: readonly number[];
+  readonly chunk: readonly number[];
+  readonly type: 'float64' | 'int32' | 'int8';
 }
 
 export class Hdf5Error extends Error {
@@ -52,6 +69,8 @@ export async function createHdf5(path: string): Promise<Hdf5Writer> {
 
 function writerOn(file: File): Hdf5Writer {
   const growing = new Map<string, { readonly dataset: Dataset; readonly rowLength: number; rows: number }>();
+  const grids = new Map<string, Dataset>();
+  const groups = new Set<string>();
   const describe = (target: File | Dataset, name: string, text: string): void => {
     const bytes = Buffer.byteLength(text);
     if (bytes > longestAttribute) throw new Hdf5Error(`the attribute ${name} is ${bytes} bytes long; at most ${longestAttribute} fit`);
@@ -68,6 +87,13 @@ function writerOn(file: File): Hdf5Writer {
         describe(target, name, text);
       }),
 
+    flagValues: (name, values, dataset) =>
+      guarded(() => {
+        const target = file.get(dataset) as Dataset | null;
+        if (target === null) throw new Hdf5Error(`there is no dataset ${dataset}`);
+        target.create_attribute(name, values);
+      }),
+
     scale: (name, options) =>
       guarded(() => {
         const dataset =
@@ -76,6 +102,36 @@ function writerOn(file: File): Hdf5Writer {
             : file.create_dataset({ name, data: new Float64Array(0), shape: [0], maxshape: [null], chunks: [options.chunk] });
         if (!('data' in options)) growing.set(name, { dataset, rowLength: 1, rows: 0 });
         dataset.make_scale(name);
+      }),
+
+    grid: (name, { scales, shape, chunk, type }) =>
+      guarded(() => {
+        // the library takes no shape without data: it begins empty and is brought to its size
+        const data = { float64: new Float64Array(0), int32: new Int32Array(0), int8: new Int8Array(0) }[type];
+        const compression = { compression: 'gzip' as const, compression_opts: 4 };
+        const dataset = file.create_dataset({
+          name,
+          data,
+          shape: [0, ...shape.slice(1)],
+          maxshape: [...shape],
+          chunks: [...chunk],
+          ...compression,
+        });
+        dataset.resize([...shape]);
+        for (const [axis, scale] of scales.entries()) dataset.attach_scale(axis, scale);
+        grids.set(name, dataset);
+      }),
+
+    put: (name, ranges, values) =>
+      guarded(() => {
+        const dataset = grids.get(name);
+        if (!dataset) throw new Hdf5Error(`${name} is no grid`);
+        const size = ranges.reduce((product, [from, to]) => product * (to - from), 1);
+        if (size !== values.length) throw new Hdf5Error(`${name}: ${values.length} values for a rectangle of ${size}`);
+        dataset.write_slice(
+          ranges.map(([from, to]): [number, number] => [from, to]),
+          values,
+        );
       }),
 
     variable: (name, { scales, rowLength, chunk, precision }) =>
@@ -109,6 +165,16 @@ function writerOn(file: File): Hdf5Writer {
 
     // Variable length: both common readers then give text, where a fixed length gives one of them bytes.
     text: (name, text) => guarded(() => void file.create_dataset({ name, data: text, dtype: 'S' })),
+
+    bytes: (name, bytes) =>
+      guarded(() => {
+        const group = name.slice(0, name.lastIndexOf('/'));
+        if (group !== '' && !groups.has(group)) {
+          file.create_group(group);
+          groups.add(group);
+        }
+        file.create_dataset({ name, data: bytes, chunks: [bytes.length], compression: 'gzip', compression_opts: 4 });
+      }),
 
     flush: () => guarded(() => file.flush()),
 

@@ -11,13 +11,16 @@ export interface Output {
   readonly path: string;
   /** where it is written */
   readonly partPath: string;
+  /** where work that takes long keeps what is finished; untouched by {@link Output.publish} and {@link Output.discard} */
+  readonly journalPath: string;
   /** Brings the closed part file safely to disk and to its name, and releases the lock. */
   publish(): void;
   /** Removes the part file and releases the lock; the target stays as it was. May be called at any time. */
   discard(): void;
 }
 
-/** Checks that a result may be written at `path`, and locks it: for `run.h5` the part file is `run.part.h5` and the lock `run.lock`.
+/** Checks that a result may be written at `path`, and locks it: for `run.h5` the part file is `run.part.h5`, the lock `run.lock` and the journal,
+ *  if there is one, `run.part`.
  *  An existing file is replaced only if it is a gapwake result; nothing is changed before {@link Output.publish}.
  *  @throws ResultFileError */
 export function claimOutput(path: string): Output {
@@ -49,6 +52,7 @@ export function claimOutput(path: string): Output {
   return {
     path: target,
     partPath,
+    journalPath: `${base}.part`,
     discard,
     publish: () => {
       try {

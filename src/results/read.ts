@@ -28,7 +28,7 @@ export interface RunResult extends RunTexts {
  *  @throws ResultFileError when it is missing, foreign, newer, cut short or damaged */
 export function readRunFile(path: string): RunResult {
   const file = openHdf5(path);
-  checkFormat(path, file);
+  checkFormat(path, file, runFormat);
   const time = file.float64(timeVariable.name, [null]);
   const x = file.float64(xVariable.name, [null]);
   const shape = [time.length, x.length];
@@ -83,16 +83,17 @@ function formatOf(path: string, file: Hdf5Reader): ResultFormat {
   return { kind, version: Number(version) };
 }
 
-function checkFormat(path: string, file: Hdf5Reader): void {
+/** Refuses every other kind and a later version. @throws ResultFileError */
+export function checkFormat(path: string, file: Hdf5Reader, format: string): void {
   const { kind, version } = formatOf(path, file);
-  const [expectedKind, expectedVersion] = runFormat.slice('gapwake.'.length).split('/') as [string, string];
+  const [expectedKind, expectedVersion] = format.slice('gapwake.'.length).split('/') as [string, string];
   if (kind !== expectedKind) throw new ResultFileError('other-kind', path, `holds a ${kind}, expected a ${expectedKind}`);
   if (version > Number(expectedVersion)) {
     const by = file.attribute('version');
     throw new ResultFileError(
       'newer',
       path,
-      `was written by a newer gapwake${by === null ? '' : ` (${by})`}: its format is gapwake.${kind}/${version}, this program reads ${runFormat}`,
+      `was written by a newer gapwake${by === null ? '' : ` (${by})`}: its format is gapwake.${kind}/${version}, this program reads ${format}`,
     );
   }
 }
