@@ -6,6 +6,7 @@ import type { Surface } from '../surfaces/surface.ts';
 import { BOLTZMANN } from '../units/constants.ts';
 import { coefficientsOf } from './coefficients.ts';
 import type { Defaults } from './defaults.ts';
+import { deepFreeze } from './freeze.ts';
 import { hashCase } from './hash.ts';
 import type { CaseInput, ElectrodeInput } from './schema.ts';
 
@@ -122,12 +123,4 @@ function programmeOf(voltage: CaseInput['supply']['voltage'], defaults: Defaults
   const [times, voltages] = voltage.table?.columns ?? [];
   if (!times || !voltages) throw new Error('supply.voltage passed validation without a step, ramp or table');
   return { kind: 'table', times: times.values, voltages: voltages.values };
-}
-
-function deepFreeze<T>(value: T): T {
-  if (typeof value === 'object' && value !== null && !Object.isFrozen(value)) {
-    Object.freeze(value);
-    for (const inner of Object.values(value)) deepFreeze(inner);
-  }
-  return value;
 }

@@ -44,10 +44,30 @@ export type TableReader = (
   relativePath: string,
 ) => { readonly ok: true; readonly text: string } | { readonly ok: false; readonly reason: string };
 
+/** What a quantity or plain number accepts: a scan needs to know it of the entries it varies. */
+export interface Leaf {
+  readonly dimensions: readonly DimensionName[];
+  /** whole numbers only */
+  readonly whole: boolean;
+}
+
+const LEAVES = new WeakMap<z.core.$ZodType, Leaf>();
+
+/** The leaf that a schema stands for, null where it is no quantity and no plain number. */
+export function leafOf(schema: z.core.$ZodType): Leaf | null {
+  return LEAVES.get(schema) ?? null;
+}
+
+function leaf<Schema extends z.ZodType>(schema: Schema, dimensions: readonly DimensionName[], whole = false): Schema {
+  LEAVES.set(schema, { dimensions, whole });
+  return schema;
+}
+
 export const POSITIVE: Bounds = { above: 0, text: 'above 0' };
 export const NOT_NEGATIVE: Bounds = { min: 0, text: 'not below 0' };
 
-function isWithin(value: number, bounds: Bounds | undefined): boolean {
+/** Whether a value in SI lies within bounds. */
+export function isWithin(value: number, bounds: Bounds | undefined): boolean {
   if (!bounds) return true;
   const { above = Number.NEGATIVE_INFINITY, min = Number.NEGATIVE_INFINITY, max = Number.POSITIVE_INFINITY } = bounds;
   return value > above && value >= min && value <= max;
@@ -74,7 +94,7 @@ function wanted(dimensions: readonly DimensionName[], bounds: Bounds | undefined
 /** A quantity of one kind; its value in SI. */
 export function quantity(dimension: DimensionName, bounds?: Bounds): z.ZodType<number, string> {
   const expected = wanted([dimension], bounds);
-  return z
+  const schema = z
     .string({ error: () => expected })
     .meta({ description: expected, examples: [DIMENSIONS[dimension].example] })
     .transform((text, ctx): number => {
@@ -83,6 +103,7 @@ export function quantity(dimension: DimensionName, bounds?: Bounds): z.ZodType<n
       if (!isWithin(read.value, bounds)) return refuse(ctx, expected, { code: 'out-of-range' });
       return read.value;
     });
+  return leaf(schema, [dimension]);
 }
 
 /** A quantity of one of several kinds. `hint` replaces the message where the kind found is `hint.on`. */
@@ -92,7 +113,7 @@ export function quantityOf(
   hint?: { readonly on: DimensionName; readonly expected: string },
 ): z.ZodType<Dimensioned, string> {
   const expected = wanted(dimensions, bounds);
-  return z
+  const schema = z
     .string({ error: () => expected })
     .meta({ description: expected, examples: dimensions.map((name) => DIMENSIONS[name].example) })
     .transform((text, ctx): Dimensioned => {
@@ -106,12 +127,13 @@ export function quantityOf(
       if (!isWithin(read.value, bounds)) return refuse(ctx, expected, { code: 'out-of-range' });
       return { value: read.value, dimension: read.dimension };
     });
+  return leaf(schema, dimensions);
 }
 
 /** A pure number, `0.02` or `2 %`. */
 export function pureNumber(text: string, bounds: Bounds, example: number, whole = false): z.ZodType<number, number | string> {
   const expected = `${text} ${bounds.text}, e.g. ${example}`;
-  return z
+  const schema = z
     .union([z.number().meta({ examples: [example] }), z.string()], { error: () => expected })
     .meta({ description: expected })
     .transform((given, ctx): number => {
@@ -120,7 +142,15 @@ export function pureNumber(text: string, bounds: Bounds, example: number, whole 
       if (!isWithin(read.value, bounds) || (whole && !Number.isInteger(read.value))) return refuse(ctx, expected, { code: 'out-of-range' });
       return read.value;
     });
+  return leaf(schema, ['number'], whole);
 }
+
+/** A quantity whose kind another entry decides: text or a number, checked there. */
+export function undecidedQuantity(): z.ZodType<RawQuantity> {
+  return z.union([z.string(), z.number()], { error: () => 'a quantity, e.g. 1.2 Torr' });
+}
+
+export type RawQuantity = string | number;
 
 /** One of a few names. */
 export function choice<const Names extends readonly [string, ...string[]]>(
@@ -141,8 +171,9 @@ type Entries = Readonly<Record<string, unknown>>;
 
 /** A check across the keys of a mapping. It runs even if single keys are wrong, so that every mistake is reported at once.
  *
- *  @param check  sees the entries without the wrong ones (`sound`), and which are there at all (`given`) */
-export function across(check: (sound: Entries, report: Report, given: Entries) => void): z.core.$ZodCheck<unknown> {
+ *  @param check  sees the entries without the wrong ones (`sound`), and which are there at all (`given`); `adopt` takes over what another
+ *                schema finds wrong with an entry */
+export function across(check: (sound: Entries, report: Report, given: Entries, adopt: Adopt) => void): z.core.$ZodCheck<unknown> {
   return z.core._check<unknown>(
     (payload) => {
       const given = payload.value as Entries;
@@ -160,6 +191,10 @@ export function across(check: (sound: Entries, report: Report, given: Entries) =
           } as never);
         },
         given,
+        (path, issues) => {
+          for (const issue of issues)
+            payload.issues.push({ ...issue, input: payload.value, path: [...path, ...issue.path], continue: true } as never);
+        },
       );
     },
     { when: (payload) => typeof payload.value === 'object' && payload.value !== null && !Array.isArray(payload.value) },
@@ -174,6 +209,8 @@ function without(value: Entries, path: readonly PropertyKey[]): Entries {
   if (path.length === 1 || typeof inner !== 'object' || inner === null || Array.isArray(inner)) return rest;
   return { ...rest, [key]: without(inner as Entries, path.slice(1)) };
 }
+
+export type Adopt = (path: readonly PropertyKey[], issues: readonly z.core.$ZodIssue[]) => void;
 
 export type Report = (path: readonly PropertyKey[], expected: string, detail: IssueDetail) => void;
 
@@ -205,10 +242,17 @@ export function table(reader: TableReader, fields: readonly ColumnField[]): z.Zo
     file: z.string({ error: () => 'the name of a CSV file, relative to the case file' }),
     ...Object.fromEntries(fields.map((f) => [f.key, column])),
   };
+  // a case is validated again at every point of a scan: its tables are read once
+  const known = new Map<string, LoadedTable>();
   return section(shape, 'columns of a CSV file').transform((given, ctx): LoadedTable => {
     const spec = given as { file: string } & Record<string, string | { column: string; unit: string }>;
+    const identity = JSON.stringify(spec);
+    const before = known.get(identity);
+    if (before) return before;
+    let sound = true;
     const failure = { file: spec.file, text: '', columns: [] };
     const report = (path: string[], message: string, params: IssueDetail): void => {
+      sound = false;
       ctx.addIssue({ code: 'custom', message, path, params: { ...params } });
     };
     const read = reader(spec.file);
@@ -240,6 +284,8 @@ export function table(reader: TableReader, fields: readonly ColumnField[]): z.Zo
       if (bad >= 0)
         report([key], `values ${bounds?.text}`, { code: 'out-of-range', found: `${csv.columns[k].values[bad]} in SI, row ${bad + 1}` });
     }
-    return { file: spec.file, text: read.text, columns: csv.columns };
+    const loaded: LoadedTable = { file: spec.file, text: read.text, columns: csv.columns };
+    if (sound) known.set(identity, loaded);
+    return loaded;
   });
 }

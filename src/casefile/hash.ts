@@ -1,5 +1,6 @@
 import { createHash } from 'node:crypto';
 import type { Case } from '../case.ts';
+import type { ScanSettings, WindowSettings } from '../study.ts';
 
 /** Words about a number, not the number: they may be corrected without changing what a case computes. */
 const WORDS = new Set(['title', 'sha256', 'source', 'status', 'note']);
@@ -7,14 +8,24 @@ const WORDS = new Set(['title', 'sha256', 'source', 'status', 'note']);
 const LONG_LIST = 64;
 
 /** SHA-256 over what a case computes: every value in SI, defaults and coefficients included, tables by hash, keys in canonical order.
- *  Title, spelling, order and comments of the file do not enter. */
+ *  Title, spelling, order and comments of the file do not enter, and neither do scan and history: a run's identity is its gap. */
 export function hashCase(resolved: Omit<Case, 'sha256'>): string {
   return sha256(canonical(resolved));
 }
 
+/** SHA-256 of a scan: what its case computes, its axes with all their values, how they are walked and what is searched for. */
+export function hashScan(settings: Case, scan: ScanSettings): string {
+  return sha256(canonical({ case: settings.sha256, scan }));
+}
+
+/** SHA-256 of a window: what its case computes, and the history with all its rows. */
+export function hashWindow(settings: Case, window: WindowSettings): string {
+  return sha256(canonical({ case: settings.sha256, window }));
+}
+
 /** The hash under which a table's columns enter. */
-export function hashColumns(columns: readonly (readonly number[])[]): string {
-  return sha256(JSON.stringify(columns));
+export function hashColumns(columns: readonly ArrayLike<number>[]): string {
+  return sha256(JSON.stringify(columns.map((column) => (Array.isArray(column) ? column : Array.from(column)))));
 }
 
 function canonical(value: unknown): string {
@@ -23,6 +34,7 @@ function canonical(value: unknown): string {
       return JSON.stringify(`sha256:${hashColumns([value])}`);
     return `[${value.map(canonical).join(',')}]`;
   }
+  if (value instanceof Float64Array) return JSON.stringify(`sha256:${hashColumns([value])}`);
   if (typeof value === 'object' && value !== null) {
     const entries = Object.entries(value)
       .filter(([key, inner]) => !WORDS.has(key) && inner !== undefined)

@@ -4,32 +4,45 @@
  *  overrides.ts     --set PATH=VALUE
  *  schema.ts        what a case may hold (fields.ts: the building blocks; later.ts: what is refused by name)
  *  csv.ts           tables
+ *  scan-schema.ts   `scan` (axis.ts: one varied entry; walk.ts: which entries there are)
+ *  history-schema.ts  `history` (dataset.ts: data sets)
  *  issues.ts        what the schema found wrong -> problems (problem.ts)
  *  build.ts         validated input and defaults -> Case (coefficients.ts: the gas)
+ *  build-study.ts   the same for scan and history
+ *  points.ts        the case at a point of a scan (plain.ts: --set on plain data)
  *  resolved.ts      the case as a flat record in SI; hash.ts: its SHA-256
  *  template.ts      a case to start from
  *
- *  No file is opened here: tables are read through the function passed in. */
+ *  No file is opened here: tables and data sets are read through the functions passed in. */
 import * as z from 'zod';
 import type { Case } from '../case.ts';
 import { gases } from '../gases/index.ts';
+import type { ScanSettings, WindowSettings } from '../study.ts';
 import { surfaces, yieldFor } from '../surfaces/index.ts';
 import { type BuiltIns, buildCase } from './build.ts';
+import { buildScan, buildWindow } from './build-study.ts';
+import type { DatasetReader } from './dataset.ts';
 import { Defaults, type DefaultUsed } from './defaults.ts';
 import { locate, parseSource, type SourceDocument, toPlain } from './document.ts';
 import type { LoadedTable, TableReader } from './fields.ts';
+import { deepFreeze } from './freeze.ts';
 import { problemsOf } from './issues.ts';
 import { applyOverrides } from './overrides.ts';
+import type { Plain } from './plain.ts';
+import { type PointReader, pointReader, scanProblems } from './points.ts';
 import type { Place, Problem } from './problem.ts';
-import { type ResolvedValue, resolvedOf } from './resolved.ts';
-import { type CaseInput, caseSchema } from './schema.ts';
+import { resolvedOf } from './resolved.ts';
+import type { ResolvedValue } from './resolved-study.ts';
+import { type CaseInput, caseSchemas } from './schema.ts';
 
 export type { BuiltIns } from './build.ts';
+export type { DatasetRead, DatasetReader } from './dataset.ts';
 export type { DefaultUsed } from './defaults.ts';
 export type { TableReader } from './fields.ts';
-export { hashCase } from './hash.ts';
+export { hashCase, hashScan, hashWindow } from './hash.ts';
+export type { PointReader } from './points.ts';
 export { formatProblem, type Place, type Problem, type ProblemCode } from './problem.ts';
-export type { ResolvedValue } from './resolved.ts';
+export type { ResolvedValue } from './resolved-study.ts';
 export { caseTemplate } from './template.ts';
 
 /** A table that a case named, as it was read. */
@@ -43,6 +56,12 @@ export type ReadResult =
   | {
       readonly ok: true;
       readonly case: Case;
+      /** many gaps at once, null where the case asks for none */
+      readonly scan: ScanSettings | null;
+      /** the gap in changing surroundings, null where the case asks for none */
+      readonly window: WindowSettings | null;
+      /** the case at a point of the scan: one SI value per axis, in their order; validated anew, its hash that of a file with these values */
+      readonly at: PointReader;
       readonly defaults: readonly DefaultUsed[];
       /** how entries were read, where that is not plain */
       readonly notes: readonly string[];
@@ -62,12 +81,14 @@ export const BUILT_INS: BuiltIns = { gases, materials: Object.keys(surfaces), su
  *  @param fileName   for messages, and the title by default
  *  @param reader     gives the text of a table's file by its name in the case
  *  @param overrides  `PATH=VALUE`, applied left to right before validation
+ *  @param datasets   gives the values of a data set of an HDF5 file
  *  @returns the frozen case with the defaults used, or every problem, in the order of the file. Never throws on any text. */
 export function readCase(
   text: string,
   fileName: string,
   reader: TableReader,
   overrides: readonly string[] = [],
+  datasets: DatasetReader = () => ({ ok: false, reason: 'no data sets are read here' }),
   builtIns: BuiltIns = BUILT_INS,
 ): ReadResult {
   const parsed = parseSource(text, fileName);
@@ -78,33 +99,60 @@ export function readCase(
   problems.push(...plain.problems);
   if (plain.problems.some((p) => p.code === 'aliases' || p.code === 'too-deep')) return { ok: false, problems };
 
-  const schema = caseSchema({ reader: onceEach(reader), gasNames: Object.keys(builtIns.gases), materialNames: builtIns.materials });
-  const validated = schema.safeParse(plain.value, { reportInput: false, jitless: true });
-  if (!validated.success) problems.push(...problemsOf(validated.error.issues, schema, plain.value, document));
+  const schemas = caseSchemas({
+    reader: onceEach(reader),
+    datasets,
+    gasNames: Object.keys(builtIns.gases),
+    materialNames: builtIns.materials,
+  });
+  const { file, run } = schemas;
+  const validated = file.safeParse(plain.value, { reportInput: false, jitless: true });
+  if (!validated.success) problems.push(...problemsOf(validated.error.issues, file, plain.value, document));
   problems.push(...missingYields(plain.value, builtIns, document));
   if (!validated.success || problems.length > 0) return { ok: false, problems: inOrder(problems) };
 
+  const fileTitle = baseName(fileName);
   const defaults = new Defaults();
-  const built = buildCase(validated.data, baseName(fileName), builtIns, defaults);
+  const input = validated.data;
+  const built = buildCase(input, fileTitle, builtIns, defaults);
+  const scan = input.scan ? deepFreeze(buildScan(input.scan, run, defaults)) : null;
+  const window = input.history ? deepFreeze(buildWindow(input.history, built, defaults)) : null;
+
+  const { scan: _, history: __, ...base } = plain.value as Plain;
+  const read = (point: Plain): ReturnType<PointReader> => {
+    const again = run.safeParse(point, { reportInput: false });
+    const missing = missingYields(point, builtIns, document);
+    if (!again.success) return { ok: false, problems: inOrder([...problemsOf(again.error.issues, run, point, document), ...missing]) };
+    if (missing.length > 0) return { ok: false, problems: missing };
+    return { ok: true, case: buildCase(again.data, fileTitle, builtIns, new Defaults()) };
+  };
+  const source = { base, scan, document, read };
+  const at = pointReader(source);
+  const unfit = scanProblems(source, at);
+  if (unfit.length > 0) return { ok: false, problems: inOrder(unfit) };
   return {
     ok: true,
     case: built,
+    scan,
+    window,
+    at,
     defaults: defaults.used,
     notes: defaults.notes,
-    resolved: resolvedOf(built),
-    tables: tablesOf(validated.data),
+    resolved: resolvedOf(built, scan, window),
+    tables: tablesOf(input),
     locate: (path) => locate(document, path === '' ? [] : path.split('.')),
   };
 }
 
 /** The JSON Schema of a case, generated from the validator. */
 export function caseJsonSchema(builtIns: BuiltIns = BUILT_INS): Record<string, unknown> {
-  const schema = caseSchema({
+  const { file } = caseSchemas({
     reader: () => ({ ok: false, reason: 'no files are read for a schema' }),
+    datasets: () => ({ ok: false, reason: 'no files are read for a schema' }),
     gasNames: Object.keys(builtIns.gases),
     materialNames: builtIns.materials,
   });
-  return { title: 'gapwake case', ...z.toJSONSchema(schema, { io: 'input', target: 'draft-7' }) };
+  return { title: 'gapwake case', ...z.toJSONSchema(file, { io: 'input', target: 'draft-7' }) };
 }
 
 /** A file named twice is read once. */
@@ -147,6 +195,11 @@ function tablesOf(input: CaseInput): TableUsed[] {
   for (const [key, value] of Object.entries(input.gas.coefficients ?? {})) {
     if (typeof value === 'object' && 'table' in value) add(`gas.coefficients.${key}.table`, value.table);
   }
+  const { pressure, temperature, voltage } = input.history ?? {};
+  add('history.pressure.table', pressure?.table);
+  add('history.pressure.bay.outside.table', pressure?.bay?.outside?.table);
+  if (typeof temperature === 'object') add('history.temperature.table', temperature.table);
+  if (typeof voltage === 'object') add('history.voltage.table', voltage.table);
   return tables;
 }
 

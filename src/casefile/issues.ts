@@ -1,9 +1,11 @@
-import * as z from 'zod';
+import type * as z from 'zod';
 import { clip, nearestSpelling } from '../units/index.ts';
 import { locate, type Path, pathText, type SourceDocument } from './document.ts';
 import type { IssueDetail } from './fields.ts';
 import { isLaterKey, isLaterName } from './later.ts';
+import { getPlain } from './plain.ts';
 import type { Place, Problem, ProblemCode } from './problem.ts';
+import { keysAt } from './walk.ts';
 
 /** What the validator found wrong, placed in the document.
  *
@@ -24,7 +26,7 @@ interface Context {
 function convert(issue: z.core.$ZodIssue, base: Path, context: Context): Problem[] {
   const { raw, document } = context;
   const path = [...base, ...issue.path];
-  const value = valueAt(raw, path);
+  const value = getPlain(raw, path);
   const make = (code: ProblemCode, place: Place, at: Path, expected: string, found: string, nearest: string | null): Problem => ({
     code,
     file: place.file,
@@ -37,7 +39,7 @@ function convert(issue: z.core.$ZodIssue, base: Path, context: Context): Problem
   });
 
   if (issue.code === 'unrecognized_keys') {
-    const known = knownKeys(context.schema, path);
+    const known = keysAt(context.schema, path);
     return issue.keys.slice(0, MAX_KEYS).map((key) => {
       const at = [...path, key];
       const place = locate(document, at, 'key');
@@ -89,33 +91,4 @@ function describe(value: unknown, expected = ''): string {
 /** an expectation that shows how a quantity is written */
 function isOfQuantity(expected: string): boolean {
   return expected.includes(', e.g. ');
-}
-
-function valueAt(raw: unknown, path: Path): unknown {
-  let value = raw;
-  for (const key of path) {
-    if (typeof value !== 'object' || value === null || !Object.hasOwn(value, key)) return undefined;
-    value = (value as Record<PropertyKey, unknown>)[key];
-  }
-  return value;
-}
-
-/** The keys that the schema accepts in the mapping at a path. */
-function knownKeys(schema: z.ZodType, path: Path): string[] {
-  let objects = objectsIn(schema);
-  for (const key of path) {
-    objects = objects.flatMap((object) => {
-      const inner = object.shape[String(key)];
-      return inner ? objectsIn(inner as z.ZodType) : [];
-    });
-  }
-  return [...new Set(objects.flatMap((object) => Object.keys(object.shape)))];
-}
-
-function objectsIn(schema: z.ZodType): z.ZodObject[] {
-  if (schema instanceof z.ZodObject) return [schema];
-  if (schema instanceof z.ZodOptional) return objectsIn(schema.unwrap() as z.ZodType);
-  if (schema instanceof z.ZodPipe) return objectsIn(schema.in as z.ZodType);
-  if (schema instanceof z.ZodUnion) return schema.options.flatMap((option) => objectsIn(option as z.ZodType));
-  return [];
 }

@@ -2,7 +2,6 @@ import { pathText } from './document.ts';
 
 /** Keys that a case may hold one day, by the mapping they belong to: refused by name, never ignored. */
 const KEYS: Readonly<Record<string, readonly string[]>> = {
-  '': ['scan', 'history'],
   gap: ['inner_radius', 'outer_radius', 'length'],
   gas: ['mixture', 'data'],
   electrodes: ['inner', 'outer'],

@@ -4,7 +4,7 @@ import { pathText, resolve, type SourceDocument } from './document.ts';
 import type { Problem } from './problem.ts';
 
 /** Either-ors of a case: setting a key of one arm removes the keys of the others. The path may hold `*` for any key. */
-const EITHER_OR: readonly { readonly at: string; readonly arms: readonly (readonly string[])[] }[] = [
+const EITHER_OR: readonly { readonly pattern: readonly string[]; readonly arms: readonly (readonly string[])[] }[] = [
   { at: 'supply.voltage', arms: [['step', 'rise_time'], ['ramp'], ['table']] },
   { at: 'gas.coefficients.ionisation', arms: [['form', 'A', 'B', 'C', 'D'], ['table']] },
   { at: 'gas.coefficients.attachment', arms: [['form', 'A', 'B', 'C', 'D'], ['table']] },
@@ -22,9 +22,12 @@ const EITHER_OR: readonly { readonly at: string; readonly arms: readonly (readon
       ['C', 'D'],
     ],
   },
+  { at: 'scan.vary.*', arms: [['values'], ['from', 'to', 'points', 'spacing']] },
+  { at: 'history.pressure', arms: [['table'], ['dataset'], ['ascent'], ['bay']] },
+  { at: 'history.pressure.bay.outside', arms: [['pressure'], ['table'], ['ascent']] },
   { at: 'electrodes.*', arms: [['material'], ['ion_yield']] },
   { at: 'gas.coefficients.*', arms: [['value'], ['K0'], ['table']] },
-];
+].map(({ at, arms }) => ({ pattern: at.split('.'), arms }));
 
 /** Applies `--set PATH=VALUE` arguments, in order, to a parsed case.
  *
@@ -156,13 +159,16 @@ function remove(document: SourceDocument, keys: readonly string[]): string | nul
 }
 
 function removeOtherArms(map: { items: Pair<unknown, unknown>[] }, here: readonly string[], key: string): void {
-  for (const { at, arms } of EITHER_OR) {
-    const pattern = at.split('.');
-    if (pattern.length !== here.length || !pattern.every((p, i) => p === '*' || p === here[i])) continue;
-    if (!arms.some((arm) => arm.includes(key))) continue;
-    const others = arms.filter((arm) => !arm.includes(key)).flat();
-    map.items = map.items.filter((p) => !(isScalar(p.key) && others.includes(String(p.key.value))));
-  }
+  const others = otherArms(here, key);
+  if (others.length > 0) map.items = map.items.filter((p) => !(isScalar(p.key) && others.includes(String(p.key.value))));
+}
+
+/** The keys that must go when `key` is set in the mapping at a path. */
+export function otherArms(here: readonly string[], key: string): readonly string[] {
+  return EITHER_OR.flatMap(({ pattern, arms }) => {
+    if (pattern.length !== here.length || !pattern.every((p, i) => p === '*' || p === here[i])) return [];
+    return arms.some((arm) => arm.includes(key)) ? arms.filter((arm) => !arm.includes(key)).flat() : [];
+  });
 }
 
 /** What an alias stands for is shared with its anchor: a `--set` below it must change this use only. */

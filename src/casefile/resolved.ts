@@ -1,15 +1,16 @@
 import type { Case } from '../case.ts';
 import type { Form } from '../gases/forms.ts';
 import type { Coefficient } from '../gases/gas.ts';
+import type { ScanSettings, WindowSettings } from '../study.ts';
 import type { Surface } from '../surfaces/surface.ts';
 import { hashColumns } from './hash.ts';
-
-export type ResolvedValue = number | string | boolean | null;
+import { type ResolvedValue, scanEntries, windowEntries } from './resolved-study.ts';
 
 /** A case as a flat record: the paths of the case file, values in SI, defaults included.
  *
- *  Coefficients are listed only where the case gave them, as used: N-based. Tables appear by hash. */
-export function resolvedOf(c: Case): Record<string, ResolvedValue> {
+ *  Coefficients are listed only where the case gave them, as used: N-based. Tables appear by hash, the values
+ *  of a scan by their number and ends. */
+export function resolvedOf(c: Case, scan: ScanSettings | null, window: WindowSettings | null): Record<string, ResolvedValue> {
   const { gap, gas, electrodes, seed, supply, observe, numerics } = c;
   const { programme, trip } = supply;
   return {
@@ -48,6 +49,8 @@ export function resolvedOf(c: Case): Record<string, ResolvedValue> {
     ...Object.fromEntries(observe.currents.map((level, i) => [`observe.currents.${i}`, level])),
     'numerics.cells': numerics.cells,
     'numerics.tolerance': numerics.tolerance,
+    ...(scan ? scanEntries(scan) : {}),
+    ...(window ? windowEntries(window) : {}),
   };
 }
 

@@ -1,4 +1,5 @@
 import * as z from 'zod';
+import type { DatasetReader } from './dataset.ts';
 import {
   across,
   choice,
@@ -10,10 +11,13 @@ import {
   pureNumber,
   quantity,
   quantityOf,
+  type Report,
   section,
   type TableReader,
   table,
 } from './fields.ts';
+import { type HistoryInput, historySchema } from './history-schema.ts';
+import { type ScanInput, scanSchema } from './scan-schema.ts';
 
 /** A case as validated: SI values, entries as they were given, no defaults filled in. */
 export interface CaseInput {
@@ -55,6 +59,8 @@ export interface CaseInput {
   readonly electrons?: { readonly closure?: 'local-field' | undefined } | undefined;
   readonly observe: { readonly until: number; readonly currents?: readonly number[] | undefined };
   readonly numerics?: { readonly cells?: number | undefined; readonly tolerance?: number | undefined } | undefined;
+  readonly scan?: ScanInput | undefined;
+  readonly history?: HistoryInput | undefined;
 }
 
 export interface ElectrodeInput {
@@ -98,6 +104,7 @@ export interface CoefficientsInput {
 /** What the schema is built around. */
 export interface SchemaContext {
   readonly reader: TableReader;
+  readonly datasets: DatasetReader;
   readonly gasNames: readonly string[];
   readonly materialNames: readonly string[];
 }
@@ -108,43 +115,85 @@ const EITHER_FIELD = ['fieldOverPressure', 'reducedField'] as const;
 const EITHER_GROWTH = ['growthOverPressure', 'crossSection'] as const;
 const EITHER_MOBILITY = ['mobilityTimesPressure', 'mobilityTimesDensity'] as const;
 
-/** The validator of a case. The JSON Schema is generated from it. */
-export function caseSchema(context: SchemaContext): z.ZodType<CaseInput> {
-  return section(
+/** The validators of a case. The JSON Schema is generated from `file`. */
+export interface CaseSchemas {
+  /** a case file */
+  readonly file: z.ZodType<CaseInput>;
+  /** one run of it: a case without scan and history */
+  readonly run: z.ZodType<CaseInput>;
+}
+
+export function caseSchemas(context: SchemaContext): CaseSchemas {
+  const shape = runShape(context);
+  const description = 'A gap, its gas and electrodes, what feeds it, and how long to watch it';
+  const run = section(shape, description);
+  const { reader, datasets } = context;
+  const file = section(
     {
-      title: z
-        .string({ error: () => 'text of at most 200 characters' })
-        .max(200)
-        .optional(),
-      gap: gapSchema(),
-      gas: gasSchema(context),
-      electrodes: section(
-        { left: electrodeSchema(context), right: electrodeSchema(context).optional() },
-        'left is at x = 0, right at x = spacing; right is as left by default',
-      ),
-      seed: seedSchema(),
-      supply: supplySchema(context),
-      electrons: section({ closure: choice(['local-field']).optional() }, 'how electrons follow the field').optional(),
-      observe: section(
-        {
-          until: quantity('time', { above: 0, max: 1e9, text: 'above 0 and up to 1e9 s' }),
-          currents: z
-            .array(quantity('current', POSITIVE), { error: () => 'a list of currents, e.g. [1 nA, 1 uA]' })
-            .max(1000, { error: () => 'at most 1000 currents' })
-            .optional(),
-        },
-        'how long, and which conduction currents to report when first crossed',
-      ),
-      numerics: section(
-        {
-          cells: pureNumber('a whole number', { min: 20, max: 5000, text: 'from 20 to 5000' }, 150, true).optional(),
-          tolerance: pureNumber('a number', { min: 1e-8, max: 0.1, text: 'from 1e-8 to 0.1' }, 1e-3).optional(),
-        },
-        'defaults: cells the choice of the program, tolerance 1e-3',
-      ).optional(),
+      ...shape,
+      scan: scanSchema(run).optional(),
+      history: historySchema({ reader, datasets, temperature: TEMPERATURE, voltage: VOLTAGE }).optional(),
     },
-    'A gap, its gas and electrodes, what feeds it, and how long to watch it',
-  ) as unknown as z.ZodType<CaseInput>;
+    description,
+  ).check(across((sound, report, given) => checkStudies(sound as Partial<CaseInput>, report, given)));
+  return { file, run } as unknown as CaseSchemas;
+}
+
+function runShape(context: SchemaContext): Readonly<Record<string, z.ZodType>> {
+  return {
+    title: z
+      .string({ error: () => 'text of at most 200 characters' })
+      .max(200)
+      .optional(),
+    gap: gapSchema(),
+    gas: gasSchema(context),
+    electrodes: section(
+      { left: electrodeSchema(context), right: electrodeSchema(context).optional() },
+      'left is at x = 0, right at x = spacing; right is as left by default',
+    ),
+    seed: seedSchema(),
+    supply: supplySchema(context),
+    electrons: section({ closure: choice(['local-field']).optional() }, 'how electrons follow the field').optional(),
+    observe: section(
+      {
+        until: quantity('time', { above: 0, max: 1e9, text: 'above 0 and up to 1e9 s' }),
+        currents: z
+          .array(quantity('current', POSITIVE), { error: () => 'a list of currents, e.g. [1 nA, 1 uA]' })
+          .max(1000, { error: () => 'at most 1000 currents' })
+          .optional(),
+      },
+      'how long, and which conduction currents to report when first crossed',
+    ),
+    numerics: section(
+      {
+        cells: pureNumber('a whole number', { min: 20, max: 5000, text: 'from 20 to 5000' }, 150, true).optional(),
+        tolerance: pureNumber('a number', { min: 1e-8, max: 0.1, text: 'from 1e-8 to 0.1' }, 1e-3).optional(),
+      },
+      'defaults: cells the choice of the program, tolerance 1e-3',
+    ).optional(),
+  };
+}
+
+/** What a scan or a history asks of the rest of the case. */
+function checkStudies({ supply, scan, history }: Partial<CaseInput>, report: Report, given: Readonly<Record<string, unknown>>): void {
+  const what = scan?.find?.what;
+  const supplyGiven = given.supply as Readonly<Record<string, unknown>> | undefined;
+  if (what === 'trip-delay' && typeof supplyGiven === 'object' && supplyGiven.trip === undefined)
+    report(['scan', 'find', 'what'], 'supply.trip in the case, with what: trip-delay', { code: 'inconsistent', found: 'no supply.trip' });
+  if (!isZero(supply?.voltage)) return;
+  const found = 'a supply at 0 V throughout';
+  if (what === 'hold-off')
+    report(['scan', 'find', 'what'], 'a supply.voltage that differs from 0 V at some time, to be scaled', { code: 'inconsistent', found });
+  if (history !== undefined && (given.history as Partial<HistoryInput>).voltage === undefined)
+    report(['history', 'voltage'], 'voltage, required where supply.voltage gives none', { code: 'missing-key', found });
+}
+
+/** Whether a programme stays at 0 V; false where it is not known. */
+function isZero(voltage: Partial<CaseInput['supply']['voltage']> | undefined): boolean {
+  if (voltage?.step !== undefined) return voltage.step === 0;
+  if (voltage?.ramp) return voltage.ramp.from === 0 && voltage.ramp.to === 0;
+  const rows = voltage?.table?.columns?.[1]?.values;
+  return rows?.every((v) => v === 0) ?? false;
 }
 
 function gapSchema(): z.ZodType<CaseInput['gap']> {

@@ -163,8 +163,6 @@ const ROWS: Row[] = [
     'rise_time',
     null,
   ],
-  ['a scan', 'title: Test', 'scan: { vary: [] }', '1:1', 'scan', 'not-supported-yet', 'not supported yet', 'scan', null],
-  ['a history', 'title: Test', 'history: { duration: 3 h }', '1:1', 'history', 'not-supported-yet', 'not supported yet', 'history', null],
   ['a coaxial gap', 'planar', 'coaxial', '3:13', 'gap.geometry', 'not-supported-yet', 'not supported yet', 'coaxial', null],
   ['a spherical gap', 'planar', 'spherical', '3:13', 'gap.geometry', 'not-supported-yet', 'not supported yet', 'spherical', null],
   [
