@@ -89,7 +89,7 @@ export class HoldOffCurve {
       holdOff,
       logRatio: holdOff === null ? Number.NaN : Math.log(holdOff / theory),
       width: answer.kind === 'hold-off' && holdOff !== null && answer.upper !== null ? Math.log(answer.upper / holdOff) : 0,
-      failure: answer.kind === 'failed' ? answer.reason : holdOff === null ? 'no voltage was found to hold' : null,
+      failure: answer.kind === 'failed' ? answer.reason : holdOff === null ? (answer.note ?? 'no voltage was found to hold') : null,
     };
     this.#nodes.set(density, node);
     if (holdOff === null) return;

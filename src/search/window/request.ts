@@ -35,6 +35,8 @@ export interface HoldOffAnswer {
   readonly lower: number | null;
   /** the lowest known to break down [V]; null when none was found to */
   readonly upper: number | null;
+  /** what the search could not decide, one sentence; null where there is nothing to add */
+  readonly note: string | null;
   /** simulations made */
   readonly runs: number;
 }

@@ -1,69 +1,85 @@
 import type { Case } from '../../case.ts';
-import type { Simulate } from '../found.ts';
-import { scaled } from '../scaled.ts';
 import { limitsOf, prospects } from '../../theory/predict.ts';
+import type { Found, Simulate } from '../found.ts';
+import { holdOff } from '../hold-off.ts';
+import { capacitanceOf } from '../open-gap.ts';
+import { scaled } from '../scaled.ts';
 import { alongPath, atDensity, programmeEnds, withYields } from './instant-case.ts';
 import type { Answer, HoldOffAnswer, HoldOffRequest, LagAnswer, LagRequest, Request } from './request.ts';
-import { chargingTime, timeToBreakdown } from './threshold.ts';
+import { timeToBreakdown } from './threshold.ts';
 
 /** Relative width of the stretch in which a hold-off voltage is known. */
 export const HOLD_OFF_TOLERANCE = 2e-3;
 
-/** Time that a run is given, in lags by theory: a gap just above threshold must be seen to break down. */
-const LAGS = 3;
+/** Time that a run is given, in lags by theory: one more than the search asks for. */
+const LAGS = 4;
 /** Charging times after which the gap is within 0.1 % of the supply. */
 const CHARGING_TIMES = 7;
 /** Ion transits that a run is given where nothing breaks down at any voltage. */
 const IDLE_TRANSITS = 100;
-/** How often a run that ends undecided is given five times as long. */
+/** How often a run that ends before breakdown is given five times as long. */
 const EXTENSIONS = 2;
-/** How far from the expectation an answer is looked for, as a factor either way: space charge of a strong seed lowers a threshold by some per cent, a pulse
- *  shorter than the lag or a resistance that starves the gap raises it. */
-const FURTHEST = 30;
+/** Ranges that are searched where the expected stretch does not hold the answer, as factors on the expectation: the first for what a seed or a long programme
+ *  changes, the second for a pulse shorter than the lag or a resistance that starves the gap. */
+const RANGES = [
+  [0.75, 1.35],
+  [1 / 3, 30],
+] as const;
 
 /** Answers one request by simulating.
  *  @param settings  the case, as it was read
- *  @throws whatever `simulate` throws */
+ *  @throws SimulationFailure when a run, or every run of a search, fails */
 export function answerOf(settings: Case, request: Request, simulate: Simulate): Answer {
   const there = alongPath(atDensity(settings, request.density), request.path, request.polarity);
   return request.kind === 'lag' ? lagOf(there, request, simulate) : holdOffOf(withYields(there, request.yields), request, simulate);
 }
 
-/** Closes in on the voltage at which the gap ceases to hold: from the expected stretch outwards until one end holds and the other breaks down, then halving. */
+/** The hold-off voltage of a path. Two runs at the ends of the expected stretch confirm it; if they do not, it is searched for. */
 function holdOffOf(gap: Case, { expected, spread, polarity }: HoldOffRequest, simulate: Simulate): HoldOffAnswer {
+  const until = programmeEnds(gap) + CHARGING_TIMES * chargingTime(gap) + LAGS * slowestLag(gap, polarity * expected);
+  const given: Case = { ...gap, observe: { ...gap.observe, until } };
   let runs = 0;
-  const holds = (voltage: number): boolean => {
-    const answer = decided(gap, polarity * voltage, simulate);
-    runs += answer.runs;
-    return answer.holds;
+  // a discharge that sustains itself without having settled does not hold
+  const decided: Simulate = (settings) => {
+    runs++;
+    const outcome = simulate(settings);
+    const { verdict } = outcome;
+    return verdict.state === 'undecided' && verdict.self_sustaining
+      ? { ...outcome, verdict: { ...verdict, state: 'breaks-down' } }
+      : outcome;
   };
-  let lower: number | null = null;
-  let upper: number | null = null;
-  let [below, above] = [expected * Math.exp(-spread / 2), expected * Math.exp(spread / 2)];
-  for (let step = spread; lower === null && below > expected / FURTHEST; step *= 3, below *= Math.exp(-step)) {
-    if (holds(below)) lower = below;
-    else upper = below;
+  const answer = (lower: number | null, upper: number | null, note: string | null): HoldOffAnswer => ({
+    kind: 'hold-off',
+    lower,
+    upper,
+    note,
+    runs,
+  });
+
+  if (spread <= HOLD_OFF_TOLERANCE) {
+    const [lower, upper] = [expected * Math.exp(-spread / 2), expected * Math.exp(spread / 2)];
+    const at = (voltage: number): string => decided(scaled(given, voltage)).verdict.state;
+    if (at(lower) === 'holds' && at(upper) === 'breaks-down') return answer(lower, upper, null);
   }
-  for (let step = spread; upper === null && above < expected * FURTHEST; step *= 3, above *= Math.exp(step)) {
-    if (holds(above)) lower = above;
-    else upper = above;
+  let found: Found | null = null;
+  for (const [from, to] of RANGES) {
+    found = holdOff(given, { from: from * expected, to: to * expected, tolerance: HOLD_OFF_TOLERANCE }, decided);
+    if (found.state === 'found') break;
   }
-  while (lower !== null && upper !== null && Math.log(upper / lower) > HOLD_OFF_TOLERANCE * 1.001) {
-    const middle = Math.sqrt(lower * upper);
-    if (holds(middle)) lower = middle;
-    else upper = middle;
-  }
-  return { kind: 'hold-off', lower, upper, runs };
+  return answer(found?.lower ?? null, found?.upper ?? null, found?.note ?? null);
 }
 
-/** Whether the gap holds when its programme reaches a voltage. A discharge that sustains itself without having settled does not hold; a run that is still
- *  undecided when it has been given its time does not either. */
-function decided(gap: Case, voltage: number, simulate: Simulate): { readonly holds: boolean; readonly runs: number } {
-  const driven = scaled(gap, Math.abs(voltage));
-  let until = programmeEnds(driven) + CHARGING_TIMES * chargingTime(driven) + LAGS * slowestLag(gap, voltage);
+/** The lag of a gap that is expected to break down, along one path. */
+function lagOf(gap: Case, { voltage, polarity }: LagRequest, simulate: Simulate): LagAnswer {
+  const driven = scaled(gap, voltage);
+  const threshold = limitsOf(gap, polarity).threshold.breakdown ?? 0;
+  // behind a resistance the gap is charged past its threshold before the lag begins
+  const charging = voltage > threshold ? Math.min(CHARGING_TIMES, 1.2 * Math.log(voltage / (voltage - threshold))) : CHARGING_TIMES;
+  let until = programmeEnds(driven) + charging * chargingTime(driven) + LAGS * slowestLag(gap, polarity * voltage);
   for (let runs = 1; ; runs++, until *= 5) {
-    const { verdict } = simulate({ ...driven, observe: { ...driven.observe, until } });
-    if (verdict.state !== 'undecided' || verdict.self_sustaining || runs > EXTENSIONS) return { holds: verdict.state === 'holds', runs };
+    const { verdict, onset } = simulate({ ...driven, observe: { ...driven.observe, until } });
+    const ended = onset.formative_lag_s !== null || verdict.state === 'holds' || runs > EXTENSIONS;
+    if (ended) return { kind: 'lag', lag: onset.formative_lag_s, runs };
   }
 }
 
@@ -75,15 +91,7 @@ function slowestLag(gap: Case, voltage: number): number {
   return timeToBreakdown(gap, sign * least) ?? IDLE_TRANSITS * (prospects(gap, voltage).ionTransit ?? 0);
 }
 
-/** The lag of a gap that is expected to break down, along one path. */
-function lagOf(gap: Case, { voltage, polarity }: LagRequest, simulate: Simulate): LagAnswer {
-  const driven = scaled(gap, voltage);
-  const threshold = limitsOf(gap, polarity).threshold.breakdown ?? 0;
-  // a gap charges past its threshold before the lag begins
-  const charging = chargingTime(driven) * (voltage > threshold ? Math.log(voltage / (voltage - threshold)) : CHARGING_TIMES);
-  let until = programmeEnds(driven) + 1.2 * Math.min(charging, CHARGING_TIMES * chargingTime(driven)) + LAGS * slowestLag(gap, polarity * voltage);
-  for (let runs = 1; ; runs++, until *= 5) {
-    const { verdict, onset } = simulate({ ...driven, observe: { ...driven.observe, until } });
-    if (verdict.state !== 'undecided' || onset.formative_lag_s !== null || runs > EXTENSIONS) return { kind: 'lag', lag: onset.formative_lag_s, runs };
-  }
+/** Time constant with which the gap and what is across it charge through the series resistance [s]. */
+function chargingTime(settings: Case): number {
+  return settings.supply.seriesResistance * capacitanceOf(settings);
 }

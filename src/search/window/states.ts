@@ -50,7 +50,8 @@ export function judge(evidence: Evidence, { margin, uncertainty }: Criteria): Ju
   if (beyond !== null || holdOff === null) {
     return { state: 'outside-model', safe: below(wanted, minimum) && below(voltage, minimumAtHighYield) };
   }
-  if (belowData && wanted >= holdOff * (1 - uncertainty) && voltage < holdOff * (1 + uncertainty)) return { state: 'outside-model', safe: false };
+  if (belowData && wanted >= holdOff * (1 - uncertainty) && voltage < holdOff * (1 + uncertainty))
+    return { state: 'outside-model', safe: false };
   if (voltage >= holdOff) return { state: 'breaks-down', safe: false };
   if (wanted >= holdOff || (holdOffAtHighYield !== null && voltage >= holdOffAtHighYield)) return { state: 'marginal', safe: false };
   return { state: 'holds', safe: true };

@@ -1,6 +1,5 @@
 import type { Case } from '../../case.ts';
 import { limitsOf, predict, prospects } from '../../theory/predict.ts';
-import { VACUUM_PERMITTIVITY } from '../../units/constants.ts';
 import { atDensity, type Polarity, withYields, type YieldEnd } from './instant-case.ts';
 
 /** What theory says of a gap at one density: over all paths from the spacing to the longest one. */
@@ -30,7 +29,7 @@ const COLLISIONLESS = 0.1;
 const TYPICAL_CROSS_SECTION = 4e-19;
 
 /** Step in ln N between the densities at which theory is evaluated; linear in ln V between, the error stays below 1e-4 where V_s varies as N or slower. */
-const STEP = 0.01;
+const STEP = 0.025;
 
 /** Thresholds of one case against density, for one polarity and one end of the yields' spread; each is computed when first asked for. */
 export class ThresholdCurve {
@@ -98,9 +97,4 @@ export function timeToBreakdown(gap: Case, voltage: number): number | null {
   if (timeToSpaceCharge !== null) return timeToSpaceCharge;
   const growth = predict(gap, voltage).growth_rate_per_s;
   return growth !== null && growth > 0 ? FOLDS / growth : null;
-}
-
-/** Time constant with which the gap and what is across it charge through the series resistance [s]. */
-export function chargingTime({ gap, supply }: Case): number {
-  return supply.seriesResistance * (supply.parallelCapacitance + (VACUUM_PERMITTIVITY * gap.area) / gap.spacing);
 }

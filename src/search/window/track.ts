@@ -45,7 +45,14 @@ export function trackOf(history: History, voltage: number | Rows, symmetric: boo
   const at = (time: number): Instant => {
     const pressure = history.pressureAt(time);
     const temperature = history.temperatureAt(time);
-    return { time, pressure, temperature, density: pressure / (BOLTZMANN * temperature), voltage: schedule.at(time), polarity: polarityAt(time) };
+    return {
+      time,
+      pressure,
+      temperature,
+      density: pressure / (BOLTZMANN * temperature),
+      voltage: schedule.at(time),
+      polarity: polarityAt(time),
+    };
   };
   const given = [...Array.from({ length: STEPS + 1 }, (_, i) => (i * duration) / STEPS), ...history.corners, ...voltageCorners];
   const logDensity = (t: number): number => Math.log(Math.max(at(t).density, Number.MIN_VALUE));
