@@ -15,10 +15,12 @@ import { sweepPoints } from './sweep.ts';
 
 /** The coarse sweep: neighbours at most this ratio apart, with at most so many points. */
 const SWEEP_RATIO = 1.35;
-const SWEEP_POINTS = 8;
+const SWEEP_POINTS = 7;
 /** Where theory puts the answer, runs this many tolerances below and above it confirm that. */
 const BELOW_THEORY = 0.25;
 const ABOVE_THEORY = 0.65;
+/** Where the gap breaks down below theory already (a strong seed), the next run is this share below theory. */
+const BELOW_SEEDED = 0.02;
 /** Formative lags at the tolerance's overvoltage that the run must leave time for. */
 const LAGS = 3;
 /** A supply that has come down below this share of the breakdown voltage when the run ends has ended the matter itself. */
@@ -90,8 +92,10 @@ function sweep(runs: Runs, { from, to, tolerance }: SearchRange, theory: number 
     marks.push(voltage);
     return runs.at(voltage).answer;
   };
-  // where the gap breaks down below theory already, the upper of the pair has nothing to add
-  if (theory !== null && mark(theory * (1 - BELOW_THEORY * tolerance)) !== 'breaks-down') mark(theory * (1 + ABOVE_THEORY * tolerance));
+  if (theory !== null) {
+    const below = mark(theory * (1 - BELOW_THEORY * tolerance));
+    mark(theory * (below === 'breaks-down' ? 1 - BELOW_SEEDED : 1 + ABOVE_THEORY * tolerance));
+  }
   for (const voltage of sweepPoints(marks, SWEEP_RATIO, SWEEP_POINTS)) runs.at(voltage);
 }
 
@@ -150,11 +154,11 @@ function topEndsAt(settings: Case): number {
 /** λ [1/s], which is 0 at threshold and nearly straight around it. */
 const growth: Measure = ({ answer, outcome }) => (answer === 'holds' ? null : outcome.onset.growth_rate_per_s);
 
-/** 1/lag less that of the lag at the change [1/s]: nearly straight in the voltage, as the growth rate is. */
+/** 1/time from threshold to space charge, less what it is at the change [1/s]: nearly straight in the voltage, as the growth rate is. */
 function promptness(atChange: number): Measure {
   return ({ answer, outcome }) => {
-    const lag = outcome.onset.formative_lag_s;
-    return answer !== 'breaks-down' || lag === null || !(lag > 0) ? null : 1 / lag - atChange;
+    const { threshold_time_s: from, space_charge_time_s: to } = outcome.onset;
+    return answer !== 'breaks-down' || from === null || to === null || !(to > from) ? null : 1 / (to - from) - atChange;
   };
 }
 

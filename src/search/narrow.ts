@@ -20,33 +20,31 @@ const ABOVE = 0.5;
 const APART = 0.1;
 /** An undecided stretch this wide leaves no room for the bracket [tolerances]. */
 const TOO_WIDE = 0.8;
-/** Guided runs in a row that may fail to halve the bracket, and how often, before only halving is trusted. */
-const PATIENCE = 2;
+/** Guided runs that may fail to halve the bracket before only halving is trusted. */
+const PATIENCE = 3;
 
 /** Narrows a bracket until its ends are within the tolerance, or an undecided stretch between them is all that is left.
  *
  *  Regula falsi on the first measure that gives an estimate, or one-sided from the two lowest runs above; two runs then enclose the
  *  estimate at once. Halving (in ratio) where there is none and where guided steps do not help, so that the runs are bounded: about
- *  log2 of the bracket's width over the tolerance, and four more. */
+ *  log2 of the bracket's width over the tolerance, and three more. */
 export function narrow(runs: Runs, from: Sample, to: Sample, tolerance: number, measures: readonly Measure[]): Bracket {
   let lower = from;
   let upper = to;
   let wasted = 0;
-  let disappointments = 0;
   for (;;) {
     const width = Math.log(upper.value / lower.value);
     if (upper.value <= (1 + tolerance) * lower.value) return { lower, upper, narrow: true };
     const stretch = stretchToSearch(runs.between(lower.value, upper.value), lower, upper, tolerance);
     if (stretch === null) return { lower, upper, narrow: false };
 
-    if (wasted === PATIENCE) disappointments++;
-    const guided = wasted < PATIENCE && disappointments < PATIENCE ? aim(runs, lower, upper, stretch, tolerance, measures) : null;
-    const trial = guided ?? Math.sqrt(stretch.from * stretch.to);
+    const guided = wasted < PATIENCE ? aim(runs, lower, upper, stretch, tolerance, measures) : null;
+    const trial = guided ?? middle(stretch, lower, upper, tolerance);
     if (!(trial > stretch.from && trial < stretch.to)) return { lower, upper, narrow: false };
     const sample = runs.at(trial);
     if (sample.answer === lower.answer) lower = sample;
     else if (sample.answer === upper.answer) upper = sample;
-    wasted = guided !== null && Math.log(upper.value / lower.value) > width / 2 ? wasted + 1 : 0;
+    if (guided !== null && Math.log(upper.value / lower.value) > width / 2) wasted++;
   }
 }
 
@@ -67,15 +65,17 @@ function stretchToSearch(undecided: readonly Sample[], lower: Sample, upper: Sam
   return below >= above ? { from: lower.value, to: first } : { from: last, to: upper.value };
 }
 
+/** The middle of a stretch (in ratio); beside an undecided stretch the place that makes the bracket just narrow enough, if that is
+ *  easier to reach. */
+function middle({ from, to }: Stretch, lower: Sample, upper: Sample, tolerance: number): number {
+  const half = Math.sqrt(from * to);
+  if (from > lower.value) return Math.max(half, lower.value * (1 + tolerance));
+  if (to < upper.value) return Math.min(half, upper.value / (1 + tolerance));
+  return half;
+}
+
 /** The next of the two places that enclose the estimated crossing; null without an estimate or where a run is near already. */
-function aim(
-  runs: Runs,
-  lower: Sample,
-  upper: Sample,
-  stretch: Stretch,
-  tolerance: number,
-  measures: readonly Measure[],
-): number | null {
+function aim(runs: Runs, lower: Sample, upper: Sample, stretch: Stretch, tolerance: number, measures: readonly Measure[]): number | null {
   const crossing = crossingBetween(runs, lower, upper, measures);
   if (crossing === null) return null;
   const below = crossing * (1 - BELOW * tolerance);
@@ -94,14 +94,17 @@ export function crossingBetween(runs: Runs, lower: Sample, upper: Sample, measur
 }
 
 function crossingBy(measure: Measure, runs: Runs, lower: Sample): number | null {
-  const known = [lower, ...runs.all.filter((s) => s.value > lower.value)].flatMap((s) => {
+  const above = runs.all.filter((s) => s.value > lower.value);
+  // what says nothing of the nearest run says nothing of the change
+  if (above.length === 0 || measure(above[0]) === null) return null;
+  const known = [lower, ...above].flatMap((s) => {
     const m = measure(s);
     return m === null ? [] : [{ value: s.value, m }];
   });
-  const above = known.findIndex((k) => k.m > 0);
+  const positive = known.findIndex((k) => k.m > 0);
   // between the signs where there are both, else beyond the two lowest
-  const second = known[above > 0 ? above : 1];
-  const first = known[above > 0 ? above - 1 : 0];
+  const second = known[positive > 0 ? positive : 1];
+  const first = known[positive > 0 ? positive - 1 : 0];
   if (first === undefined || second === undefined || !(second.m > first.m)) return null;
   return first.value - (first.m * (second.value - first.value)) / (second.m - first.m);
 }
