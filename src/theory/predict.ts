@@ -1,5 +1,7 @@
 import type { Case } from '../case.ts';
+import type { PlanarGap } from '../gap/geometry.ts';
 import { curveOf } from '../gases/curves.ts';
+import type { Gas } from '../gases/gas.ts';
 import { BOLTZMANN, ELEMENTARY_CHARGE, TOWNSEND } from '../units/constants.ts';
 import { type Threshold, threshold } from './breakdown-voltage.ts';
 import { layerCurrentDensity, normalCathodeLayer } from './cathode-fall.ts';
@@ -99,16 +101,37 @@ export interface Limits {
   readonly lowest: PathThreshold | null;
 }
 
-/** Limits already found, by case: each takes a search over the whole range of fields, and a run asks several times. */
-const known = new WeakMap<Case, { positive?: Limits; negative?: Limits }>();
+/** Limits already found, by gas: each takes a search over the whole range of fields, a run asks several times, and the cases of a
+ *  voltage search share their gas, gap and electrodes. */
+const known = new WeakMap<Gas, Known[]>();
+interface Known {
+  readonly gap: PlanarGap;
+  readonly electrodes: Case['electrodes'];
+  positive?: Limits;
+  negative?: Limits;
+}
+
+function knownLimits({ gas, gap, electrodes }: Case): Known {
+  let list = known.get(gas);
+  if (list === undefined) {
+    list = [];
+    known.set(gas, list);
+  }
+  let found = list.find((k) => k.gap === gap && k.electrodes === electrodes);
+  if (found === undefined) {
+    found = { gap, electrodes };
+    list.push(found);
+    if (list.length > MOST_KNOWN) list.shift();
+  }
+  return found;
+}
+
+/** gaps remembered for one gas: a scan over spacings must not hoard */
+const MOST_KNOWN = 8;
 
 /** Thresholds of a case with the left (polarity ≥ 0) or the right wall as cathode. */
 export function limitsOf(settings: Case, polarity: number): Limits {
-  let found = known.get(settings);
-  if (found === undefined) {
-    found = {};
-    known.set(settings, found);
-  }
+  const found = knownLimits(settings);
   const { left, right } = settings.electrodes;
   const negative = polarity < 0 && left.ionYield.typical !== right.ionYield.typical;
   const before = negative ? found.negative : found.positive;
