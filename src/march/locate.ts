@@ -6,7 +6,7 @@ const CLOSEST = 1e-9;
  *  Source: Dowell and Jarratt, BIT 11, 168, 1971.
  *  @param first, last g(0) and g(1), of opposite signs (a zero counts as either)
  *  @returns θ within `near` of the root, or where |g| is `near` times the smaller end */
-export function locate(g: (theta: number) => number, first: number, last: number, near = CLOSEST): number {
+export function locate(g: (theta: number) => number, first: number, last: number, near: number = CLOSEST): number {
   let a = 0;
   let b = 1;
   let fa = first;
