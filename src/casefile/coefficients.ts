@@ -100,6 +100,17 @@ function factor(dimension: DimensionName, kT: number): number {
   }
 }
 
+const SCALED = new WeakMap<readonly number[], Map<number, readonly number[]>>();
+
+/** A column times a factor; the same list each time, so that the points of a scan share it. */
+function scaled(values: readonly number[], scale: number): readonly number[] {
+  const known = SCALED.get(values) ?? new Map<number, readonly number[]>();
+  SCALED.set(values, known);
+  const list = known.get(scale) ?? values.map((value) => value * scale);
+  known.set(scale, list);
+  return list;
+}
+
 class Reader {
   readonly #shared: number | undefined;
   readonly #defaults: Defaults;
@@ -136,10 +147,7 @@ class Reader {
     input: Validity,
     kT: number,
   ): Coefficient {
-    const [x, y] = columns.map((column) => {
-      const scale = factor(column.dimension, kT);
-      return column.values.map((value) => value * scale);
-    });
+    const [x, y] = columns.map((column) => scaled(column.values, factor(column.dimension, kT)));
     return given({ kind: 'table', law, x, y }, range(input, kT, { from: x[0], to: x[x.length - 1] }));
   }
 

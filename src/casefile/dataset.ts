@@ -1,6 +1,7 @@
 import * as z from 'zod';
 import { clip, DIMENSIONS, type DimensionName, expectation, sameExponents, unitFactor } from '../units/index.ts';
 import { type Bounds, type IssueDetail, isWithin, section } from './fields.ts';
+import { escapeControls } from './problem.ts';
 
 /** What a case's data sets are read with: the finite values of a one-dimensional numeric data set and its attribute `units`, or why there are none. */
 export type DatasetReader = (relativePath: string, dataset: string) => DatasetRead;
@@ -45,7 +46,11 @@ export function dataset(reader: DatasetReader, dimension: DimensionName, bounds:
     };
     const column = (key: 'dataset' | 'time', unitKey: 'unit' | 'time_unit', of: DimensionName): Float64Array | null => {
       const read = reader(spec.file, spec[key]);
-      if (!read.ok) return report(key, 'a data set of finite numbers in one dimension', { code: 'unreadable', found: read.reason });
+      if (!read.ok)
+        return report(key, 'a data set of finite numbers in one dimension', {
+          code: 'unreadable',
+          found: escapeControls(read.reason).slice(0, 200),
+        });
       const scale = factorOf(read.units, spec[unitKey], of);
       if (!scale.ok)
         return report(scale.given ? unitKey : key, scale.expected, { code: 'table', found: scale.found, nearest: scale.nearest });

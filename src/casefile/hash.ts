@@ -28,7 +28,20 @@ export function hashColumns(columns: readonly ArrayLike<number>[]): string {
   return sha256(JSON.stringify(columns.map((column) => (Array.isArray(column) ? column : Array.from(column)))));
 }
 
+/** texts of what is frozen: the points of a scan share their gas data and tables */
+const KNOWN = new WeakMap<object, string>();
+
 function canonical(value: unknown): string {
+  if (typeof value !== 'object' || value === null || !Object.isFrozen(value)) return written(value);
+  let text = KNOWN.get(value);
+  if (text === undefined) {
+    text = written(value);
+    KNOWN.set(value, text);
+  }
+  return text;
+}
+
+function written(value: unknown): string {
   if (Array.isArray(value)) {
     if (value.length > LONG_LIST && value.every((item) => typeof item === 'number'))
       return JSON.stringify(`sha256:${hashColumns([value])}`);

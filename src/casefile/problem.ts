@@ -66,6 +66,7 @@ export function formatProblem(problem: Problem): string {
   return `${place}:${where} expected ${expected}, found ${found}${hint}`;
 }
 
-function escapeControls(text: string): string {
+/** Text with control and direction-changing characters escaped. */
+export function escapeControls(text: string): string {
   return text.replace(/[\p{Cc}\u2028-\u202e\u2066-\u2069]/gu, (c) => `\\u${c.charCodeAt(0).toString(16).padStart(4, '0')}`);
 }

@@ -6,7 +6,7 @@ import { EXIT } from './exit-codes.ts';
 import { Failure, problemWithoutPlace } from './failure.ts';
 import { printable } from './printable.ts';
 import { readText } from './read-text.ts';
-import { tableReader } from './tables.ts';
+import { datasetReader, tableReader } from './tables.ts';
 
 /** A case that passed validation, with the text it came from. */
 export type LoadedCase = Extract<ReadResult, { readonly ok: true }> & { readonly text: string };
@@ -27,7 +27,7 @@ export function loadCase(path: string, overrides: readonly string[]): LoadedCase
       [problemWithoutPlace('unreadable', path, 'a case file (YAML, UTF-8, at most 1 MB)', read.reason)],
     );
   }
-  const result = readCase(read.text, path, tableReader(dirname(path)), overrides);
+  const result = readCase(read.text, path, tableReader(dirname(path)), overrides, datasetReader(dirname(path)));
   if (!result.ok) {
     const { problems } = result;
     const count = problems.length === 1 ? 'One problem' : `${problems.length} problems`;

@@ -13,6 +13,7 @@ import { columns, NO_BREAK, wrap } from './layout.ts';
 import { printable } from './printable.ts';
 import { currentDensity, field, percent, pressure, pressureDistance, quantity, rate, reducedField } from './quantities.ts';
 import type { Terminal } from './terminal.ts';
+import { unusedStudies } from './unused.ts';
 
 export interface CheckAnswer {
   readonly loaded: LoadedCase;
@@ -46,7 +47,7 @@ export function checkText(answer: CheckAnswer, terminal: Terminal): string {
     ...wrap(printable(settings.title), width).map(style.strong),
     ...wrap(`${printable(path)}, case ${settings.sha256.slice(0, 12)}; read by gapwake ${VERSION}, not simulated.`, width).map(style.faint),
     ...section('The case', caseRows(loaded)),
-    ...remarks(loaded).flatMap((note) => wrap(note, width, '  ', '  ').map(style.faint)),
+    ...[...remarks(loaded), ...unusedStudies(loaded)].flatMap((note) => wrap(note, width, '  ', '  ').map(style.faint)),
     ...section(theoryTitle(voltage), theoryRows(answer)),
     '',
     style.strong('Where the numbers come from'),

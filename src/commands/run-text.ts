@@ -21,6 +21,8 @@ export interface RunAnswer {
   readonly prospects: Prospects;
   /** null when no file was asked for */
   readonly written: FileWritten | null;
+  /** what the case asks for and a run does not do, one sentence each */
+  readonly unused: readonly string[];
 }
 
 type Row = readonly [label: string, theory: string, simulated: string];
@@ -30,7 +32,7 @@ const THEORY = 21;
 
 /** What `run` prints for people: the verdict, theory beside simulation, cautions, where the result went. */
 export function runText(answer: RunAnswer, terminal: Terminal): string {
-  const { settings, outcome, voltage, written } = answer;
+  const { settings, outcome, voltage, written, unused } = answer;
   const { style, width } = terminal;
   const table = (rows: readonly Row[]): string[] =>
     columns(
@@ -53,7 +55,7 @@ export function runText(answer: RunAnswer, terminal: Terminal): string {
   const cautions = cautionLines(outcome.cautions, terminal);
   if (cautions.length > 0) lines.push('', style.strong('Cautions'), ...cautions);
   const where = written === null ? 'Nothing was written; -o FILE.h5 keeps the result.' : writtenText(written);
-  return `${[...lines, '', ...wrap(where, width), ...lastLines(terminal)].join('\n')}\n`;
+  return `${[...lines, '', ...[...unused, where].flatMap((line) => wrap(line, width)), ...lastLines(terminal)].join('\n')}\n`;
 }
 
 const STATES: Readonly<Record<State, string>> = { holds: 'Holds', 'breaks-down': 'Breaks down', undecided: 'Undecided' };

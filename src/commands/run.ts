@@ -18,6 +18,7 @@ import { type ProgressLine, progressLine } from './progress.ts';
 import { type FileWritten, runText } from './run-text.ts';
 import { listenForStop, type StopRequest } from './signals.ts';
 import type { Terminal } from './terminal.ts';
+import { unusedStudies } from './unused.ts';
 
 /** Simulates a case once and says what happened.
  *  @returns the exit code
@@ -34,7 +35,7 @@ export async function run(path: string, options: RunOptions, terminal: Terminal)
     const problem = failure ?? kept.failure;
     // with --json a problem is the one object on stdout; a person may still want to know what was found
     if (options.json && problem === null) terminal.out(printableJson(outcome));
-    if (!options.json && !options.quiet) terminal.out(textOf(loaded.case, outcome, kept.written, terminal));
+    if (!options.json && !options.quiet) terminal.out(textOf(loaded, outcome, kept.written, terminal));
     if (problem !== null) throw problem;
     if (stop.exitCode !== null && outcome.final.stop === 'interrupted') return stop.exitCode;
     return expectationMet(outcome, options, terminal) ? EXIT.done : EXIT.unexpected;
@@ -92,9 +93,10 @@ function keep(recording: Recording, outcome: Outcome): { readonly written: FileW
   }
 }
 
-function textOf(settings: Case, outcome: Outcome, written: FileWritten | null, terminal: Terminal): string {
+function textOf(loaded: LoadedCase, outcome: Outcome, written: FileWritten | null, terminal: Terminal): string {
+  const settings = loaded.case;
   const voltage = theoryVoltage(settings, outcome);
-  return runText({ settings, outcome, voltage, prospects: prospects(settings, voltage), written }, terminal);
+  return runText({ settings, outcome, voltage, prospects: prospects(settings, voltage), written, unused: unusedStudies(loaded) }, terminal);
 }
 
 /** The result file of a run, if one was asked for. */

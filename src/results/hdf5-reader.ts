@@ -33,14 +33,7 @@ const largestChunk = 2 ** 22;
 
 /** Opens a complete HDF5 file. @throws ResultFileError */
 export function openHdf5(path: string): Hdf5Reader {
-  const size = checkComplete(path);
-  if (size > largestFile) throw new ResultFileError('too-large', path, `is ${size} bytes long; at most ${largestFile} are read`);
-  const file = decoding(path, () => {
-    const bytes = readFileSync(path);
-    const whole = bytes.byteLength === bytes.buffer.byteLength;
-    // A small file is a slice of a pool of Node's: jsfive counts from the start of the buffer.
-    return new File((whole ? bytes.buffer : bytes.buffer.slice(bytes.byteOffset, bytes.byteOffset + bytes.byteLength)) as ArrayBuffer);
-  });
+  const { file, size } = openFile(path, largestFile);
   const names = new Set(decoding(path, () => file.keys));
 
   const damaged = (what: string): ResultFileError => new ResultFileError('damaged', path, `the file is damaged: ${what}`);
@@ -60,16 +53,7 @@ export function openHdf5(path: string): Hdf5Reader {
     if (declared.length !== shape.length || shape.some((length, axis) => length !== null && declared[axis] !== length)) {
       throw damaged(`${name} has the shape (${declared.join(', ')}), expected (${shape.map((length) => length ?? 'any').join(', ')})`);
     }
-    const count = product(declared);
-    const bytes = count * widths[dtype];
-    const chunk = found._dataobjects.chunks;
-    if (bytes > size * (chunk ? largestCompression : 1)) throw damaged(`${name} declares more values than the file can hold`);
-    if (chunk && !(product(chunk) <= largestChunk)) throw damaged(`${name} declares chunks of ${product(chunk)} values`);
-    const read = found.value;
-    if (read.length !== count) throw damaged(`${name} holds ${read.length} values, expected ${count}`);
-    // An indexed loop: array methods would skip the holes this looks for.
-    for (let i = 0; i < count; i++) if (typeof read[i] !== 'number') throw damaged(`${name} has values that were never written`);
-    return read as number[];
+    return storedNumbers(path, size, name, found, widths[dtype]);
   };
 
   return {
@@ -100,6 +84,34 @@ export function openHdf5(path: string): Hdf5Reader {
         return withoutPadding(value);
       }),
   };
+}
+
+/** A complete HDF5 file of at most `largest` bytes, with its size. @throws ResultFileError */
+export function openFile(path: string, largest: number): { readonly file: File; readonly size: number } {
+  const size = checkComplete(path);
+  if (size > largest) throw new ResultFileError('too-large', path, `is ${size} bytes long; at most ${largest} are read`);
+  const file = decoding(path, () => {
+    const bytes = readFileSync(path);
+    const whole = bytes.byteLength === bytes.buffer.byteLength;
+    // A small file is a slice of a pool of Node's: jsfive counts from the start of the buffer.
+    return new File((whole ? bytes.buffer : bytes.buffer.slice(bytes.byteOffset, bytes.byteOffset + bytes.byteLength)) as ArrayBuffer);
+  });
+  return { file, size };
+}
+
+/** Plain array of the values of a numeric dataset, once what it declares can be in a file of this size.
+ *  @param width  bytes of a value */
+export function storedNumbers(path: string, size: number, name: string, found: Dataset, width: number): number[] {
+  const damaged = (what: string): ResultFileError => new ResultFileError('damaged', path, `the file is damaged: ${what}`);
+  const count = product(found.shape);
+  const chunk = found._dataobjects.chunks;
+  if (count * width > size * (chunk ? largestCompression : 1)) throw damaged(`${name} declares more values than the file can hold`);
+  if (chunk && !(product(chunk) <= largestChunk)) throw damaged(`${name} declares chunks of ${product(chunk)} values`);
+  const read = found.value;
+  if (read.length !== count) throw damaged(`${name} holds ${read.length} values, expected ${count}`);
+  // An indexed loop: array methods would skip the holes this looks for.
+  for (let i = 0; i < count; i++) if (typeof read[i] !== 'number') throw damaged(`${name} has values that were never written`);
+  return read as number[];
 }
 
 /** Checks, by its first bytes alone, that this is an HDF5 file of 64-bit addressing and none of it is missing.
@@ -150,7 +162,7 @@ function cutShort(path: string, size: number, end?: number): ResultFileError {
 }
 
 /** Runs jsfive: silent on the console, and with every failure typed. */
-function decoding<T>(path: string, decode: () => T): T {
+export function decoding<T>(path: string, decode: () => T): T {
   const warn = console.warn;
   console.warn = () => {};
   try {
@@ -164,7 +176,7 @@ function decoding<T>(path: string, decode: () => T): T {
   }
 }
 
-function withoutPadding(text: string): string {
+export function withoutPadding(text: string): string {
   let end = text.length;
   while (end > 0 && text.charCodeAt(end - 1) === 0) end--;
   return text.slice(0, end);

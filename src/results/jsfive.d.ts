@@ -15,6 +15,7 @@ declare module 'jsfive' {
     readonly dtype: string | readonly unknown[];
     /** a plain array, flattened; chunks that were never written leave holes */
     readonly value: unknown[];
+    readonly attrs: Readonly<Record<string, unknown>>;
     /** not part of the documented interface: the chunk shape, or null when the data are contiguous */
     readonly _dataobjects: { readonly chunks: number[] | null };
   }
