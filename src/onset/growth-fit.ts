@@ -1,7 +1,11 @@
+import { expOfNegative } from '../numerics/exponential.ts';
+import { minimumBetween } from '../numerics/roots.ts';
+
 /** Fewest samples that a fit of three parameters is made from. */
 const LEAST_SAMPLES = 6;
-/** How finely λ is looked for before the search closes in. */
+/** How finely λ is looked for before the search closes in, and how closely it then does. */
 const LOOKS = 60;
+const RATE_PLACE = 1e-7;
 
 /** Least-squares fit of I = a + b e^{λt}, every sample weighted by its own size so that each decade counts alike.
  *
@@ -32,7 +36,7 @@ export function fitGrowth(t: readonly number[], current: readonly number[]): num
       best = lambda;
     }
   }
-  return Number.isFinite(least) ? minimum(remains, best / ratio, best * ratio) : null;
+  return Number.isFinite(least) ? minimumBetween(remains, best / ratio, best * ratio, RATE_PLACE) : null;
 }
 
 /** Σ ((a + b e^{λt})/I − 1)² at the best a and b; Infinity where these are not determined. */
@@ -45,7 +49,7 @@ function remainder(t: readonly number[], current: readonly number[], lambda: num
   let r2 = 0;
   for (let i = 0; i < t.length; i++) {
     const u = 1 / current[i];
-    const v = u * Math.exp(lambda * (t[i] - end));
+    const v = u * expOfNegative(lambda * (t[i] - end));
     s11 += u * u;
     s12 += u * v;
     s22 += v * v;
@@ -57,33 +61,6 @@ function remainder(t: readonly number[], current: readonly number[], lambda: num
   const a = (r1 * s22 - r2 * s12) / determinant;
   const b = (s11 * r2 - s12 * r1) / determinant;
   let sum = 0;
-  for (let i = 0; i < t.length; i++) sum += ((a + b * Math.exp(lambda * (t[i] - end))) / current[i] - 1) ** 2;
+  for (let i = 0; i < t.length; i++) sum += ((a + b * expOfNegative(lambda * (t[i] - end))) / current[i] - 1) ** 2;
   return sum;
-}
-
-/** Where f is smallest between two places with one valley between them, by golden section. */
-function minimum(f: (x: number) => number, from: number, to: number): number {
-  const golden = (Math.sqrt(5) - 1) / 2;
-  let low = from;
-  let high = to;
-  let x1 = high - golden * (high - low);
-  let x2 = low + golden * (high - low);
-  let f1 = f(x1);
-  let f2 = f(x2);
-  for (let k = 0; k < 80 && high - low > 1e-9 * high; k++) {
-    if (f1 < f2) {
-      high = x2;
-      x2 = x1;
-      f2 = f1;
-      x1 = high - golden * (high - low);
-      f1 = f(x1);
-    } else {
-      low = x1;
-      x1 = x2;
-      f1 = f2;
-      x2 = low + golden * (high - low);
-      f2 = f(x2);
-    }
-  }
-  return (low + high) / 2;
 }

@@ -1,5 +1,5 @@
+import { minimumBetween, rootBetween } from '../numerics/roots.ts';
 import { type Multiplication, SCANNED_FIELDS, uniformFeedback } from './multiplication.ts';
-import { minimumBetween, rootBetween } from './roots.ts';
 
 /** The voltages between which a gap sustains itself. */
 export interface Threshold {

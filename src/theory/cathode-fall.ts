@@ -1,6 +1,6 @@
+import { integral, minimumBetween, rootBetween } from '../numerics/roots.ts';
 import { VACUUM_PERMITTIVITY } from '../units/constants.ts';
 import { SCANNED_FIELDS } from './multiplication.ts';
-import { integral, minimumBetween, rootBetween } from './roots.ts';
 
 /** A cathode layer in which the field falls linearly from its value at the cathode to zero. */
 export interface CathodeLayer {

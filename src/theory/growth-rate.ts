@@ -1,5 +1,5 @@
+import { rootBetween } from '../numerics/roots.ts';
 import { exponentialRatio } from './feedback.ts';
-import { rootBetween } from './roots.ts';
 
 /** One way in which an avalanche makes the cathode emit again. */
 export interface FeedbackTerm {

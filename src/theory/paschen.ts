@@ -1,6 +1,6 @@
+import { minimumBetween } from '../numerics/roots.ts';
 import { threshold } from './breakdown-voltage.ts';
 import { type Multiplication, SCANNED_FIELDS, sustainingColumn } from './multiplication.ts';
-import { minimumBetween } from './roots.ts';
 
 /** A point of a Paschen curve. */
 export interface PaschenPoint {

@@ -1,7 +1,7 @@
+import { integral } from '../numerics/roots.ts';
 import { VACUUM_PERMITTIVITY } from '../units/constants.ts';
 import { exponentialRatio } from './feedback.ts';
 import { discountedDelay, discountedFeedback, type FeedbackTerm, growthRate } from './growth-rate.ts';
-import { integral } from './roots.ts';
 
 /** Time from a sudden overvoltage until the cathode emits a given multiple of its constant seed, without space charge.
  *  Γ(t)/Γ_seed → e^{λt}/(λ T) − 1/(q − 1), T = −∂(discounted feedback)/∂λ: the leading mode of the linear response, started by a
