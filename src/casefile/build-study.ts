@@ -80,7 +80,7 @@ function pressureFrom(input: HistoryInput['pressure'], gas: string | null, defau
 }
 
 function flowGas(name: string | null, defaults: Defaults): FlowGas {
-  const known = name !== null && Object.hasOwn(FLOW_GASES, name) ? FLOW_GASES[name as keyof typeof FLOW_GASES] : null;
+  const known = Object.values(FLOW_GASES).find((gas) => gas.name === name);
   if (known) return known;
   defaults.note(`history.pressure.bay: flows are those of air, as those of ${name ?? "the case's own gas"} are not known`);
   return FLOW_GASES.air;
@@ -126,7 +126,7 @@ function outsideFrom({ pressure, table, ascent }: OutsideInput): OutsideSettings
 }
 
 /** The supply voltage of largest magnitude [V], with its sign: positive makes the left electrode the cathode. */
-function highestVoltage(programme: Programme): number {
+export function highestVoltage(programme: Programme): number {
   const larger = (a: number, b: number): number => (Math.abs(b) > Math.abs(a) ? b : a);
   switch (programme.kind) {
     case 'step':

@@ -20,7 +20,7 @@ import { gases } from '../gases/index.ts';
 import type { ScanSettings, WindowSettings } from '../study.ts';
 import { surfaces, yieldFor } from '../surfaces/index.ts';
 import { type BuiltIns, buildCase } from './build.ts';
-import { buildScan, buildWindow } from './build-study.ts';
+import { buildScan, buildWindow, highestVoltage } from './build-study.ts';
 import type { DatasetReader } from './dataset.ts';
 import { Defaults, type DefaultUsed } from './defaults.ts';
 import { locate, parseSource, type SourceDocument, toPlain } from './document.ts';
@@ -30,7 +30,7 @@ import { problemsOf } from './issues.ts';
 import { applyOverrides } from './overrides.ts';
 import type { Plain } from './plain.ts';
 import { type PointReader, pointReader, scanProblems } from './points.ts';
-import type { Place, Problem } from './problem.ts';
+import { inOrder, type Place, type Problem } from './problem.ts';
 import { resolvedOf } from './resolved.ts';
 import type { ResolvedValue } from './resolved-study.ts';
 import { type CaseInput, caseSchemas } from './schema.ts';
@@ -122,9 +122,12 @@ export function readCase(
   const read = (point: Plain): ReturnType<PointReader> => {
     const again = run.safeParse(point, { reportInput: false });
     const missing = missingYields(point, builtIns, document);
-    if (!again.success) return { ok: false, problems: inOrder([...problemsOf(again.error.issues, run, point, document), ...missing]) };
+    if (!again.success) return { ok: false, problems: [...problemsOf(again.error.issues, run, point, document), ...missing] };
     if (missing.length > 0) return { ok: false, problems: missing };
-    return { ok: true, case: buildCase(again.data, fileTitle, builtIns, new Defaults()) };
+    const made = buildCase(again.data, fileTitle, builtIns, new Defaults());
+    if (scan?.find?.what === 'hold-off' && highestVoltage(made.supply.programme) === 0)
+      return { ok: false, problems: [nothingToScale(document)] };
+    return { ok: true, case: made };
   };
   const source = { base, scan, document, read };
   const at = pointReader(source);
@@ -141,6 +144,20 @@ export function readCase(
     resolved: resolvedOf(built, scan, window),
     tables: tablesOf(input),
     locate: (path) => locate(document, path === '' ? [] : path.split('.')),
+  };
+}
+
+/** A search for the highest voltage that holds, at a point whose supply stays at 0 V. */
+function nothingToScale(document: SourceDocument): Problem {
+  const path = ['scan', 'find', 'what'];
+  const expected = 'a supply.voltage that differs from 0 V at some time, to be scaled';
+  return {
+    code: 'inconsistent',
+    ...locate(document, path),
+    path: path.join('.'),
+    expected,
+    found: 'a supply at 0 V throughout',
+    nearest: null,
   };
 }
 
@@ -201,14 +218,6 @@ function tablesOf(input: CaseInput): TableUsed[] {
   if (typeof temperature === 'object') add('history.temperature.table', temperature.table);
   if (typeof voltage === 'object') add('history.voltage.table', voltage.table);
   return tables;
-}
-
-function inOrder(problems: readonly Problem[]): Problem[] {
-  const rank = (p: Problem): number => (p.line === null ? Number.POSITIVE_INFINITY : p.line * 1e6 + (p.column ?? 0));
-  return problems
-    .map((problem, i) => ({ problem, i }))
-    .sort((a, b) => (rank(a.problem) === rank(b.problem) ? a.i - b.i : rank(a.problem) - rank(b.problem)))
-    .map(({ problem }) => problem);
 }
 
 function baseName(file: string): string {

@@ -3,7 +3,7 @@ import type { Axis, ScanSettings } from '../study.ts';
 import { clip } from '../units/index.ts';
 import { locate, type SourceDocument } from './document.ts';
 import { getPlain, type Plain, setPlain } from './plain.ts';
-import type { Problem, ProblemCode } from './problem.ts';
+import { inOrder, type Problem, type ProblemCode } from './problem.ts';
 
 /** The case at one point of a scan, or why there is none.
  *  @param values  one SI value per axis, in their order */
@@ -41,7 +41,7 @@ export function pointReader({ base, scan, document, read }: PointSource): PointR
       const k = varies(problem.path);
       return k < 0 ? problem : { ...problem, ...locate(document, ['scan', 'vary', k]) };
     });
-    return { ok: false, problems };
+    return { ok: false, problems: inOrder(problems) };
   };
 }
 

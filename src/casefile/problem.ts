@@ -70,3 +70,12 @@ export function formatProblem(problem: Problem): string {
 export function escapeControls(text: string): string {
   return text.replace(/[\p{Cc}\u2028-\u202e\u2066-\u2069]/gu, (c) => `\\u${c.charCodeAt(0).toString(16).padStart(4, '0')}`);
 }
+
+/** Problems in the order of the file; those without a line last, as they came. */
+export function inOrder(problems: readonly Problem[]): Problem[] {
+  const rank = (p: Problem): number => (p.line === null ? Number.POSITIVE_INFINITY : p.line * 1e6 + (p.column ?? 0));
+  return problems
+    .map((problem, i) => ({ problem, i }))
+    .sort((a, b) => (rank(a.problem) === rank(b.problem) ? a.i - b.i : rank(a.problem) - rank(b.problem)))
+    .map(({ problem }) => problem);
+}

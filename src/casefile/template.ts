@@ -49,4 +49,30 @@ observe:
   currents: [10 nA, 1 uA, 100 uA]   # report when the conduction current first crosses each
 
 # numerics: { cells: 150, tolerance: 1e-3 }     # cells: default the program's choice
+
+# scan:                         # many gaps at once: \`gapwake scan\`
+#   vary:                       # any quantity or plain number of the case; several make a grid, or walk together with zip: true
+#     - { path: gas.pressure, from: 0.2 mbar, to: 20 mbar, points: 25, spacing: log }   # spacing: default linear
+#     - { path: supply.voltage.step, values: [300 V, 350 V, 400 V] }
+#   find: { what: hold-off, from: 150 V, to: 900 V }    # at each point; tolerance: default 0.1 %
+#   # find: { what: trip-delay, gap_energy: 1 mJ, from: 1 us, to: 1 s }
+#   # find: { what: series-resistance, from: 100 ohm, to: 100 Mohm }
+
+# history:                      # the pressure around the gap in time: \`gapwake window\`
+#   duration: 3 h               # default: that of the tables, if every entry is a table
+#   pressure:                   # one of bay, ascent, table, dataset
+#     bay:
+#       volume: 12 L
+#       start: 1013 hPa
+#       outside: { ascent: { from: 0 km, to: 35 km, rate: 5 m/s } }     # or { pressure: 0 Pa }, or { table: … }
+#       vents: [ { diameter: 5 mm, length: 2 mm, count: 4, discharge_coefficient: 0.7 } ]
+#       # pump: { speed: 50 L/s, base_pressure: 1e-6 mbar }
+#       # gas_load: 1e-4 mbar L/s
+#       # outgassing: [ { area: 0.4 m^2, rate_at_1h: 1e-8 Torr L/(s cm^2), exponent: 1.0 } ]
+#     # ascent: { from: 0 km, to: 35 km, rate: 5 m/s }
+#     # table: { file: bay.csv, time: t, pressure: p }
+#     # dataset: { file: log.h5, dataset: /bay/pressure, time: /bay/time }    # unit: and time_unit: where the file gives none
+#   temperature: 295 K          # or { table: … }; default gas.temperature
+#   voltage: 350 V              # while energised, or { table: … }; default the largest of supply.voltage
+#   margin: 1.5                 # a hold counts as marginal if this factor on the voltage breaks it down
 `;

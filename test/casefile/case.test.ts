@@ -319,11 +319,35 @@ describe('what ships with the reader', () => {
       /^( *)# ((?: {2})*(?:coefficients|ionisation|electron_mobility|ion_mobility|reference_temperature|right|electrons|current_limit|trip|initial_gap_voltage|numerics):)/gm,
       '$1$2',
     );
-    expect(full.match(/^ *# /gm)?.length).toBe(4); // two lines of introduction, the ramp and the table
-    const { case: c, defaults } = good(full);
+    // two lines of introduction, the ramp and the table; scan and history
+    const [gap, studies] = full.split(/(?=^# scan:)/m);
+    expect(gap.match(/^ *# /gm)?.length).toBe(4);
+    const { case: c, defaults } = good(gap);
     expect(c.supply.trip).not.toBeNull();
     expect(c.gas.coefficients.ionisation.status).toBe('given');
     expect(defaults).toEqual([]);
+    const all = good(gap + studies.replace(/^# /gm, ''));
+    expect(all.scan?.find?.what).toBe('hold-off');
+    expect(all.window?.history.pressure.kind).toBe('bay');
+    for (const more of ['find', 'pump', 'gas_load', 'outgassing'])
+      expect(
+        good(
+          gap +
+            studies
+              .replace(/^# /gm, '')
+              .replace(`# ${more}:`, `${more}:`)
+              .replace(/^ {2}find: .*hold-off.*/m, ''),
+        ).scan,
+      ).not.toBeNull();
+    for (const arm of ['ascent', 'table', 'dataset']) {
+      const other = studies
+        .replace(/^# /gm, '')
+        .replace(/^ {4}bay:\n( {6}.*\n)*/m, '')
+        .replace(`# ${arm}: {`, `${arm}: {`);
+      const set = { ok: true, values: Float64Array.of(1, 2), units: null } as const;
+      const sets = { 'log.h5:/bay/pressure': { ...set, units: 'Pa' }, 'log.h5:/bay/time': { ...set, units: 's' } };
+      expect(good(gap + other, [], { 'bay.csv': 't [s],p [Pa]\n0,1\n1,2\n' }, sets).window?.history.pressure.kind).toBe(arm);
+    }
   });
 
   it('the shipped JSON Schema is the one generated from the validator', () => {

@@ -1,4 +1,4 @@
-import type { Problem, ReadResult, TableReader } from '../../src/casefile/index.ts';
+import type { DatasetRead, DatasetReader, Problem, ReadResult, TableReader } from '../../src/casefile/index.ts';
 import { readCase } from '../../src/casefile/index.ts';
 
 /** A case without mistakes, one entry per line so that a test can point at it. */
@@ -35,16 +35,27 @@ export function files(contents: Readonly<Record<string, string>>): TableReader {
   return (name) => (Object.hasOwn(contents, name) ? { ok: true, text: contents[name] } : { ok: false, reason: 'no such file' });
 }
 
-export function read(text: string, overrides: readonly string[] = [], tables: Readonly<Record<string, string>> = {}): ReadResult {
-  return readCase(text, 'case.yaml', files(tables), overrides);
+/** Data sets by `file:path`. */
+export function datasets(contents: Readonly<Record<string, DatasetRead>>): DatasetReader {
+  return (file, name) => contents[`${file}:${name}`] ?? { ok: false, reason: `no ${name} in ${file}` };
+}
+
+export function read(
+  text: string,
+  overrides: readonly string[] = [],
+  tables: Readonly<Record<string, string>> = {},
+  sets: Readonly<Record<string, DatasetRead>> = {},
+): ReadResult {
+  return readCase(text, 'case.yaml', files(tables), overrides, datasets(sets));
 }
 
 export function good(
   text: string,
   overrides: readonly string[] = [],
   tables: Readonly<Record<string, string>> = {},
+  sets: Readonly<Record<string, DatasetRead>> = {},
 ): Extract<ReadResult, { ok: true }> {
-  const result = read(text, overrides, tables);
+  const result = read(text, overrides, tables, sets);
   if (!result.ok) throw new Error(JSON.stringify(result.problems, null, 1));
   return result;
 }
@@ -53,14 +64,35 @@ export function problems(
   text: string,
   overrides: readonly string[] = [],
   tables: Readonly<Record<string, string>> = {},
+  sets: Readonly<Record<string, DatasetRead>> = {},
 ): readonly Problem[] {
-  const result = read(text, overrides, tables);
+  const result = read(text, overrides, tables, sets);
   return result.ok ? [] : result.problems;
 }
 
 /** The only problem of a text. */
-export function problem(text: string, overrides: readonly string[] = [], tables: Readonly<Record<string, string>> = {}): Problem {
-  const all = problems(text, overrides, tables);
+export function problem(
+  text: string,
+  overrides: readonly string[] = [],
+  tables: Readonly<Record<string, string>> = {},
+  sets: Readonly<Record<string, DatasetRead>> = {},
+): Problem {
+  const all = problems(text, overrides, tables, sets);
   if (all.length !== 1) throw new Error(`${all.length} problems: ${JSON.stringify(all, null, 1)}`);
   return all[0];
+}
+
+/** The good case with entries to vary, one a line from line 20 on, and more of `scan` after them. */
+export function varied(entries: readonly string[], more = ''): string {
+  return `${GOOD}scan:\n  vary:\n${entries.map((entry) => `    - ${entry}\n`).join('')}${more}`;
+}
+
+/** The good case with a search at line 19. */
+export function searching(find: string): string {
+  return `${GOOD}scan:\n  find: ${find}\n`;
+}
+
+/** The good case with a pressure history from line 18 on; a duration unless told otherwise. */
+export function following(pressure: string, more = '  duration: 3 h\n'): string {
+  return `${GOOD}history:\n  pressure: ${pressure}\n${more}`;
 }
