@@ -15,8 +15,8 @@ interface Node {
   readonly failure: string | null;
 }
 
-/** Relative width of the first stretch looked at where nothing near has been simulated. */
-const FIRST_SPREAD = 0.02;
+/** Relative width of the first stretch looked at where nothing near has been simulated: theory is seldom wrong by more. */
+const FIRST_SPREAD = HOLD_OFF_TOLERANCE;
 /** How much of the ratio of simulation to theory may change over a factor e in density beyond the simulated ones. */
 const UNKNOWN_CHANGE = 0.01;
 /** Digits of a density that is simulated: densities closer than that are the same gap. */

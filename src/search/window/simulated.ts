@@ -1,9 +1,10 @@
 import type { Case } from '../../case.ts';
+import type { Outcome } from '../../onset/outcome.ts';
 import { limitsOf, prospects } from '../../theory/predict.ts';
-import type { Found, Simulate } from '../found.ts';
+import type { Simulate } from '../found.ts';
 import { holdOff } from '../hold-off.ts';
 import { capacitanceOf } from '../open-gap.ts';
-import { scaled } from '../scaled.ts';
+import { largestVoltage, scaled } from '../scaled.ts';
 import { alongPath, atDensity, programmeEnds, withYields } from './instant-case.ts';
 import type { Answer, HoldOffAnswer, HoldOffRequest, LagAnswer, LagRequest, Request } from './request.ts';
 import { timeToBreakdown } from './threshold.ts';
@@ -17,14 +18,12 @@ const LAGS = 4;
 const CHARGING_TIMES = 7;
 /** Ion transits that a run is given where nothing breaks down at any voltage. */
 const IDLE_TRANSITS = 100;
-/** How often a run that ends before breakdown is given five times as long. */
+/** How often a run that ends undecided is given five times as long. */
 const EXTENSIONS = 2;
-/** Ranges that are searched where the expected stretch does not hold the answer, as factors on the expectation: the first for what a seed or a long programme
- *  changes, the second for a pulse shorter than the lag or a resistance that starves the gap. */
-const RANGES = [
-  [0.75, 1.35],
-  [1 / 3, 30],
-] as const;
+/** How far from the expectation the answer is walked to, in ln V: what seeds, diffusion and slow programmes change. */
+const FURTHEST_WALK = 0.2;
+/** Range that is searched where walking does not find it, as factors on the expectation: a pulse shorter than the lag or a resistance that starves the gap. */
+const RANGE = { from: 0.3, to: 30 };
 
 /** Answers one request by simulating.
  *  @param settings  the case, as it was read
@@ -34,53 +33,81 @@ export function answerOf(settings: Case, request: Request, simulate: Simulate): 
   return request.kind === 'lag' ? lagOf(there, request, simulate) : holdOffOf(withYields(there, request.yields), request, simulate);
 }
 
-/** The hold-off voltage of a path. Two runs at the ends of the expected stretch confirm it; if they do not, it is searched for. */
-function holdOffOf(gap: Case, { expected, spread, polarity }: HoldOffRequest, simulate: Simulate): HoldOffAnswer {
-  const until = programmeEnds(gap) + CHARGING_TIMES * chargingTime(gap) + LAGS * slowestLag(gap, polarity * expected);
-  const given: Case = { ...gap, observe: { ...gap.observe, until } };
+/** The hold-off voltage of a path: by runs on either side of the expected one, which are usually enough; else by a search. */
+function holdOffOf(gap: Case, request: HoldOffRequest, simulate: Simulate): HoldOffAnswer {
+  const { expected, polarity } = request;
   let runs = 0;
   // a discharge that sustains itself without having settled does not hold
+  const unsettled = ({ verdict }: Outcome): boolean => verdict.state === 'undecided' && verdict.self_sustaining;
+  const enough = (outcome: Outcome): boolean => outcome.verdict.state !== 'undecided' || unsettled(outcome);
   const decided: Simulate = (settings) => {
-    runs++;
-    const outcome = simulate(settings);
-    const { verdict } = outcome;
-    return verdict.state === 'undecided' && verdict.self_sustaining
-      ? { ...outcome, verdict: { ...verdict, state: 'breaks-down' } }
-      : outcome;
+    const { outcome, runs: made } = inTime(gap, settings, polarity * largestVoltage(settings.supply), simulate, enough);
+    runs += made;
+    return unsettled(outcome) ? { ...outcome, verdict: { ...outcome.verdict, state: 'breaks-down' } } : outcome;
   };
-  const answer = (lower: number | null, upper: number | null, note: string | null): HoldOffAnswer => ({
-    kind: 'hold-off',
-    lower,
-    upper,
-    note,
-    runs,
-  });
-
-  if (spread <= HOLD_OFF_TOLERANCE) {
-    const [lower, upper] = [expected * Math.exp(-spread / 2), expected * Math.exp(spread / 2)];
-    const at = (voltage: number): string => decided(scaled(given, voltage)).verdict.state;
-    if (at(lower) === 'holds' && at(upper) === 'breaks-down') return answer(lower, upper, null);
-  }
-  let found: Found | null = null;
-  for (const [from, to] of RANGES) {
-    found = holdOff(given, { from: from * expected, to: to * expected, tolerance: HOLD_OFF_TOLERANCE }, decided);
-    if (found.state === 'found') break;
-  }
-  return answer(found?.lower ?? null, found?.upper ?? null, found?.note ?? null);
+  const near = walk(request, (voltage) => decided(scaled(gap, voltage)).verdict.state === 'holds');
+  if (near !== null) return { kind: 'hold-off', ...near, note: null, runs };
+  const until = timeFor(gap, polarity * expected);
+  const range = { from: RANGE.from * expected, to: RANGE.to * expected, tolerance: HOLD_OFF_TOLERANCE };
+  const { lower, upper, note } = holdOff({ ...gap, observe: { ...gap.observe, until } }, range, decided);
+  return { kind: 'hold-off', lower, upper, note, runs };
 }
 
-/** The lag of a gap that is expected to break down, along one path. */
-function lagOf(gap: Case, { voltage, polarity }: LagRequest, simulate: Simulate): LagAnswer {
-  const driven = scaled(gap, voltage);
-  const threshold = limitsOf(gap, polarity).threshold.breakdown ?? 0;
-  // behind a resistance the gap is charged past its threshold before the lag begins
-  const charging = voltage > threshold ? Math.min(CHARGING_TIMES, 1.2 * Math.log(voltage / (voltage - threshold))) : CHARGING_TIMES;
-  let until = programmeEnds(driven) + charging * chargingTime(driven) + LAGS * slowestLag(gap, polarity * voltage);
-  for (let runs = 1; ; runs++, until *= 5) {
-    const { verdict, onset } = simulate({ ...driven, observe: { ...driven.observe, until } });
-    const ended = onset.formative_lag_s !== null || verdict.state === 'holds' || runs > EXTENSIONS;
-    if (ended) return { kind: 'lag', lag: onset.formative_lag_s, runs };
+/** Walks outwards from the expected stretch until its lower end holds and its upper end does not, then halves it; null when that is too far. */
+function walk(
+  { expected, spread }: HoldOffRequest,
+  holds: (voltage: number) => boolean,
+): { readonly lower: number; readonly upper: number } | null {
+  const at = (log: number): number => expected * Math.exp(log);
+  let lower = -spread / 2;
+  let upper = spread / 2;
+  let reached = false;
+  for (let step = spread; !holds(at(lower)); lower -= step, step *= 2) {
+    if (lower < -FURTHEST_WALK) return null;
+    upper = lower;
+    reached = true;
   }
+  for (let step = spread; !reached && holds(at(upper)); upper += step, step *= 2) {
+    if (upper > FURTHEST_WALK) return null;
+    lower = upper;
+  }
+  while (upper - lower > HOLD_OFF_TOLERANCE * 1.001) {
+    const middle = (lower + upper) / 2;
+    if (holds(at(middle))) lower = middle;
+    else upper = middle;
+  }
+  return { lower: at(lower), upper: at(upper) };
+}
+
+/** Runs for as long as it takes at this voltage, which is the shorter the higher it is; for longer, a few times, while that is not enough. */
+function inTime(
+  gap: Case,
+  settings: Case,
+  voltage: number,
+  simulate: Simulate,
+  enough: (outcome: Outcome) => boolean,
+): { readonly outcome: Outcome; readonly runs: number } {
+  let until = timeFor(gap, voltage);
+  for (let runs = 1; ; runs++, until *= 5) {
+    const outcome = simulate({ ...settings, observe: { ...settings.observe, until } });
+    if (enough(outcome) || runs > EXTENSIONS) return { outcome, runs };
+  }
+}
+
+/** Time for a path to break down when its programme reaches a voltage, a few lags included [s]. */
+function timeFor(gap: Case, voltage: number): number {
+  const threshold = limitsOf(gap, Math.sign(voltage)).threshold.breakdown ?? 0;
+  const over = Math.abs(voltage) / threshold;
+  // behind a resistance the gap is charged past its threshold before the lag begins
+  const charging = over > 1 ? Math.min(CHARGING_TIMES, 1.2 * Math.log(over / (over - 1))) : CHARGING_TIMES;
+  return programmeEnds(gap) + charging * gap.supply.seriesResistance * capacitanceOf(gap) + LAGS * slowestLag(gap, voltage);
+}
+
+/** The lag of a gap that is expected to break down, along one path; null where a weak supply holds it at its threshold, so that no space charge forms. */
+function lagOf(gap: Case, { voltage, polarity }: LagRequest, simulate: Simulate): LagAnswer {
+  const enough = ({ onset, verdict }: Outcome): boolean => onset.formative_lag_s !== null || verdict.state !== 'undecided';
+  const { outcome, runs } = inTime(gap, scaled(gap, voltage), polarity * voltage, simulate, enough);
+  return { kind: 'lag', lag: outcome.onset.formative_lag_s, runs };
 }
 
 /** The longest lag that matters near a voltage [s]: by theory, just above it, or just above threshold where that is higher. */
@@ -89,9 +116,4 @@ function slowestLag(gap: Case, voltage: number): number {
   const threshold = limitsOf(gap, sign).threshold.breakdown ?? 0;
   const least = Math.max(Math.abs(voltage), threshold) * (1 + HOLD_OFF_TOLERANCE / 2);
   return timeToBreakdown(gap, sign * least) ?? IDLE_TRANSITS * (prospects(gap, voltage).ionTransit ?? 0);
-}
-
-/** Time constant with which the gap and what is across it charge through the series resistance [s]. */
-function chargingTime(settings: Case): number {
-  return settings.supply.seriesResistance * capacitanceOf(settings);
 }
