@@ -1,15 +1,17 @@
 import type { Case } from '../case.ts';
 import type { Outcome } from '../onset/outcome.ts';
 import { polaritiesOf } from '../onset/polarity.ts';
-import { percent, roughly, volts } from '../onset/words.ts';
+import { percent, roughly } from '../onset/words.ts';
+import type { SimulationFailure } from '../simulate.ts';
 import { Voltage } from '../supply/programme.ts';
 import { prospects } from '../theory/predict.ts';
 import { TOWNSEND } from '../units/constants.ts';
+import { formatQuantity } from '../units/format.ts';
 import type { Answer, Found, SearchRange, Simulate } from './found.ts';
 import { lowestChange, type Result } from './lowest-change.ts';
 import { crossingBetween, type Measure } from './narrow.ts';
-import { driveOf, isUnfinished } from './open-gap.ts';
-import { changesOf, Runs, type Sample } from './runs.ts';
+import { driveOf, isUnfinished, STILL_CHARGING } from './open-gap.ts';
+import { changesOf, failed, inItsOwnWords, type Judgement, Runs, type Sample } from './runs.ts';
 import { largestVoltage, scaled } from './scaled.ts';
 import { sweepPoints } from './sweep.ts';
 
@@ -66,7 +68,7 @@ export function holdOff(settings: Case, range: SearchRange, simulate: Simulate):
   const runs = new Runs(
     {
       settings: (voltage) => scaled(settings, voltage),
-      answer: (outcome, derived, failed) => answerOf(outcome, derived, failed, tolerance),
+      judge: (outcome, derived, failure) => judge(outcome, derived, failure, tolerance),
     },
     simulate,
   );
@@ -76,7 +78,7 @@ export function holdOff(settings: Case, range: SearchRange, simulate: Simulate):
 
   const top = topEndsAt(scaled(settings, to));
   const measures = untilMatters(scaled(settings, theory ?? to)) ? [growth, promptness(0)] : [promptness(1 / top)];
-  const result = lowestChange(runs, tolerance, measures, volts);
+  const result = lowestChange(runs, tolerance, measures, (voltage) => formatQuantity(voltage, 'V', 5));
   const { lower, upper } = result;
   if (lower === null || upper === null) return answer(result, runs, theory, changes);
   const likely = crossingBetween(runs, lower, upper, measures);
@@ -113,12 +115,13 @@ function theoryOf(settings: Case): number | null {
   }, null);
 }
 
-function answerOf(outcome: Outcome, settings: Case, failed: boolean, tolerance: number): Answer {
+function judge(outcome: Outcome, settings: Case, failure: SimulationFailure | null, tolerance: number): Judgement {
   const { state } = outcome.verdict;
-  if (state === 'breaks-down' || failed) return state === 'breaks-down' ? state : 'undecided';
+  if (state === 'breaks-down') return state;
+  if (failure !== null) return failed(failure);
   const drive = driveOf(settings);
-  if (state === 'undecided') return firesOverLongerPath(outcome, settings, drive) ? 'breaks-down' : 'undecided';
-  return isUnfinished(drive, tolerance) ? 'undecided' : 'holds';
+  if (state === 'undecided') return firesOverLongerPath(outcome, settings, drive) ? 'breaks-down' : inItsOwnWords(outcome);
+  return isUnfinished(drive, tolerance) ? STILL_CHARGING : 'holds';
 }
 
 /** Did the voltage reach that of a longer path which breaks down below the gap itself? */

@@ -48,7 +48,6 @@ function withoutBreakdown(samples: readonly Sample[], name: (value: number) => s
 }
 
 /** Where and why a run decided nothing, one clause. */
-export function whyUndecided({ value, failure, outcome }: Sample, name: (value: number) => string): string {
-  const why = failure === null ? outcome.verdict.reason.replace(/\.$/, '') : `the run failed: ${failure.message}`;
-  return `undecided at ${name(value)}: ${why}`;
+export function whyUndecided({ value, doubt }: Sample, name: (value: number) => string): string {
+  return `undecided at ${name(value)}: ${doubt}`;
 }

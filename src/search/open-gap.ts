@@ -3,6 +3,7 @@ import { followOpenGap } from '../onset/highest-voltage.ts';
 import { Circuit } from '../supply/circuit.ts';
 import { OpenGap } from '../supply/open-gap.ts';
 import { VACUUM_PERMITTIVITY } from '../units/constants.ts';
+import type { Judgement } from './runs.ts';
 
 /** C_p + C_gap [F]. */
 export function capacitanceOf({ gap, supply }: Case): number {
@@ -42,3 +43,6 @@ export function driveOf(settings: Case): Drive {
 export function isUnfinished({ largest, later }: Drive, share: number): boolean {
   return later > (1 + share) * largest;
 }
+
+/** What an unfinished run leaves open. */
+export const STILL_CHARGING: Judgement = { doubt: 'the run ends before the gap has been driven to its full voltage: extend observe.until' };

@@ -10,16 +10,21 @@ export interface Sample {
   /** of a failed run: up to its last good state */
   readonly outcome: Outcome;
   readonly answer: Answer;
+  /** why it is undecided, a clause; null where it is not */
+  readonly doubt: string | null;
   /** why the run could not be completed; null where it could */
   readonly failure: SimulationFailure | null;
 }
+
+/** An answer, and where there is none the reason, as a clause. */
+export type Judgement = 'holds' | 'breaks-down' | { readonly doubt: string };
 
 /** What a search makes of its case and of an outcome. */
 export interface Question {
   /** the case with the searched quantity at this value */
   settings(value: number): Case;
-  /** @param failed whether the run ended as a failure; `outcome` is then what was found up to its last good state */
-  answer(outcome: Outcome, settings: Case, failed: boolean): Answer;
+  /** @param failure of a run that could not be completed; `outcome` is then what was found up to its last good state */
+  judge(outcome: Outcome, settings: Case, failure: SimulationFailure | null): Judgement;
 }
 
 /** The runs of one search: each value is simulated once, failures are kept as undecided. */
@@ -51,7 +56,9 @@ export class Runs {
     if (known !== undefined) return known;
     const settings = this.#question.settings(value);
     const { outcome, failure } = this.once(settings);
-    const sample = { value, settings, outcome, failure, answer: this.#question.answer(outcome, settings, failure !== null) };
+    const judgement = this.#question.judge(outcome, settings, failure);
+    const answer = typeof judgement === 'string' ? judgement : 'undecided';
+    const sample: Sample = { value, settings, outcome, failure, answer, doubt: typeof judgement === 'string' ? null : judgement.doubt };
     const after = this.#samples.findIndex((s) => s.value > value);
     this.#samples.splice(after < 0 ? this.#samples.length : after, 0, sample);
     return sample;
@@ -78,6 +85,16 @@ export class Runs {
     const last = this.#samples.at(-1);
     if (last?.failure && this.#samples.every((s) => s.failure !== null)) throw last.failure;
   }
+}
+
+/** What a failed run leaves open. */
+export function failed(failure: SimulationFailure): Judgement {
+  return { doubt: `the run failed: ${failure.message}` };
+}
+
+/** What a run gives as its own reason, as a clause. */
+export function inItsOwnWords({ verdict }: Outcome): Judgement {
+  return { doubt: verdict.reason.replace(/\.$/, '') };
 }
 
 /** Neighbours whose answers differ, rising. */

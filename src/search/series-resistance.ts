@@ -1,13 +1,14 @@
 import type { Case } from '../case.ts';
 import type { Outcome } from '../onset/outcome.ts';
 import { polaritiesOf } from '../onset/polarity.ts';
+import type { SimulationFailure } from '../simulate.ts';
 import { Voltage } from '../supply/programme.ts';
 import { formatQuantity } from '../units/format.ts';
-import type { Answer, Found, SearchRange, Simulate } from './found.ts';
+import type { Found, SearchRange, Simulate } from './found.ts';
 import { type Result, whyUndecided } from './lowest-change.ts';
 import { narrow } from './narrow.ts';
-import { driveOf, isUnfinished } from './open-gap.ts';
-import { changesOf, Runs, type Sample } from './runs.ts';
+import { driveOf, isUnfinished, STILL_CHARGING } from './open-gap.ts';
+import { changesOf, failed, inItsOwnWords, type Judgement, Runs, type Sample } from './runs.ts';
 import { sweepPoints } from './sweep.ts';
 
 /** How far above the answer no run may end self-sustained. */
@@ -24,7 +25,7 @@ const SWEEP_POINTS = 25;
  *  gap's voltage repeats there under a supply that stays, when it left the range
  *  of the model as an arc would, or when it broke down, has not died out, and the supply can lift the gap above its breakdown voltage
  *  again: between two pulses a discharge does not sustain itself, and yet comes back. A run that ends before the gap has been charged
- *  to the supply's voltage decides nothing. No closed form: `theory` is null.
+ *  to the supply's voltage, or before a discharge has died out, decides nothing. No closed form: `theory` is null.
  *
  *  @param range [ohm]
  *  @throws SimulationFailure when every run failed */
@@ -33,7 +34,7 @@ export function seriesResistance(settings: Case, range: SearchRange, simulate: S
   const runs = new Runs(
     {
       settings: (seriesResistance) => ({ ...settings, supply: { ...settings.supply, seriesResistance } }),
-      answer: (outcome, derived, failed) => answerOf(outcome, derived, failed, tolerance),
+      judge: (outcome, derived, failure) => judge(outcome, derived, failure, tolerance),
     },
     simulate,
   );
@@ -76,9 +77,13 @@ function leastQuiet(runs: Runs, to: number, tolerance: number): Result {
     const note = `the lowest resistance of the range does already; the next that does not is ${ohms(next?.value ?? Infinity)}`;
     return { state: 'found', lower: null, upper: samples[0], note };
   }
-  const below = samples.slice(0, start).findLast((s) => s.answer === 'breaks-down');
-  if (below === undefined) return { state: 'undecided', lower: null, upper: samples[start], note: whyUndecided(samples[start - 1], ohms) };
-  const bracket = narrow(runs, below, samples[start], tolerance, []);
+  const lower = samples.slice(0, start).findLast((s) => s.answer === 'breaks-down') ?? null;
+  const below = samples.slice(0, start).findLast((s) => s.answer !== 'undecided');
+  // undecided right above a quiet one: the change may lie on either side of what is undecided
+  if (lower === null || below !== lower) {
+    return { state: 'undecided', lower, upper: samples[start], note: whyUndecided(samples[start - 1], ohms) };
+  }
+  const bracket = narrow(runs, lower, samples[start], tolerance, []);
   const doubtful = runs.between(bracket.lower.value, bracket.upper.value).find((s) => s.answer === 'undecided');
   return {
     state: bracket.narrow ? 'found' : 'undecided',
@@ -94,17 +99,17 @@ function isQuietFrom(samples: readonly Sample[], i: number): boolean {
   return samples.every((s, k) => k < i || s.value > end || s.answer === 'holds');
 }
 
-function answerOf(outcome: Outcome, settings: Case, failed: boolean, tolerance: number): Answer {
+function judge(outcome: Outcome, settings: Case, failure: SimulationFailure | null, tolerance: number): Judgement {
   const { verdict, final } = outcome;
-  if (failed) return 'undecided';
+  if (failure !== null) return failed(failure);
   if (verdict.self_sustaining || repeatsByItself(outcome, settings) || final.stop === 'model-limit') return 'breaks-down';
+  if (verdict.state === 'undecided') return inItsOwnWords(outcome);
   const drive = driveOf(settings);
-  if (verdict.state === 'undecided') return 'undecided';
-  if (verdict.state === 'holds') return isUnfinished(drive, tolerance) ? 'undecided' : 'holds';
+  if (verdict.state === 'holds') return isUnfinished(drive, tolerance) ? STILL_CHARGING : 'holds';
   if (final.stop !== 'until') return 'holds';
   const later = Math.max(drive.later, Math.abs(final.gap_voltage_V));
   const firesAgain = polaritiesOf(settings, later, -later).some((p) => p.breakdown !== null && later >= p.breakdown);
-  return firesAgain ? 'breaks-down' : 'holds';
+  return firesAgain ? 'breaks-down' : { doubt: 'the run ends before the discharge has died out or settled: extend observe.until' };
 }
 
 /** Does the gap's voltage repeat at the end although the supply's does not change any more? */

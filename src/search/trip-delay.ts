@@ -1,11 +1,12 @@
 import type { Case } from '../case.ts';
 import type { Outcome } from '../onset/outcome.ts';
 import { seconds } from '../onset/words.ts';
-import type { Answer, Found, SearchRange, Simulate } from './found.ts';
+import type { SimulationFailure } from '../simulate.ts';
+import type { Found, SearchRange, Simulate } from './found.ts';
 import { lowestChange, type Result } from './lowest-change.ts';
 import type { Measure } from './narrow.ts';
 import { capacitanceOf } from './open-gap.ts';
-import { changesOf, Runs } from './runs.ts';
+import { changesOf, failed, inItsOwnWords, type Judgement, Runs } from './runs.ts';
 import { sweepPoints } from './sweep.ts';
 
 /** The coarse sweep: neighbours at most a decade apart, with at most so many points. */
@@ -15,9 +16,9 @@ const SWEEP_POINTS = 12;
 /** Trip delay: the longest that keeps the energy into the gap below `gapEnergy`, below the lowest change. `value` and `lower` stayed
  *  below it, `upper` reached it.
  *
- *  What counts is the energy of the whole discharge. A run that ends before its trip has acted, or with charge still stored across the
- *  gap and a discharge on, has not shown all of it: it counts as staying below only if the stored energy cannot make up the
- *  difference, and decides nothing otherwise. No closed form: `theory` is null.
+ *  What counts is the energy of the whole discharge. A run that ends before its trip has acted has not shown all of it; one that ends
+ *  after it, with charge left across the gap, counts as staying below if the energy so stored cannot make up the difference. A
+ *  discharge that stands without tripping reaches any energy. No closed form: `theory` is null.
  *
  *  @param range [s] with `gapEnergy` [J]
  *  @throws SimulationFailure when every run failed */
@@ -28,7 +29,7 @@ export function tripDelay(settings: Case, range: SearchRange & { readonly gapEne
   const runs = new Runs(
     {
       settings: (delay) => ({ ...settings, supply: { ...settings.supply, trip: { ...trip, delay } } }),
-      answer: (outcome, derived, failed) => answerOf(outcome, derived, failed, gapEnergy),
+      judge: (outcome, derived, failure) => judge(outcome, derived, failure, gapEnergy),
     },
     simulate,
   );
@@ -56,13 +57,17 @@ function found(result: Result, runs: number, changes: Found['changes']): Found {
   };
 }
 
-function answerOf(outcome: Outcome, settings: Case, failed: boolean, gapEnergy: number): Answer {
+function judge(outcome: Outcome, settings: Case, failure: SimulationFailure | null, gapEnergy: number): Judgement {
   const { energy, final, verdict } = outcome;
   if (energy.gap_J >= gapEnergy) return 'breaks-down';
-  if (failed || final.stop === 'model-limit' || final.stop === 'interrupted') return 'undecided';
-  // nothing more goes into a gap that has died out; one that never broke down takes the seed's current alone
-  if (final.stop !== 'until' || verdict.state === 'holds') return 'holds';
-  if (energy.after_trip_J === null) return 'undecided';
-  const stored = 0.5 * capacitanceOf(settings) * final.gap_voltage_V ** 2;
-  return energy.gap_J + stored < gapEnergy ? 'holds' : 'undecided';
+  if (failure !== null) return failed(failure);
+  if (verdict.state === 'holds' || final.stop === 'died-out' || final.stop === 'tripped-out') return 'holds';
+  // a discharge that stands takes any energy in time: its trip will never act, or the run would not have ended
+  if (final.stop === 'steady') return verdict.self_sustaining ? 'breaks-down' : 'holds';
+  if (verdict.state === 'undecided') return inItsOwnWords(outcome);
+  if (final.stop === 'until' && energy.after_trip_J !== null) {
+    const stored = 0.5 * capacitanceOf(settings) * final.gap_voltage_V ** 2;
+    return energy.gap_J + stored < gapEnergy ? 'holds' : { doubt: 'the run ends before the discharge does: extend observe.until' };
+  }
+  return { doubt: 'the run ends before the trip has acted and before the energy is reached' };
 }
