@@ -1,4 +1,4 @@
-import { Command, CommanderError, Option } from 'commander';
+import { Command, CommanderError, InvalidArgumentError, Option } from 'commander';
 import { VERSION } from '../version.ts';
 import { EXIT } from './exit-codes.ts';
 import { Failure, problemWithoutPlace } from './failure.ts';
@@ -118,6 +118,34 @@ function programOf(terminal: Terminal, done: (exitCode: number) => void): Comman
       done(await run(path, options, terminal));
     });
 
+  program
+    .command('scan')
+    .argument('<case>', 'case file (YAML) with a scan')
+    .description('every point of a scan, in parallel; goes on where it stopped')
+    .option('-o, --output <file.h5>', 'the result (default: <case>.scan.h5 beside the case); replaces an older result, nothing else')
+    .addOption(setOption())
+    .option('--csv <file.csv>', 'also write the table of headlines; replaces an older such table, nothing else')
+    .option('--json', 'one JSON object on stdout')
+    .option('--quiet', 'print problems only')
+    .addOption(new Option('--expect <verdict>', 'exit with 1 when a point has another verdict').choices(['holds', 'breaks-down']))
+    .addOption(workersOption())
+    .addOption(
+      new Option('--plan', 'count the points, show the first, estimate the time; write nothing').conflicts([
+        'restart',
+        'expect',
+        'csv',
+        'output',
+      ]),
+    )
+    .addOption(shardOption().conflicts(['gather']))
+    .addOption(new Option('--gather <files.h5...>', 'join the files of all shards into the result').conflicts(['plan']))
+    .option('--restart', 'delete what is unfinished or finished, and start anew')
+    .helpOption('-h, --help', 'print this help')
+    .action(async (path: string, options: ScanOptions) => {
+      const { scan } = await import('./scan.ts');
+      done(await scan(path, options, terminal));
+    });
+
   return program;
 }
 
@@ -137,6 +165,43 @@ export interface RunOptions {
   readonly expect?: 'holds' | 'breaks-down';
 }
 
+export interface ScanOptions {
+  readonly output?: string;
+  readonly set: readonly string[];
+  readonly csv?: string;
+  readonly json?: boolean;
+  readonly quiet?: boolean;
+  readonly expect?: 'holds' | 'breaks-down';
+  readonly workers?: number;
+  readonly plan?: boolean;
+  readonly shard?: { readonly k: number; readonly n: number };
+  readonly gather?: readonly string[];
+  readonly restart?: boolean;
+}
+
+const MOST_WORKERS = 1024;
+const MOST_SHARDS = 1_000_000;
+
+function workersOption(): Option {
+  return new Option('--workers <n>', 'points computed at the same time')
+    .default(undefined, 'all cores')
+    .argParser((text: string): number => {
+      const workers = /^[0-9]{1,4}$/.test(text) ? Number(text) : 0;
+      if (workers < 1 || workers > MOST_WORKERS) throw new InvalidArgumentError(`Expected a whole number from 1 to ${MOST_WORKERS}.`);
+      return workers;
+    });
+}
+
+function shardOption(): Option {
+  return new Option('--shard <k/n>', 'only the k-th of n equal shares, into <case>.scan.shard-k-of-n.h5').argParser((text: string) => {
+    const [, k, n] = (/^([0-9]{1,7})\/([0-9]{1,7})$/.exec(text) ?? []).map(Number);
+    if (k === undefined || n === undefined || k < 1 || k > n || n > MOST_SHARDS) {
+      throw new InvalidArgumentError('Expected k/n with k from 1 to n, as in 3/8.');
+    }
+    return { k, n };
+  });
+}
+
 function setOption(): Option {
   return new Option('--set <path=value>', 'change an entry, as in gas.pressure="2 Torr"; an empty value or null removes it; repeatable')
     .argParser((value: string, before: string[]) => [...before, value])
@@ -149,6 +214,8 @@ Examples:
   gapwake check gap.yaml                  what it means and what theory expects
   gapwake run gap.yaml -o gap.h5          whether it holds, and what if not
   gapwake run gap.yaml --set supply.voltage.step="500 V" --expect holds
+  gapwake scan gap.yaml --plan            how many points, and how long it would take
+  gapwake scan gap.yaml --csv gap.csv     all of them; after Ctrl-C it goes on there
 
 Exit codes: 0 done, 1 --expect not met, 2 wrong input, 3 a simulation could not
 be completed, 4 a file could not be read or written, 70 internal fault,

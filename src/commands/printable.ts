@@ -9,7 +9,12 @@ export function printable(text: string): string {
 /** JSON of a value, two spaces deep, with a line end. The same characters are escaped as in {@link printable}: it is the same object,
  *  and a terminal that shows it obeys nothing in it. Non-finite numbers are null. */
 export function printableJson(value: unknown): string {
-  return `${JSON.stringify(value, null, 2).replace(UNSAFE_IN_JSON, escapeCharacter)}\n`;
+  return `${printableJsonText(JSON.stringify(value, null, 2))}\n`;
+}
+
+/** JSON that is there already, escaped as {@link printableJson} does. */
+export function printableJsonText(json: string): string {
+  return json.replace(UNSAFE_IN_JSON, escapeCharacter);
 }
 
 /** Cc: control characters; the rest: line separators and characters that change the writing direction */

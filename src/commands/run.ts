@@ -13,6 +13,7 @@ import type { RunOptions } from './cli.ts';
 import { coefficientsUsed } from './coefficients.ts';
 import { EXIT } from './exit-codes.ts';
 import { Failure, problemWithoutPlace } from './failure.ts';
+import { fileFailure } from './file-failure.ts';
 import { printable, printableJson } from './printable.ts';
 import { type ProgressLine, progressLine } from './progress.ts';
 import { type FileWritten, runText } from './run-text.ts';
@@ -158,15 +159,6 @@ function expectationMet({ verdict }: Outcome, { expect }: RunOptions, terminal: 
   if (expect === undefined || verdict.state === expect) return true;
   terminal.err(`gapwake: expected ${expect}, the verdict is ${verdict.state}\n`);
   return false;
-}
-
-function fileFailure(error: ResultFileError): Failure {
-  const { path, code, message } = error;
-  return new Failure(
-    EXIT.file,
-    [`gapwake: ${printable(path)}: ${printable(message)}`],
-    [problemWithoutPlace(code, path, 'a place where the result can be written', message)],
-  );
 }
 
 function simulationFailure(path: string, error: SimulationFailure): Failure {

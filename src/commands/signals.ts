@@ -4,6 +4,8 @@ import { EXIT } from './exit-codes.ts';
 export interface StopRequest {
   /** the exit code that the signal asks for; null while there was none */
   readonly exitCode: number | null;
+  /** aborted by the first signal, at once */
+  readonly signal: AbortSignal;
   /** Gives the signals back to the system. */
   release(): void;
 }
@@ -18,6 +20,7 @@ const SAME_REQUEST = 150;
  *  The note is taken only while the event loop runs: a long computation must yield to it. */
 export function listenForStop(): StopRequest {
   let exitCode: number | null = null;
+  const wish = new AbortController();
   let sameRequest: NodeJS.Timeout | undefined;
   const stopListening = (): void => {
     for (const signal of Object.keys(CODES)) process.off(signal, note);
@@ -25,6 +28,7 @@ export function listenForStop(): StopRequest {
   const note = (signal: NodeJS.Signals): void => {
     if (exitCode !== null) return;
     exitCode = CODES[signal] ?? EXIT.interrupted;
+    wish.abort();
     sameRequest = setTimeout(stopListening, SAME_REQUEST).unref();
   };
   for (const signal of Object.keys(CODES)) process.on(signal, note);
@@ -32,6 +36,7 @@ export function listenForStop(): StopRequest {
     get exitCode() {
       return exitCode;
     },
+    signal: wish.signal,
     release: () => {
       clearTimeout(sameRequest);
       stopListening();

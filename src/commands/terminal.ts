@@ -6,6 +6,8 @@ type Style = (text: string) => string;
 export interface Terminal {
   /** to stdout: what was asked for, and nothing else */
   out(text: string): void;
+  /** Resolves when stdout can take more: whoever writes much waits for it, so that it is not all held in memory. */
+  drained?(): Promise<void>;
   /** to stderr: problems and progress */
   err(text: string): void;
   /** characters in a line of stdout, at most 80 */
@@ -31,6 +33,18 @@ export function processTerminal(): Terminal {
   const colours = pc.createColors(!env.NO_COLOR && ((stdout.isTTY === true && !dumb) || forced));
   return {
     out: (text) => void stdout.write(text),
+    drained: () => {
+      if (!stdout.writableNeedDrain) return Promise.resolve();
+      return new Promise((resolve) => {
+        // closed: nobody reads any more
+        const events = ['drain', 'close', 'error'] as const;
+        const done = (): void => {
+          for (const event of events) stdout.off(event, done);
+          resolve();
+        };
+        for (const event of events) stdout.on(event, done);
+      });
+    },
     err: (text) => void stderr.write(text),
     width: clamp(stdout.columns),
     seen: stdout.isTTY === true,

@@ -12,8 +12,8 @@ import type { Dataset, File } from 'h5wasm/node';
 export interface Hdf5Writer {
   /** Text attribute of the file or, with `dataset`, of one of its datasets; at most 32 kB. */
   attribute(name: string, text: string, dataset?: string): void;
-  /** Attribute of a dataset that lists small whole numbers, as `flag_values` does. */
-  flagValues(name: string, values: Int8Array, dataset: string): void;
+  /** Attribute of a dataset that is a short list of whole numbers of the dataset's own kind, as `flag_values` is. */
+  numbers(name: string, values: Int8Array | Int32Array, dataset: string): void;
   /** One-dimensional dimension scale: fixed with `data`, growing by {@link Hdf5Writer.append} without. */
   scale(name: string, options: { readonly data: Float64Array | Int32Array } | { readonly chunk: number }): void;
   /** Fixed, compressed dataset over `scales`, filled by {@link Hdf5Writer.put}. */
@@ -87,7 +87,7 @@ function writerOn(file: File): Hdf5Writer {
         describe(target, name, text);
       }),
 
-    flagValues: (name, values, dataset) =>
+    numbers: (name, values, dataset) =>
       guarded(() => {
         const target = file.get(dataset) as Dataset | null;
         if (target === null) throw new Hdf5Error(`there is no dataset ${dataset}`);

@@ -1,6 +1,6 @@
 import { ResultFileError } from './errors.ts';
 import type { GridValues } from './hdf5.ts';
-import { openHdf5 } from './hdf5-reader.ts';
+import { type Hdf5Reader, openHdf5 } from './hdf5-reader.ts';
 import { checkFormat } from './read.ts';
 import type { Headline, ScanAxis, ScanPoint, ScanTexts } from './scan-variables.ts';
 import { headlinesOf, pointsGroup, pointVariable, scanFormat, scanTexts } from './scan-variables.ts';
@@ -24,7 +24,7 @@ export interface ScanFile extends ScanTexts {
   readonly shard: { readonly k: number; readonly n: number } | null;
   /** the columns that {@link ScanFile.column} gives */
   readonly headlines: readonly Headline[];
-  /** A headline over all points, in the order of the plan. Flags are indices into their meanings. @throws ResultFileError */
+  /** A headline over all points, in the order of the plan. Flags are indices into their meanings, masks have a bit for each. @throws ResultFileError */
   column(name: string): GridValues;
   /** JSON of every point, in the order of the plan. @throws ResultFileError */
   lines(): Generator<string>;
@@ -76,14 +76,19 @@ export function readScanFile(path: string): ScanFile {
     column: (name) => {
       const headline = headlines.find((each) => each.name === name);
       if (headline === undefined) throw new RangeError(`a scan has no column ${name}`);
-      if (headline.kind === 'flag') return file.int8(name, shape);
-      return headline.kind === 'count' ? file.int32(name, shape) : file.float64(name, shape);
+      return columnOf(file, headline, shape);
     },
     lines,
     points: function* () {
       for (const line of lines()) yield pointOf(line, damaged);
     },
   };
+}
+
+/** Values of a headline, in the number format of its kind. @throws ResultFileError */
+export function columnOf(file: Hdf5Reader, { kind, name }: Headline, shape: readonly number[]): GridValues {
+  if (kind === 'number') return file.float64(name, shape);
+  return kind === 'flag' ? file.int8(name, shape) : file.int32(name, shape);
 }
 
 type Damaged = (what: string) => ResultFileError;

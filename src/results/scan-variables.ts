@@ -1,4 +1,4 @@
-import type { Outcome, Regime, State, Stop } from '../onset/outcome.ts';
+import type { CautionCode, Outcome, Regime, State, Stop } from '../onset/outcome.ts';
 import type { Found } from '../search/found.ts';
 import type { Find } from '../study.ts';
 
@@ -13,10 +13,11 @@ export interface ScanPoint {
   readonly id: string;
   /** one for each axis */
   readonly values: readonly number[];
-  /** the case itself, simulated; null where there is an error */
+  /** the case itself, simulated; null where that failed */
   readonly outcome: Outcome | null;
+  /** why the outcome or what was searched is missing; null where nothing failed */
   readonly error: PointError | null;
-  /** null where nothing is searched, or with an error */
+  /** null where nothing is searched or the search failed */
   readonly found: Found | null;
 }
 
@@ -37,7 +38,7 @@ export type ErrorCode =
   | 'internal-fault';
 
 /** A headline: a column of the table. */
-export type Headline = NumberHeadline | FlagHeadline;
+export type Headline = NumberHeadline | FlagHeadline | MaskHeadline;
 
 interface NumberHeadline {
   readonly kind: 'number' | 'count';
@@ -58,6 +59,15 @@ interface FlagHeadline {
   readonly of: (point: ScanPoint) => string;
 }
 
+interface MaskHeadline {
+  readonly kind: 'mask';
+  readonly name: string;
+  readonly longName: string;
+  /** the words that the bits 1, 2, 4, … stand for; at most 31 */
+  readonly meanings: readonly string[];
+  readonly of: (point: ScanPoint) => readonly string[];
+}
+
 /** the word of a point without an answer */
 const FAILED = 'failed';
 const NONE = 'none';
@@ -74,6 +84,35 @@ const foundStates = ['found', 'none-breaks-down', 'none-holds', 'undecided', FAI
   | Found['state']
   | typeof FAILED
 )[];
+
+/** bits of a file: a new code goes to the end */
+const cautions = [
+  'not-a-clearance',
+  'outside-range',
+  'left-of-minimum',
+  'longer-path',
+  'double-valued',
+  'short-gap',
+  'streamer',
+  'field-emission',
+  'collisionless',
+  'arc-risk',
+  'partly-covered',
+  'few-electrons',
+  'seed-lowers-threshold',
+  'loaded-by-seed',
+  'yield-spread',
+  'timescales',
+  'mixture',
+  'insulator',
+  'edges',
+  'tolerance',
+  'cathode-cells',
+  'undershoot',
+  'defaults',
+] as const satisfies readonly CautionCode[];
+/** does not compile when a code is missing above */
+const everyCode: [CautionCode] extends [(typeof cautions)[number]] ? readonly string[] : never = cautions;
 
 const number = (name: string, units: string, longName: string, of: (outcome: Outcome) => number | null): NumberHeadline => ({
   kind: 'number',
@@ -117,6 +156,14 @@ const outcomeHeadlines: readonly Headline[] = [
   number('source_energy', 'J', 'energy delivered by the supply', (o) => o.energy.source_J),
   number('energy_after_trip', 'J', 'energy put into the gas gap after the trip', (o) => o.energy.after_trip_J),
 ];
+
+const cautionsHeadline: Headline = {
+  kind: 'mask',
+  name: 'cautions',
+  longName: 'cautions of the outcome; their texts are in the points',
+  meanings: everyCode,
+  of: ({ outcome }) => outcome?.cautions.map(({ code }) => code) ?? [],
+};
 
 const errorHeadline: Headline = {
   kind: 'flag',
@@ -167,7 +214,7 @@ function foundHeadlines(what: Find['what']): Headline[] {
 
 /** The columns of a scan. */
 export function headlinesOf(what: Find['what'] | null): readonly Headline[] {
-  return [...outcomeHeadlines, ...(what === null ? [] : foundHeadlines(what)), errorHeadline];
+  return [...outcomeHeadlines, ...(what === null ? [] : foundHeadlines(what)), cautionsHeadline, errorHeadline];
 }
 
 /** Value of the global attribute `format` of a scan file. */

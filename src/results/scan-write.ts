@@ -4,6 +4,7 @@ import { ResultFileError, resultFileError } from './errors.ts';
 import type { GridValues, Hdf5Writer } from './hdf5.ts';
 import { createHdf5, Hdf5Error } from './hdf5.ts';
 import { checkComplete, openHdf5 } from './hdf5-reader.ts';
+import { columnOf } from './scan-read.ts';
 import type { Headline, ScanPoint, ScanTexts } from './scan-variables.ts';
 import { axisNames, headlinesOf, pointsGroup, pointVariable, scanFormat, scanTexts } from './scan-variables.ts';
 
@@ -96,16 +97,19 @@ function declare(file: Hdf5Writer, about: ScanAbout): readonly number[] {
   const chunk = chunkOf(shape);
   for (const headline of headlinesOf(find)) {
     const { name, kind, longName } = headline;
-    file.grid(name, { scales, shape, chunk, type: ({ number: 'float64', count: 'int32', flag: 'int8' } as const)[kind] });
-    file.attribute('units', kind === 'flag' ? '1' : headline.units, name);
+    file.grid(name, { scales, shape, chunk, type: ({ number: 'float64', count: 'int32', flag: 'int8', mask: 'int32' } as const)[kind] });
+    file.attribute('units', kind === 'flag' || kind === 'mask' ? '1' : headline.units, name);
     file.attribute('long_name', longName, name);
-    if (kind === 'flag') {
-      file.flagValues(
-        'flag_values',
-        Int8Array.from(headline.meanings, (_, i) => i),
-        name,
-      );
-      file.attribute('flag_meanings', headline.meanings.join(' '), name);
+    if (kind === 'flag' || kind === 'mask') {
+      const { meanings } = headline;
+      if (kind === 'flag') file.numbers('flag_values', Int8Array.from(meanings.keys()), name);
+      else
+        file.numbers(
+          'flag_masks',
+          Int32Array.from(meanings, (_, bit) => 1 << bit),
+          name,
+        );
+      file.attribute('flag_meanings', meanings.join(' '), name);
     }
     if (layout.kind === 'list' && names.length > 0) file.attribute('coordinates', names.join(' '), name);
   }
@@ -188,18 +192,22 @@ class Column {
   constructor(headline: Headline) {
     this.name = headline.name;
     this.#headline = headline;
-    this.#values = { number: new Float64Array(BLOCK), count: new Int32Array(BLOCK), flag: new Int8Array(BLOCK) }[headline.kind];
-    this.#codes = new Map(headline.kind === 'flag' ? headline.meanings.map((word, i): [string, number] => [word, i]) : []);
+    this.#values =
+      headline.kind === 'number' ? new Float64Array(BLOCK) : headline.kind === 'flag' ? new Int8Array(BLOCK) : new Int32Array(BLOCK);
+    this.#codes = new Map('meanings' in headline ? headline.meanings.map((word, i): [string, number] => [word, i]) : []);
   }
 
   set(i: number, point: ScanPoint): void {
     const headline = this.#headline;
-    if (headline.kind === 'flag') {
-      const word = headline.of(point);
-      const code = this.#codes.get(word);
-      if (code === undefined) throw new RangeError(`${this.name}: no code for ${word}`);
-      this.#values[i] = code;
-    } else this.#values[i] = headline.of(point) ?? (headline.kind === 'count' ? -1 : Number.NaN);
+    if (headline.kind === 'flag') this.#values[i] = this.#code(headline.of(point));
+    else if (headline.kind === 'mask') this.#values[i] = headline.of(point).reduce((bits, word) => bits | (1 << this.#code(word)), 0);
+    else this.#values[i] = headline.of(point) ?? (headline.kind === 'count' ? -1 : Number.NaN);
+  }
+
+  #code(word: string): number {
+    const code = this.#codes.get(word);
+    if (code === undefined) throw new RangeError(`${this.name}: no code for ${word}`);
+    return code;
   }
 
   moveTo(file: Hdf5Writer, ranges: readonly (readonly [number, number])[], size: number): void {
@@ -296,8 +304,9 @@ function readBack(path: string, shape: readonly number[], about: ScanAbout, dige
     if (hash.digest('hex') !== digests.get(name))
       throw new ResultFileError('damaged', path, `${name} does not read back as it was written`);
   };
-  for (const { name, kind } of headlinesOf(about.find)) {
-    const values = kind === 'flag' ? file.int8(name, shape) : kind === 'count' ? file.int32(name, shape) : file.float64(name, shape);
+  for (const headline of headlinesOf(about.find)) {
+    const { name } = headline;
+    const values = columnOf(file, headline, shape);
     check(name, [bytesOf(values)]);
   }
   check(

@@ -1,0 +1,6 @@
+/** The script of every worker. A job is a line here and a module of its own. */
+import { serve } from './serve.ts';
+
+serve({
+  'scan-point': async () => (await import('./point-job.ts')).pointJob,
+});
