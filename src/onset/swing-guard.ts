@@ -41,6 +41,7 @@ export class SwingGuard implements Observer {
   look(step: Step): boolean {
     const { start, end } = step;
     const span = end.time - start.time;
+    if (!(span > 0)) return false;
     if (!this.#looking) {
       if (span > LONGEST_STEP * this.#context.ionTransit && this.#sustain.distorted && this.#sustain.selfSustaining)
         this.allows(end.time, end.y, end.current);
