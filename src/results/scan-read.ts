@@ -2,8 +2,8 @@ import { ResultFileError } from './errors.ts';
 import type { GridValues } from './hdf5.ts';
 import { type Hdf5Reader, openHdf5 } from './hdf5-reader.ts';
 import { checkFormat } from './read.ts';
-import type { Headline, ScanAxis, ScanPoint, ScanTexts } from './scan-variables.ts';
-import { headlinesOf, pointsGroup, pointVariable, scanFormat, scanTexts } from './scan-variables.ts';
+import type { Headline, PlanText, ScanAxis, ScanPoint, ScanTexts } from './scan-variables.ts';
+import { headlinesOf, planVariable, pointsGroup, pointVariable, scanFormat, scanTexts } from './scan-variables.ts';
 
 /** A scan read back from its file. The file is held in memory as it is; points are decoded a page at a time, columns when asked for. */
 export interface ScanFile extends ScanTexts {
@@ -38,20 +38,11 @@ export function readScanFile(path: string): ScanFile {
   const file = openHdf5(path);
   checkFormat(path, file, scanFormat);
   const damaged = (what: string): ResultFileError => new ResultFileError('damaged', path, `the file is damaged: ${what}`);
-  const attribute = (name: string, pattern: RegExp): string => {
-    const text = file.attribute(name) ?? '';
-    if (!pattern.test(text)) throw damaged(`its ${name} is not understood`);
-    return text;
-  };
-
-  const layout = attribute('layout', /^(grid|list)$/) as ScanFile['layout'];
-  const find = attribute('find', /^(nothing|hold-off|trip-delay|series-resistance)$/);
-  const what = find === 'nothing' ? null : (find as NonNullable<ScanFile['find']>);
-  const share = file.attribute('shard') === null ? null : attribute('shard', /^[1-9][0-9]{0,6}\/[1-9][0-9]{0,6}$/).split('/');
+  const { study, layout, total, shard, find, axes: declared } = planFrom(file.text(planVariable), damaged);
   const count = layout === 'list' ? file.int32(pointVariable, [null]).length : null;
-  const axes = axesOf(file.text('axes_json'), damaged).map((axis) => ({ ...axis, values: file.float64(axis.name, [count]) }));
+  const axes = declared.map((axis) => ({ ...axis, values: file.float64(axis.name, [count]) }));
   const shape = count === null ? axes.map(({ values }) => values.length) : [count];
-  const headlines = headlinesOf(what);
+  const headlines = headlinesOf(find);
   const texts = Object.fromEntries(scanTexts.map(({ key, name }) => [key, file.text(name)])) as unknown as ScanTexts;
 
   const lines = function* (): Generator<string> {
@@ -64,13 +55,13 @@ export function readScanFile(path: string): ScanFile {
     path,
     title: file.attribute('title') ?? '',
     version: file.attribute('version') ?? '',
-    study: attribute('study', /^[0-9a-f]{64}$/),
+    study,
     layout,
     axes,
-    find: what,
+    find,
     count: shape.reduce((product, length) => product * length, 1),
-    total: Number(attribute('total', /^[1-9][0-9]{0,8}$/)),
-    shard: share === null ? null : { k: Number(share[0]), n: Number(share[1]) },
+    total,
+    shard,
     headlines,
     ...texts,
     column: (name) => {
@@ -101,13 +92,23 @@ function pointOf(line: string, damaged: Damaged): ScanPoint {
   }
 }
 
-function axesOf(json: string, damaged: Damaged): ScanAxis[] {
-  const isText = (value: unknown): value is string => typeof value === 'string';
+function planFrom(json: string, damaged: Damaged): PlanText {
+  const isText = (value: unknown): boolean => typeof value === 'string';
+  const isCount = (value: unknown): boolean => Number.isSafeInteger(value) && (value as number) > 0;
   try {
-    const axes = JSON.parse(json) as ScanAxis[];
-    if (Array.isArray(axes) && axes.every((axis) => isText(axis?.path) && isText(axis.unit) && isText(axis.name))) return axes;
+    const plan = JSON.parse(json) as PlanText;
+    const { study, layout, total, shard, find, axes } = plan;
+    const sound =
+      isText(study) &&
+      (layout === 'grid' || layout === 'list') &&
+      isCount(total) &&
+      (shard === null || (isCount(shard.k) && isCount(shard.n))) &&
+      (find === null || find === 'hold-off' || find === 'trip-delay' || find === 'series-resistance') &&
+      axes.every(({ path, unit, name }) => isText(path) && isText(unit) && isText(name)) &&
+      (layout === 'list' || axes.length > 0);
+    if (sound) return plan;
   } catch {
-    // the same as any other text that is not a list of axes
+    // the same as any other text that is no plan
   }
-  throw damaged('its axes are not understood');
+  throw damaged('what it says of its plan is not understood');
 }

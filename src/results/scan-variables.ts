@@ -249,9 +249,23 @@ export interface ScanAxis {
   readonly name: string;
 }
 
+/** text that says what is scanned. Not attributes: beyond eight the format stores them in a way that not every reader knows */
+export const planVariable = 'plan_json';
+
+export interface PlanText {
+  /** hash of everything that decides the results */
+  readonly study: string;
+  readonly layout: 'grid' | 'list';
+  /** points of the whole plan */
+  readonly total: number;
+  readonly shard: { readonly k: number; readonly n: number } | null;
+  readonly find: Find['what'] | null;
+  readonly axes: readonly ScanAxis[];
+}
+
 /** Names of the axes' variables: `gas.pressure` → `gas_pressure`; told apart from each other and from the headlines. */
 export function axisNames(paths: readonly string[], what: Find['what'] | null): string[] {
-  const taken = new Set([pointVariable, pointsGroup, 'axes_json', ...scanTexts.map(({ name }) => name)]);
+  const taken = new Set([pointVariable, pointsGroup, planVariable, ...scanTexts.map(({ name }) => name)]);
   for (const { name } of headlinesOf(what)) taken.add(name);
   return paths.map((path) => {
     let name = path.replaceAll(/[^A-Za-z0-9_]/g, '_').replace(/^(?![A-Za-z])/, 'x');

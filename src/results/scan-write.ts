@@ -5,8 +5,8 @@ import type { GridValues, Hdf5Writer } from './hdf5.ts';
 import { createHdf5, Hdf5Error } from './hdf5.ts';
 import { checkComplete, openHdf5 } from './hdf5-reader.ts';
 import { columnOf } from './scan-read.ts';
-import type { Headline, ScanPoint, ScanTexts } from './scan-variables.ts';
-import { axisNames, headlinesOf, pointsGroup, pointVariable, scanFormat, scanTexts } from './scan-variables.ts';
+import type { Headline, PlanText, ScanPoint, ScanTexts } from './scan-variables.ts';
+import { axisNames, headlinesOf, planVariable, pointsGroup, pointVariable, scanFormat, scanTexts } from './scan-variables.ts';
 
 /** What a scan file says about its points. */
 export interface ScanAbout extends ScanTexts {
@@ -81,17 +81,20 @@ function declare(file: Hdf5Writer, about: ScanAbout): readonly number[] {
   file.attribute('title', shorten(about.title));
   file.attribute('program', 'gapwake');
   file.attribute('version', about.version);
-  file.attribute('study', about.study);
-  file.attribute('layout', layout.kind);
-  file.attribute('total', String(about.total));
-  file.attribute('find', find ?? 'nothing');
-  if (shard !== null) file.attribute('shard', `${shard.k}/${shard.n}`);
   for (const { key, name, longName } of scanTexts) {
     file.text(name, about[key]);
     file.attribute('long_name', longName, name);
   }
-  file.text('axes_json', JSON.stringify(axes.map(({ path, unit }, i) => ({ path, unit, name: names[i] }))));
-  file.attribute('long_name', 'the varied entries of the case: path, unit and variable, JSON', 'axes_json');
+  const plan: PlanText = {
+    study: about.study,
+    layout: layout.kind,
+    total: about.total,
+    shard,
+    find,
+    axes: axes.map(({ path, unit }, i) => ({ path, unit, name: names[i] as string })),
+  };
+  file.text(planVariable, JSON.stringify(plan));
+  file.attribute('long_name', 'what is scanned: study, layout, points in all, shard, search, axes, JSON', planVariable);
 
   const { scales, shape } = layout.kind === 'grid' ? gridScales(file, axes, names) : listScales(file, layout, axes, names);
   const chunk = chunkOf(shape);
