@@ -1,7 +1,14 @@
 import { TOWNSEND } from '../units/constants.ts';
-import { crossSectionFromPerTorr, mobilityFromOneAtmosphere, reducedFieldFromPerTorr, thermalIonEnergy } from './conversions.ts';
+import {
+  crossSectionFromPerTorr,
+  mobilityFromOneAtmosphere,
+  reducedFieldFromPerTorr,
+  TABLE_TEMPERATURE,
+  thermalIonEnergy,
+} from './conversions.ts';
 import type { Form } from './forms.ts';
 import type { Coefficient, GasData } from './gas.ts';
+import { RAIZER } from './sources.ts';
 
 const Td = TOWNSEND;
 
@@ -30,6 +37,7 @@ const recombination: Coefficient = {
   source: MORROW_LOWKE,
   status: 'from memory (H)',
   uncertainty: 0.5,
+  referenceTemperature: TABLE_TEMPERATURE,
   note: '2e-7 cm³/s, meant for 1 atm and used at every density. No effect on breakdown; it bounds the density of a dense glow.',
 };
 
@@ -37,6 +45,9 @@ const recombination: Coefficient = {
 export const air: GasData = {
   name: 'air',
   title: 'Dry air',
+  set: 'morrow-raizer',
+  reason:
+    'Streamer data of dense air up to 466 Td, the constants of low-pressure breakdown above: each where it was made, and joined where they cross. Either alone is wrong on the other’s ground.',
   coefficients: {
     ionisation: {
       form: {
@@ -52,6 +63,7 @@ export const air: GasData = {
       source: `${MORROW_LOWKE}, up to 466 Td; above: α/p = 15 exp(−365 p/E) 1/(cm Torr), 100 to 800 V/(cm Torr), Raizer, Gas Discharge Physics, 1991, Table 4.1`,
       status: 'from memory (H)',
       uncertainty: 0.2,
+      referenceTemperature: TABLE_TEMPERATURE,
       note:
         'Morrow and Lowke fitted streamers in dense air; at the 1000 Td and more of the Paschen minimum their α is 35 % below Raizer’s, and the minimum would ' +
         'come out 40 % above the measured 327 V, which is unsafe. So Raizer’s constants take over where the two cross, at 466 Td. The joint at 150 Td has a ' +
@@ -73,6 +85,7 @@ export const air: GasData = {
       source: `${MORROW_LOWKE}: two-body attachment`,
       status: 'from memory (H)',
       uncertainty: 0.3,
+      referenceTemperature: TABLE_TEMPERATURE,
       note:
         'Zero below 48 Td. The pieces meet within 1e-4; the slope is smoothed over 5 % of the field. Three-body attachment (∝ N²) is left out: at low pressure it is ' +
         'small, and leaving attachment out lowers V_s, which is safe. Detachment is left out too: that raises V_s, which is unsafe, but above 500 Td ' +
@@ -93,6 +106,7 @@ export const air: GasData = {
       source: `${MORROW_LOWKE}: electron drift velocity`,
       status: 'from memory (H)',
       uncertainty: 0.1,
+      referenceTemperature: TABLE_TEMPERATURE,
       note:
         'The joint at 10 Td has a step of 1.3 %; all joints are smoothed over 10 % of the field. Below 0.05 Td μN is held at 1.4e25 1/(m V s), ' +
         'since the offset of the fit would make it infinite at zero field.',
@@ -104,6 +118,7 @@ export const air: GasData = {
       source: `${MORROW_LOWKE}: electron diffusion over drift`,
       status: 'from memory (M)',
       uncertainty: 0.3,
+      referenceTemperature: TABLE_TEMPERATURE,
       note: 'Held at 0.025 V, thermal electrons, below 0.019 Td. Above about 1000 Td an extrapolation.',
     },
     ionMobility: {
@@ -112,6 +127,7 @@ export const air: GasData = {
       source: `${MORROW_LOWKE}: W = 2.34 E p0/p cm/s, E in V/cm, p0 = 760 Torr`,
       status: 'from memory (H)',
       uncertainty: 0.4,
+      referenceTemperature: TABLE_TEMPERATURE,
       note:
         'Density at p0 taken at 20 °C (K0 = 2.18 cm²/(V s)); at 0 °C μN would be 7 % higher. Constant, as for dense air. ' +
         'Ions slow down relative to it in strong fields (N2+ in nitrogen to half at 800 Td): at low pressure lags may come out too short, ' +
@@ -131,12 +147,53 @@ export const air: GasData = {
       source: `${MORROW_LOWKE}: W = 1.86 E p0/p cm/s below 50 Td, 2.7 E p0/p above`,
       status: 'from memory (H)',
       uncertainty: 0.3,
+      referenceTemperature: TABLE_TEMPERATURE,
       note: 'The source steps by 45 % at 50 Td; here the step is spread over 35 to 65 Td. Density at p0 taken at 20 °C.',
     },
     negativeIonEnergy: thermalIonEnergy,
     electronIonRecombination: recombination,
     ionIonRecombination: recombination,
   },
+  alternatives: {
+    raizer: {
+      reason:
+        'The constants alone, 15 and 365 for 100 to 800 V/(cm Torr). Below 300 Td up to a third less ionisation: V_s too high at large pd, which is unsafe.',
+      coefficients: {
+        ionisation: {
+          form: strongFields,
+          range: { from: reducedFieldFromPerTorr(100), to: reducedFieldFromPerTorr(800) },
+          source: `${RAIZER}: A 15, B 365`,
+          status: 'second-hand',
+          uncertainty: 0.2,
+          referenceTemperature: TABLE_TEMPERATURE,
+        },
+      },
+    },
+    'morrow-lowke': {
+      reason:
+        'The streamer data alone, for dense air. At the Paschen minimum 35 % less ionisation than the default: V_s 40 % too high there, which is unsafe.',
+      coefficients: {
+        ionisation: {
+          form: {
+            kind: 'joined',
+            pieces: [
+              { from: 0, form: lowRange },
+              { from: 1.5e-15 * V_CM2, form: highRange },
+            ],
+            blend: 0.1,
+          },
+          range: { from: 0, to: 600 * Td },
+          source: MORROW_LOWKE,
+          status: 'from memory (H)',
+          uncertainty: 0.2,
+          referenceTemperature: TABLE_TEMPERATURE,
+          note: 'The joint at 150 Td has a step of 0.3 %, smoothed over 10 % of the field. The upper end of the range is ours.',
+        },
+      },
+    },
+  },
+  detachment:
+    'Neglected: V_s comes out too high, which is unsafe. Above 500 Td attachment is below 2 % of ionisation and it does not matter; the doubt is largest near 120 Td, at large pd.',
   // With the yield 0.01 V_s lies 6 % below the measured minimum and 1.5 % above to 11 % below the uniform-field formula from 3 to 760 Torr cm.
   breakdownUncertainty: 0.15,
   notes: [

@@ -17,6 +17,8 @@ export interface Coefficient extends Provenance {
   readonly form: Form;
   /** validity in x [V m²]; null where the source states none (then nothing counts as outside) */
   readonly range: { readonly from: number; readonly to: number } | null;
+  /** gas temperature at which the source gives it, or of the pressure it is given against [K]; null where the source states none and it hardly matters */
+  readonly referenceTemperature?: number | null;
 }
 
 /** The coefficients of one gas, N-based and in SI. A null coefficient does not occur in this gas. */
@@ -42,11 +44,27 @@ export interface GasCoefficients {
   readonly ionIonRecombination: Coefficient | null;
 }
 
+/** Another set of data of a gas, where sources disagree: what it replaces of the default set. */
+export interface DataSet {
+  /** whose data these are, when to use them, why they are not the default */
+  readonly reason: string;
+  readonly coefficients: Partial<GasCoefficients>;
+  /** replaces that of the default set */
+  readonly breakdownUncertainty?: number;
+}
+
 /** A built-in gas: its coefficients and what a reader must know about them. */
 export interface GasData {
   readonly name: string;
   readonly title: string;
+  /** name of the set of data that `coefficients` holds, and why it was chosen */
+  readonly set: string;
+  readonly reason: string;
   readonly coefficients: GasCoefficients;
+  /** other sets by name */
+  readonly alternatives: Readonly<Record<string, DataSet>>;
+  /** what leaving out the detachment of electrons from negative ions does; null where no negative ions form */
+  readonly detachment: string | null;
   /** relative uncertainty of a breakdown voltage computed with these data; 0.2 where nothing better is known */
   readonly breakdownUncertainty: number;
   /** what is neglected, which way that errs, known conflicts of sources */

@@ -1,5 +1,8 @@
+import { argonIonYields } from './argon-yields.ts';
 import { metals, type SurfaceData } from './metals.ts';
-import type { Surface } from './surface.ts';
+import { cleanYield } from './potential-emission.ts';
+import type { IonYield, Surface } from './surface.ts';
+import type { YieldData } from './yield-law.ts';
 
 export type { SurfaceData } from './metals.ts';
 
@@ -16,4 +19,20 @@ export function yieldFor(material: string, gas: string | null): Surface | null {
   const { name, yields, workFunction } = surfaces[material];
   const row = gas !== null && Object.hasOwn(yields, gas) ? yields[gas] : yields.any;
   return { material: name, ionYield: row, workFunction: workFunction?.value ?? null };
+}
+
+/** The yield of slow ions on the atomically clean material: potential emission, not a net yield of breakdown.
+ *
+ *  @returns null where the material or gas is unknown or nothing can be said (see `cleanYield`) */
+export function cleanYieldFor(material: string, gas: string): IonYield | null {
+  if (!Object.hasOwn(surfaces, material)) return null;
+  return cleanYield(material, surfaces[material].workFunction?.value ?? null, gas);
+}
+
+/** The yield of a material in a gas as a law of the ion's energy at the wall, clean or as technical surfaces are.
+ *
+ *  @returns null where none is published: all gases but argon, whose law holds for metals in general */
+export function yieldLawFor(material: string, gas: string, state: 'clean' | 'technical'): YieldData | null {
+  if (!Object.hasOwn(surfaces, material) || material === 'graphite' || gas !== 'argon') return null;
+  return argonIonYields[state];
 }

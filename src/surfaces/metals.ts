@@ -48,6 +48,104 @@ const air: IonYield = {
   note: '0.007 gives, with the α of air here, the measured minimum of 327 V. The spread is from memory (M).',
 };
 
+const helium: IonYield = {
+  typical: 0.18,
+  low: 0.03,
+  high: 0.35,
+  source:
+    'gives, with the α of helium here, the minimum of 156 V (Naidu and Kamaraju, High Voltage Engineering); high: slow He+ on clean metal, 0.29 to 0.30 (Hagstrum, Phys. Rev. 96, 325, 1954), with metastables; low: our guess for dirty metal',
+  status: 'from memory (M)',
+  uncertainty: null,
+  note: 'An ion of helium carries 24.6 eV: the highest yields of all gases. The same minimum with the set `raizer` needs 0.008.',
+};
+
+const neon: IonYield = {
+  typical: 0.025,
+  low: 5e-3,
+  high: 0.25,
+  source:
+    'gives, with the α of neon here, the minimum of 244 to 245 V (on iron: von Engel, Ionized Gases, 1965; Kuffel et al. 2000); high: slow Ne+ on clean metal, 0.21 to 0.25 (Hagstrum 1954/56); low: our guess for dirty metal',
+  status: 'from memory (M)',
+  uncertainty: null,
+  note: 'Clean metal yields ten times as much, and 105 V: give ion_yield for a baked and sputtered cathode.',
+};
+
+const krypton: IonYield = {
+  typical: 0.05,
+  low: 2e-3,
+  high: 0.1,
+  source: 'slow Kr+ on clean tungsten, 0.05, on molybdenum 0.07 (Hagstrum 1954/56); low: as for argon on iron',
+  status: 'from memory (M)',
+  uncertainty: null,
+  note: 'No minimum was found to hold it against. The clean value gives the lower breakdown voltage: safe.',
+};
+
+const xenon: IonYield = {
+  typical: 0.02,
+  low: 1e-3,
+  high: 0.1,
+  source: 'slow Xe+ on clean tungsten and molybdenum, 0.02 (Hagstrum 1954/56); spread as for technical surfaces in handbooks',
+  status: 'from memory (M)',
+  uncertainty: null,
+  note: 'No minimum was found to hold it against.',
+};
+
+const hydrogen: IonYield = {
+  typical: 0.03,
+  low: 1e-3,
+  high: 0.2,
+  source:
+    'gives, with the α of hydrogen here, the minimum of 273 V (Naidu and Kamaraju, High Voltage Engineering); low: DeBitetto and Fisher, 1956 (read), nickel near 20 V/(cm Torr); high: normal cathode falls in hydrogen (170 V on ' +
+    'aluminium) by the relation of von Engel and Steenbeck',
+  status: 'from memory (M)',
+  uncertainty: null,
+  note: 'Published minima of 230 to 295 V need 0.053 to 0.022.',
+};
+
+const oxygen: IonYield = {
+  typical: 3e-3,
+  low: 2e-4,
+  high: 0.05,
+  source:
+    'between what the minimum of 450 V needs with the α of oxygen here, 3e-4 (Naidu and Kamaraju; Kuffel et al. 2000; von Engel 1965), and what normal cathode falls give by the relation of von Engel and Steenbeck, 0.003 to 0.01; ends: ours',
+  status: 'from memory (L)',
+  uncertainty: null,
+  note: 'Cathodes oxidise, which lowers the yield of metals and may raise that of aluminium and magnesium. The typical value gives the lower breakdown voltage of the two: safe.',
+};
+
+const carbonDioxide: IonYield = {
+  typical: 3e-3,
+  low: 5e-4,
+  high: 0.05,
+  source:
+    'above what the minimum of 420 V needs with the α of carbon dioxide here, 1.3e-3 (Naidu and Kamaraju; Kuffel et al. 2000; von Engel 1965), as normal cathode falls of 410 to 526 V do by the relation of von Engel and Steenbeck; ends: ours',
+  status: 'from memory (L)',
+  uncertainty: null,
+  note: 'The typical value gives 370 V: safe.',
+};
+
+const waterVapour: IonYield = {
+  typical: 3e-3,
+  low: 3e-4,
+  high: 0.05,
+  source:
+    'above what the minimum of 480 V (Škoro et al., Phys. Rev. E 84, 055401, 2011, read) needs with the α of water vapour here, 4e-4; ends: ours',
+  status: 'from memory (L)',
+  uncertainty: null,
+  note: 'The typical value gives 350 V: safe.',
+};
+
+const sulphurHexafluoride: IonYield = {
+  typical: 2e-3,
+  low: 1e-4,
+  high: 0.05,
+  source:
+    'above what the minimum of 507 V (Kuffel, Zaengl and Kuffel 2000) needs with the α of sulphur hexafluoride here, 1.3e-4; ends: ours',
+  status: 'from memory (L)',
+  uncertainty: null,
+  note: 'The typical value gives 360 V: safe. At large pd the yield hardly matters.',
+};
+
 const ironInAir: IonYield = {
   typical: 0.02,
   low: 1e-3,
@@ -94,8 +192,22 @@ function riviere(value: number): WorkFunction {
   };
 }
 
-const common = { argon, nitrogen, air, any };
-const likeIron = { argon: ironInArgon, nitrogen, air: ironInAir, any };
+const common = {
+  argon,
+  nitrogen,
+  air,
+  helium,
+  neon,
+  krypton,
+  xenon,
+  hydrogen,
+  oxygen,
+  'carbon dioxide': carbonDioxide,
+  'water vapour': waterVapour,
+  'sulphur hexafluoride': sulphurHexafluoride,
+  any,
+};
+const likeIron = { ...common, argon: ironInArgon, air: ironInAir };
 
 export const metals: readonly SurfaceData[] = [
   { name: 'nickel', title: 'Nickel', yields: common, workFunction: riviere(4.74) },
@@ -131,6 +243,13 @@ export const metals: readonly SurfaceData[] = [
   },
   { name: 'gold', title: 'Gold', yields: common, workFunction: riviere(4.7) },
   { name: 'silver', title: 'Silver', yields: common, workFunction: riviere(4.31) },
+  {
+    name: 'graphite',
+    title: 'Graphite',
+    yields: common,
+    workFunction: { value: 4.6, source: 'about 4.6 eV, common handbook figure', status: 'from memory (M)', uncertainty: 0.2 },
+    note: 'Yields of technical metals: normal cathode falls on carbon (240 V in hydrogen, 526 V in carbon dioxide) are at the high end of those on metals, so the yield is rather lower.',
+  },
   {
     name: 'metal',
     title: 'Unspecified technical metal',

@@ -199,9 +199,12 @@ describe('facts of the trade', () => {
     expect(outcome.verdict.state).toBe('breaks-down');
   });
 
-  // Common practice: breakdown measurements give net yields of the order of 1e-2. Order: within a factor of ten, and their geometric mean within a factor of √10.
-  it('the built-in net yields are of the order of 1e-2', () => {
-    const named = Object.values(surfaces).flatMap((s) => Object.entries(s.yields).map(([gas, y]) => ({ label: `${s.name} in ${gas}`, y })));
+  // Common practice: breakdown measurements give net yields of the order of 1e-2. Order: within a factor of ten, and their geometric mean within a factor of √10. Helium is the known exception: its ions carry 24.6 eV and yield
+  // 0.2 to 0.3 even on clean metal (Hagstrum, Phys. Rev. 96, 325, 1954; from memory, H).
+  it('the built-in net yields are of the order of 1e-2, helium aside', () => {
+    const named = Object.values(surfaces).flatMap((s) =>
+      Object.entries(s.yields).flatMap(([gas, y]) => (gas === 'helium' ? [] : [{ label: `${s.name} in ${gas}`, y }])),
+    );
     for (const { label, y } of named) {
       expect(y.typical, label).toBeGreaterThan(1e-3);
       expect(y.typical, label).toBeLessThan(1e-1);
