@@ -146,6 +146,26 @@ function programOf(terminal: Terminal, done: (exitCode: number) => void): Comman
       done(await scan(path, options, terminal));
     });
 
+  program
+    .command('window')
+    .argument('<case>', 'case file (YAML) with a history')
+    .description('follow the pressure in time: when the gap breaks down, what it holds, when turn-on holds')
+    .option('-o, --output <file.h5>', 'the result (default: <case>.window.h5 beside the case); replaces an older result, nothing else')
+    .addOption(setOption())
+    .option('--csv <file.csv>', 'also write the table of the history; replaces an older such table, nothing else')
+    .option('--json', 'one JSON object on stdout')
+    .option('--quiet', 'print problems only')
+    .addOption(
+      new Option('--expect <verdict>', 'exit with 1 unless there is no window of breakdown, or is one').choices(['holds', 'breaks-down']),
+    )
+    .addOption(workersOption())
+    .option('--restart', 'delete what is unfinished or finished, and start anew')
+    .helpOption('-h, --help', 'print this help')
+    .action(async (path: string, options: WindowOptions) => {
+      const { window } = await import('./window.ts');
+      done(await window(path, options, terminal));
+    });
+
   return program;
 }
 
@@ -176,6 +196,17 @@ export interface ScanOptions {
   readonly plan?: boolean;
   readonly shard?: { readonly k: number; readonly n: number };
   readonly gather?: readonly string[];
+  readonly restart?: boolean;
+}
+
+export interface WindowOptions {
+  readonly output?: string;
+  readonly set: readonly string[];
+  readonly csv?: string;
+  readonly json?: boolean;
+  readonly quiet?: boolean;
+  readonly expect?: 'holds' | 'breaks-down';
+  readonly workers?: number;
   readonly restart?: boolean;
 }
 
@@ -216,6 +247,7 @@ Examples:
   gapwake run gap.yaml --set supply.voltage.step="500 V" --expect holds
   gapwake scan gap.yaml --plan            how many points, and how long it would take
   gapwake scan gap.yaml --csv gap.csv     all of them; after Ctrl-C it goes on there
+  gapwake window bay.yaml                 when it breaks down while the bay vents
 
 Exit codes: 0 done, 1 --expect not met, 2 wrong input, 3 a simulation could not
 be completed, 4 a file could not be read or written, 70 internal fault,

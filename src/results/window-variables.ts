@@ -11,7 +11,11 @@ export interface WindowNumber {
   readonly longName: string;
 }
 
-export const windowTime = { name: 'time', units: 's', longName: 'time since the start of the history' } as const;
+export const windowTime: { readonly name: string; readonly units: string; readonly longName: string } = {
+  name: 'time',
+  units: 's',
+  longName: 'time since the start of the history',
+};
 
 export const windowNumbers: readonly WindowNumber[] = [
   { key: 'pressure_Pa', name: 'pressure', units: 'Pa', longName: 'pressure of the gas around the gap' },
@@ -33,8 +37,11 @@ export const windowNumbers: readonly WindowNumber[] = [
 ];
 
 /** `state`: the place of a word in this list. */
-export const windowStates = ['holds', 'marginal', 'breaks-down', 'outside-model'] as const satisfies readonly HistoryEntry['state'][];
-export const windowState = { name: 'state', longName: 'what the gap does at this voltage' } as const;
+export const windowStates: readonly HistoryEntry['state'][] = ['holds', 'marginal', 'breaks-down', 'outside-model'];
+export const windowState: { readonly name: string; readonly longName: string } = {
+  name: 'state',
+  longName: 'what the gap does at this voltage',
+};
 
 /** Texts of the file: together they reproduce the window. */
 export interface WindowTexts {

@@ -3,4 +3,5 @@ import { serve } from './serve.ts';
 
 serve({
   'scan-point': async () => (await import('./point-job.ts')).pointJob,
+  'window-request': async () => (await import('./window-job.ts')).windowJob,
 });

@@ -66,14 +66,27 @@ const LEAST_OVERVOLTAGE = 1.02;
 /** Follows a gap through its surroundings. Discharges take microseconds to milliseconds and pressures seconds to hours, so each instant is a gap at rest:
  *  what it holds depends on the density N of that instant alone.
  *  Theory gives where to look; the hold-off voltage of every instant of the answer is simulated.
- *  @throws RangeError when the history makes no sense (see `historyOf`) */
+ *  @throws HistoryFailure when the pressure cannot be followed */
 export async function followWindow(settings: Case, window: WindowSettings, following: Following): Promise<WindowAnswer> {
-  const history = historyOf(window.history);
+  const history = historyFrom(window);
   const track = trackOf(history, window.voltage, isSymmetric(settings));
   const search = new Search(settings, window, track, following);
   await search.look();
   await search.timeLags();
   return search.answer(history);
+}
+
+/** The surroundings of a gap could not be followed in time. */
+export class HistoryFailure extends Error {
+  override readonly name = 'HistoryFailure';
+}
+
+function historyFrom(window: WindowSettings): History {
+  try {
+    return historyOf(window.history);
+  } catch (thrown) {
+    throw new HistoryFailure(thrown instanceof Error ? thrown.message : String(thrown));
+  }
 }
 
 class Search {

@@ -1,0 +1,49 @@
+import type { Case } from '../../case.ts';
+import { cautionsOf, withDefaults } from '../../onset/cautions/index.ts';
+import type { Caution, CautionCode } from '../../onset/outcome.ts';
+import { seconds } from '../../onset/words.ts';
+import { predict, prospects } from '../../theory/predict.ts';
+import type { FollowedInstant, WindowAnswer } from './follow.ts';
+import { atSurroundings } from './instant-case.ts';
+import type { Timescales } from './timescales.ts';
+
+/** Every caution of a window: those of the gap at its worst instant; those that only other instants raise, with the time of the first; and the one about
+ *  discharges that are not fast against what changes around them.
+ *  @param defaults  paths of every default that the case leaves to the program */
+export function windowCautions(settings: Case, answer: WindowAnswer, defaults: readonly string[]): Caution[] {
+  const { instants, worst, lowest, timescales } = answer;
+  const first = worst === null ? instants.find(({ time }) => time === lowest?.time) : instants[worst];
+  const raised = new Map<CautionCode, Caution>();
+  for (const instant of first === undefined ? instants : [first, ...instants]) {
+    // where the model says nothing the state says so already
+    if (instant.holdOff === null) continue;
+    for (const caution of cautionsAt(settings, instant)) {
+      if (raised.has(caution.code)) continue;
+      const text = instant === first ? caution.text : `First at ${seconds(instant.time)}: ${caution.text}`;
+      raised.set(caution.code, { ...caution, text });
+    }
+  }
+  const list = [...raised.values()];
+  if (timescales !== null) list.push(timescalesCaution(timescales));
+  if (list.every(({ code }) => code !== 'not-a-clearance')) list.push(...cautionsAt(settings, instants[0]).filter(isClearance));
+  return withDefaults(list, settings, defaults);
+}
+
+function cautionsAt(settings: Case, { pressure, temperature, supply }: FollowedInstant): Caution[] {
+  const there = atSurroundings(settings, pressure, temperature);
+  return cautionsOf(there, supply, predict(there, supply), prospects(there, supply), null);
+}
+
+function isClearance({ code }: Caution): boolean {
+  return code === 'not-a-clearance';
+}
+
+function timescalesCaution({ time, discharge, surroundings, of }: Timescales): Caution {
+  const takes = `a discharge takes about ${seconds(discharge)} to form`;
+  const text = {
+    pressure: `At ${seconds(time)} the pressure changes by a factor e in ${seconds(surroundings)}, while 1 % above threshold ${takes}: the gap is not at rest, and breaks down later and at a higher voltage than this says, if at all.`,
+    voltage: `At ${seconds(time)} the voltage changes by a factor e in ${seconds(surroundings)}, while 1 % above threshold ${takes}: the gap is not at rest; \`run\` follows such a programme in time.`,
+    window: `The window of breakdown at ${seconds(time)} lasts ${seconds(surroundings)}, while ${takes}: the gap may pass through it unharmed, which is no reason to rely on it.`,
+  }[of];
+  return { code: 'timescales', text, value: discharge / surroundings };
+}
