@@ -19,10 +19,17 @@ export interface Sample {
 /** An answer, and where there is none the reason, as a clause. */
 export type Judgement = 'holds' | 'breaks-down' | { readonly doubt: string };
 
+interface Run {
+  readonly outcome: Outcome;
+  readonly failure: SimulationFailure | null;
+}
+
 /** What a search makes of its case and of an outcome. */
 export interface Question {
   /** the case with the searched quantity at this value */
   settings(value: number): Case;
+  /** the same in a run shorter by far that is likely to break down already, which decides as well; null where there is none */
+  shortened?(settings: Case): Case | null;
   /** @param failure of a run that could not be completed; `outcome` is then what was found up to its last good state */
   judge(outcome: Outcome, settings: Case, failure: SimulationFailure | null): Judgement;
 }
@@ -34,6 +41,8 @@ export class Runs {
   /** by value, rising */
   readonly #samples: Sample[] = [];
   #made = 0;
+  /** a shortened run that did not break down was made for nothing: then no more of them */
+  #shortenedHelps = true;
 
   constructor(question: Question, simulate: Simulate) {
     this.#question = question;
@@ -55,7 +64,7 @@ export class Runs {
     const known = this.#samples.find((s) => s.value === value);
     if (known !== undefined) return known;
     const settings = this.#question.settings(value);
-    const { outcome, failure } = this.once(settings);
+    const { outcome, failure } = this.#inShort(settings) ?? this.once(settings);
     const judgement = this.#question.judge(outcome, settings, failure);
     const answer = typeof judgement === 'string' ? judgement : 'undecided';
     const sample: Sample = { value, settings, outcome, failure, answer, doubt: typeof judgement === 'string' ? null : judgement.doubt };
@@ -64,8 +73,18 @@ export class Runs {
     return sample;
   }
 
+  /** The shortened run of a case; null where there is none or it did not break down. */
+  #inShort(settings: Case): Run | null {
+    const shortened = this.#shortenedHelps ? (this.#question.shortened?.(settings) ?? null) : null;
+    if (shortened === null) return null;
+    const run = this.once(shortened);
+    if (run.failure === null && run.outcome.verdict.state === 'breaks-down') return run;
+    this.#shortenedHelps = false;
+    return null;
+  }
+
   /** A run beside the samples, counted. */
-  once(settings: Case): { readonly outcome: Outcome; readonly failure: SimulationFailure | null } {
+  once(settings: Case): Run {
     this.#made++;
     try {
       return { outcome: this.#simulate(settings), failure: null };

@@ -1,6 +1,7 @@
 /** The logic of the hold-off search on made-up runs of the open case: theory says V_S throughout, the runs say what each test wants. */
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
+import type { Case } from '../../src/case.ts';
 import type { Found } from '../../src/search/found.ts';
 import { holdOff } from '../../src/search/hold-off.ts';
 import { search } from '../../src/search/index.ts';
@@ -14,15 +15,15 @@ const UNTIL = 1;
 const settings = openCaseWith({ observe: { until: UNTIL } });
 const RANGE = { from: 100, to: 900, tolerance: 1e-3 };
 
-const byVoltage = (tell: (voltage: number) => Told | 'fails'): Script => scripted((c) => largestVoltage(c.supply), tell);
+const byVoltage = (tell: (voltage: number, settings: Case) => Told | 'fails'): Script => scripted((c) => largestVoltage(c.supply), tell);
 
 /** Breaks down above `threshold` [V] after `lag`/overvoltage [s], as growth at a rate in proportion to the overvoltage does. */
-function growing(threshold: number, lag = 1e-5): (voltage: number) => Told {
-  return (voltage) => {
+function growing(threshold: number, lag = 1e-6): (voltage: number, settings: Pick<Case, 'observe'>) => Told {
+  return (voltage, { observe }) => {
     const overvoltage = voltage / threshold - 1;
     if (overvoltage <= 0) return { state: 'holds', stop: 'steady' };
     const time = lag / overvoltage;
-    return time <= UNTIL ? { state: 'breaks-down', lag: time, growth: 10 / time } : { state: 'undecided', growth: 10 / time };
+    return time <= observe.until ? { state: 'breaks-down', lag: time, growth: 10 / time } : { state: 'undecided', growth: 10 / time };
   };
 }
 
@@ -84,10 +85,10 @@ describe('hold-off voltage', () => {
 
   it('is not led astray by rates that point to the wrong place', () => {
     for (const threshold of [130, 180, 240, 400, 700]) {
-      const script = byVoltage((voltage) => {
+      const script = byVoltage((voltage, c) => {
         const told = mute(threshold)(voltage);
         // growth as if the threshold were 30 % lower
-        return told.state === 'holds' ? told : { ...growing(0.7 * threshold)(voltage), state: 'breaks-down', stop: 'steady' };
+        return told.state === 'holds' ? told : { ...growing(0.7 * threshold)(voltage, c), state: 'breaks-down', stop: 'steady' };
       });
       const found = holdOff(settings, RANGE, script.simulate);
       expectRealBracket(found, script);
@@ -96,7 +97,7 @@ describe('hold-off voltage', () => {
   });
 
   it('takes the lowest change of a double-valued answer and reports both', () => {
-    const script = byVoltage((voltage) => (voltage > 600 ? { state: 'holds', stop: 'steady' } : growing(250)(voltage)));
+    const script = byVoltage((voltage, c) => (voltage > 600 ? { state: 'holds', stop: 'steady' } : growing(250)(voltage, c)));
     const found = holdOff(settings, RANGE, script.simulate);
     expectRealBracket(found, script);
     expect(found.value).toBeGreaterThan(249);
@@ -110,7 +111,9 @@ describe('hold-off voltage', () => {
   });
 
   it('reports three changes and narrows down the lowest', () => {
-    const script = byVoltage((voltage) => (voltage > 330 && voltage < 620 ? { state: 'holds', stop: 'steady' } : growing(180)(voltage)));
+    const script = byVoltage((voltage, c) =>
+      voltage > 330 && voltage < 620 ? { state: 'holds', stop: 'steady' } : growing(180)(voltage, c),
+    );
     const found = holdOff(settings, RANGE, script.simulate);
     expectRealBracket(found, script);
     expect(Math.abs((found.value ?? 0) / 180 - 1)).toBeLessThan(1e-3);
@@ -134,7 +137,8 @@ describe('hold-off voltage', () => {
   });
 
   it('is undecided where a run below a hold decided nothing', () => {
-    const tell = (voltage: number): Told => (voltage < 110 ? { state: 'undecided', reason: 'The trip acted.' } : growing(V_S)(voltage));
+    const tell = (voltage: number, c: Case): Told =>
+      voltage < 110 ? { state: 'undecided', reason: 'The trip acted.' } : growing(V_S)(voltage, c);
     const found = holdOff(settings, RANGE, byVoltage(tell).simulate);
     expect(found.state).toBe('undecided');
     expect(found.value).toBeNull();
@@ -230,14 +234,14 @@ describe('hold-off voltage', () => {
 
   describe('where runs fail', () => {
     it('is found past failures away from the change', () => {
-      const script = byVoltage((voltage) => (voltage > 500 ? 'fails' : growing(V_S)(voltage)));
+      const script = byVoltage((voltage, c) => (voltage > 500 ? 'fails' : growing(V_S)(voltage, c)));
       const found = holdOff(settings, RANGE, script.simulate);
       expectRealBracket(found, script);
       expect(found.changes.at(-1)).toMatchObject({ below: 'breaks-down', above: 'undecided' });
     });
 
     it('is undecided where they lie at the change, and says where they do and why', () => {
-      const script = byVoltage((voltage) => (Math.abs(voltage / 250 - 1) < 0.004 ? 'fails' : growing(250)(voltage)));
+      const script = byVoltage((voltage, c) => (Math.abs(voltage / 250 - 1) < 0.004 ? 'fails' : growing(250)(voltage, c)));
       const found = holdOff(settings, RANGE, script.simulate);
       expect(found.state).toBe('undecided');
       expect(found.note).toMatch(/^undecided at 2(49|50)[.\d]* V: the run failed: no step is small enough \(step 7, cell 5\); try more$/);
@@ -314,6 +318,37 @@ describe('hold-off voltage', () => {
     // V_s = B p d/ln(A p d/ln(1 + 1/γ)) with γ = 0.3
     const weak = (180 * 3) / Math.log((12 * 3) / Math.log1p(1 / 0.3));
     expect(found.theory).toBeCloseTo(Math.min(V_S, weak / 0.9), 6);
+  });
+
+  describe('to save time', () => {
+    it('ends runs soon after theory expects space charge, where that is far before the end', () => {
+      const script = byVoltage(growing(V_S));
+      const lengths: number[] = [];
+      const found = holdOff(settings, RANGE, (c) => {
+        if (largestVoltage(c.supply) > 1.3 * V_S) lengths.push(c.observe.until);
+        return script.simulate(c);
+      });
+      expect(found.runs).toBe(7);
+      expect(lengths.length).toBe(3);
+      expect(Math.max(...lengths)).toBeLessThan(1e-3 * UNTIL);
+    });
+
+    it('repeats such a run in full where it did not break down, and tries no more of them', () => {
+      const script = byVoltage(growing(1.2 * V_S, 1e-4));
+      const lengths = new Map<number, number[]>();
+      const found = holdOff(settings, RANGE, (c) => {
+        const voltage = largestVoltage(c.supply);
+        lengths.set(voltage, [...(lengths.get(voltage) ?? []), c.observe.until]);
+        return script.simulate(c);
+      });
+      expect(found.state).toBe('found');
+      const repeated = [...lengths.values()].filter((l) => l.length > 1);
+      expect(repeated.length).toBe(1);
+      expect(repeated[0][0]).toBeLessThan(UNTIL);
+      expect(repeated[0][1]).toBe(UNTIL);
+      expect([...lengths.values()].filter((l) => l.length === 1).every((l) => l[0] === UNTIL)).toBe(true);
+      expect(found.runs).toBe(script.asked.length);
+    });
   });
 
   it('has nothing to scale without a voltage', () => {

@@ -106,7 +106,7 @@ export function scripted(searched: (settings: Case) => number, tell: (value: num
       return outcomeOf(settings, told);
     },
     stateAt: (value) => {
-      const told = asked.find((a) => a.value === value)?.told;
+      const told = asked.findLast((a) => a.value === value)?.told;
       return told === undefined || told === 'fails' ? undefined : told.state;
     },
   };
