@@ -97,24 +97,20 @@ function readAll(raw: readonly RawQuantity[], at: readonly PropertyKey[] | null,
 
 function linear(from: number, to: number, points: number): Float64Array {
   const last = points - 1;
-  const values = Float64Array.from({ length: points }, (_, i) => between(from, to, (from * (last - i) + to * i) / last));
-  return withEnds(values, from, to);
+  return spaced(from, to, points, (i) => (from * (last - i) + to * i) / last);
 }
 
 function logarithmic(from: number, to: number, points: number): Float64Array {
-  const last = points - 1;
-  const ratio = Math.log(to / from);
-  const values = Float64Array.from({ length: points }, (_, i) => between(from, to, from * Math.exp((ratio * i) / last)));
-  return withEnds(values, from, to);
+  const step = Math.log(to / from) / (points - 1);
+  return spaced(from, to, points, (i) => from * Math.exp(step * i));
 }
 
-/** rounding must not carry a value past an end that a validator has accepted */
-function between(from: number, to: number, value: number): number {
-  return Math.min(Math.max(from, to), Math.max(Math.min(from, to), value));
-}
-
-function withEnds(values: Float64Array, from: number, to: number): Float64Array {
+/** Values by index; the ends as given, and rounding carries none past an end that a validator has accepted. */
+function spaced(from: number, to: number, points: number, valueAt: (i: number) => number): Float64Array {
+  const [low, high] = [Math.min(from, to), Math.max(from, to)];
+  const values = new Float64Array(points);
+  for (let i = 1; i < points - 1; i++) values[i] = Math.min(high, Math.max(low, valueAt(i)));
   values[0] = from;
-  values[values.length - 1] = to;
+  values[points - 1] = to;
   return values;
 }

@@ -87,6 +87,7 @@ const NAMES: Readonly<Record<string, string>> = {
   minute: 'min',
   hour: 'h',
   hr: 'h',
+  day: 'day',
   d: 'day',
   pascal: 'Pa',
   hectopascal: 'hPa',

@@ -152,6 +152,15 @@ export function undecidedQuantity(): z.ZodType<RawQuantity> {
 
 export type RawQuantity = string | number;
 
+/** A list of `least` to `most` items. The library's own limits also look at mappings with a key `length`. */
+export function list<Item extends z.ZodType>(item: Item, expected: string, least: number, most: number): z.ZodType<z.output<Item>[]> {
+  return z
+    .array(item, { error: () => expected })
+    .refine((items) => items.length >= least, { error: () => `at least ${least === 1 ? 'one item' : `${least} items`}`, abort: true })
+    .refine((items) => items.length <= most, { error: () => `at most ${most} items` })
+    .meta({ minItems: least, maxItems: most });
+}
+
 /** One of a few names. */
 export function choice<const Names extends readonly [string, ...string[]]>(
   names: Names,

@@ -23,9 +23,16 @@ export function hashWindow(settings: Case, window: WindowSettings): string {
   return sha256(canonical({ case: settings.sha256, window }));
 }
 
-/** The hash under which a table's columns enter. */
-export function hashColumns(columns: readonly ArrayLike<number>[]): string {
-  return sha256(JSON.stringify(columns.map((column) => (Array.isArray(column) ? column : Array.from(column)))));
+/** The hash under which a table's columns enter: lists as JSON; typed columns, which may be long, as their doubles' bytes. */
+export function hashColumns(columns: readonly (readonly number[] | Float64Array)[]): string {
+  if (!columns.every((column) => column instanceof Float64Array))
+    return sha256(JSON.stringify(columns.map((column) => Array.from(column))));
+  const hash = createHash('sha256');
+  for (const { length, buffer, byteOffset, byteLength } of columns) {
+    hash.update(`${length};`);
+    hash.update(new Uint8Array(buffer, byteOffset, byteLength));
+  }
+  return hash.digest('hex');
 }
 
 /** texts of what is frozen: the points of a scan share their gas data and tables */

@@ -6,6 +6,7 @@ import {
   type Bounds,
   exactlyOne,
   type LoadedTable,
+  list,
   NOT_NEGATIVE,
   pureNumber,
   quantity,
@@ -174,21 +175,20 @@ function baySchema(reader: TableReader): z.ZodType<BayInput> {
       )
         .check(exactlyOne(['pressure', 'table', 'ascent']))
         .optional(),
-      vents: z
-        .array(
-          section(
-            {
-              diameter: quantity('length', { above: 0, ...length }),
-              length: quantity('length', { min: 0, max: 100, text: 'from 0 (a thin hole) to 100 m' }),
-              count: pureNumber('a whole number', { min: 1, max: 1e6, text: 'from 1 to 1e6' }, 4, true).optional(),
-              discharge_coefficient: pureNumber('a number', { above: 0, max: 1, text: 'above 0 and up to 1' }, 0.7).optional(),
-            },
-            'round openings; length 0: a thin hole; count default 1, discharge_coefficient default 0.7',
-          ),
-          { error: () => 'a list of vents { diameter: …, length: … }' },
-        )
-        .max(MOST_PARTS, { error: () => `at most ${MOST_PARTS} vents` })
-        .optional(),
+      vents: list(
+        section(
+          {
+            diameter: quantity('length', { above: 0, ...length }),
+            length: quantity('length', { min: 0, max: 100, text: 'from 0 (a thin hole) to 100 m' }),
+            count: pureNumber('a whole number', { min: 1, max: 1e6, text: 'from 1 to 1e6' }, 4, true).optional(),
+            discharge_coefficient: pureNumber('a number', { above: 0, max: 1, text: 'above 0 and up to 1' }, 0.7).optional(),
+          },
+          'round openings; length 0: a thin hole; count default 1, discharge_coefficient default 0.7',
+        ),
+        'a list of vents { diameter: …, length: … }',
+        0,
+        MOST_PARTS,
+      ).optional(),
       pump: section(
         {
           speed: quantity('volumeRate', { above: 0, max: 1e6, text: 'above 0 and up to 1e6 m^3/s' }),
@@ -197,20 +197,19 @@ function baySchema(reader: TableReader): z.ZodType<BayInput> {
         'speed at the bay, lines included; base_pressure default 0 Pa',
       ).optional(),
       gas_load: quantity('gasFlow', { min: 0, max: 1e9, text: 'from 0 to 1e9 Pa m^3/s' }).optional(),
-      outgassing: z
-        .array(
-          section(
-            {
-              area: quantity('area', { above: 0, max: 1e6, text: 'above 0 and up to 1e6 m^2' }),
-              rate_at_1h: quantity('outgassingRate', NOT_NEGATIVE),
-              exponent: pureNumber('a number', { min: 0, max: 3, text: 'from 0 to 3 (about 1 for metals, 0.5 for polymers)' }, 1),
-            },
-            'a surface that gives off rate_at_1h (t/1 h)^-exponent per area',
-          ),
-          { error: () => 'a list of surfaces { area: …, rate_at_1h: …, exponent: … }' },
-        )
-        .max(MOST_PARTS, { error: () => `at most ${MOST_PARTS} surfaces` })
-        .optional(),
+      outgassing: list(
+        section(
+          {
+            area: quantity('area', { above: 0, max: 1e6, text: 'above 0 and up to 1e6 m^2' }),
+            rate_at_1h: quantity('outgassingRate', NOT_NEGATIVE),
+            exponent: pureNumber('a number', { min: 0, max: 3, text: 'from 0 to 3 (about 1 for metals, 0.5 for polymers)' }, 1),
+          },
+          'a surface that gives off rate_at_1h (t/1 h)^-exponent per area',
+        ),
+        'a list of surfaces { area: …, rate_at_1h: …, exponent: … }',
+        0,
+        MOST_PARTS,
+      ).optional(),
     },
     'a volume at one pressure; outside is required with vents; gas_load default 0',
   ).check(

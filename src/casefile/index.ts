@@ -99,13 +99,10 @@ export function readCase(
   problems.push(...plain.problems);
   if (plain.problems.some((p) => p.code === 'aliases' || p.code === 'too-deep')) return { ok: false, problems };
 
-  const schemas = caseSchemas({
-    reader: onceEach(reader),
-    datasets,
-    gasNames: Object.keys(builtIns.gases),
-    materialNames: builtIns.materials,
-  });
-  const { file, run } = schemas;
+  const { file, run } = caseSchemas(
+    { reader: onceEach(reader), datasets, gasNames: Object.keys(builtIns.gases), materialNames: builtIns.materials },
+    Object.keys(plain.value as Plain),
+  );
   const validated = file.safeParse(plain.value, { reportInput: false, jitless: true });
   if (!validated.success) problems.push(...problemsOf(validated.error.issues, file, plain.value, document));
   problems.push(...missingYields(plain.value, builtIns, document));

@@ -109,6 +109,9 @@ function excluded(base: Plain, axes: readonly Axis[]): { readonly k: number; rea
 }
 
 function repeated(values: Float64Array): number | null {
+  const rising = values[values.length - 1] > values[0];
+  // from, to and points give values in order: no need to sort a million of them
+  if (values.every((value, i) => i === 0 || (rising ? value > values[i - 1] : value < values[i - 1]))) return null;
   const sorted = values.toSorted();
   const index = sorted.findIndex((value, i) => i > 0 && value === sorted[i - 1]);
   return index < 0 ? null : sorted[index];

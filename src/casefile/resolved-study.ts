@@ -82,7 +82,7 @@ function constantOrRows(path: string, given: number | Rows): Entries {
 }
 
 function rowsText({ times, values }: Rows): string {
-  return `sha256:${hashColumns([times, values])}`;
+  return `sha256:${hashColumns([times, values].map((column) => Float64Array.from(column)))}`;
 }
 
 function prefixed(path: string, entries: Entries): Entries {

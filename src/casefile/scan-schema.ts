@@ -6,6 +6,7 @@ import {
   across,
   type Bounds,
   choice,
+  list,
   POSITIVE,
   pureNumber,
   quantity,
@@ -52,11 +53,12 @@ const MOST_AXES = 20;
 export function scanSchema(run: z.ZodType): z.ZodType<ScanInput> {
   return section(
     {
-      vary: z
-        .array(axisSchema(run), { error: () => 'a list of entries { path: …, values: […] } or { path: …, from: …, to: …, points: … }' })
-        .min(1, { error: () => 'at least one entry' })
-        .max(MOST_AXES, { error: () => `at most ${MOST_AXES} entries` })
-        .optional(),
+      vary: list(
+        axisSchema(run),
+        'a list of entries { path: …, values: […] } or { path: …, from: …, to: …, points: … }',
+        1,
+        MOST_AXES,
+      ).optional(),
       zip: z.boolean({ error: () => 'true (the entries walk together) or false (a grid)' }).optional(),
       find: findSchema().optional(),
     },
@@ -74,10 +76,7 @@ function axisSchema(run: z.ZodType): z.ZodType<AxisInput> {
   return section(
     {
       path: z.string({ error: () => 'the path of a quantity or plain number of the case, e.g. gas.pressure' }),
-      values: z
-        .array(undecidedQuantity(), { error: () => 'a list of quantities, e.g. [350 V, 400 V]' })
-        .min(1, { error: () => 'at least one value' })
-        .optional(),
+      values: list(undecidedQuantity(), 'a list of quantities, e.g. [350 V, 400 V]', 1, MOST_POINTS).optional(),
       from: undecidedQuantity().optional(),
       to: undecidedQuantity().optional(),
       points: pureNumber('a whole number', { min: 2, max: MOST_POINTS, text: `from 2 to ${MOST_POINTS}` }, 25, true).optional(),

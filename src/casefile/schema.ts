@@ -6,6 +6,7 @@ import {
   type Dimensioned,
   exactlyOne,
   type LoadedTable,
+  list,
   NOT_NEGATIVE,
   POSITIVE,
   pureNumber,
@@ -123,7 +124,9 @@ export interface CaseSchemas {
   readonly run: z.ZodType<CaseInput>;
 }
 
-export function caseSchemas(context: SchemaContext): CaseSchemas {
+/** @param keys  the keys of the case: building the schemas of scan and history takes longer than reading most cases, so it is left where neither
+ *               is asked for */
+export function caseSchemas(context: SchemaContext, keys: readonly string[] = ['scan', 'history']): CaseSchemas {
   const shape = runShape(context);
   const description = 'A gap, its gas and electrodes, what feeds it, and how long to watch it';
   const run = section(shape, description);
@@ -131,8 +134,10 @@ export function caseSchemas(context: SchemaContext): CaseSchemas {
   const file = section(
     {
       ...shape,
-      scan: scanSchema(run).optional(),
-      history: historySchema({ reader, datasets, temperature: TEMPERATURE, voltage: VOLTAGE }).optional(),
+      scan: keys.includes('scan') ? scanSchema(run).optional() : z.undefined().optional(),
+      history: keys.includes('history')
+        ? historySchema({ reader, datasets, temperature: TEMPERATURE, voltage: VOLTAGE }).optional()
+        : z.undefined().optional(),
     },
     description,
   ).check(across((sound, report, given) => checkStudies(sound as Partial<CaseInput>, report, given)));
@@ -157,10 +162,7 @@ function runShape(context: SchemaContext): Readonly<Record<string, z.ZodType>> {
     observe: section(
       {
         until: quantity('time', { above: 0, max: 1e9, text: 'above 0 and up to 1e9 s' }),
-        currents: z
-          .array(quantity('current', POSITIVE), { error: () => 'a list of currents, e.g. [1 nA, 1 uA]' })
-          .max(1000, { error: () => 'at most 1000 currents' })
-          .optional(),
+        currents: list(quantity('current', POSITIVE), 'a list of currents, e.g. [1 nA, 1 uA]', 0, 1000).optional(),
       },
       'how long, and which conduction currents to report when first crossed',
     ),

@@ -1,19 +1,44 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { caseTemplate, formatProblem } from '../../src/casefile/index.ts';
-import { GOOD, OWN_GAS, read } from './help.ts';
+import { following, GOOD, OWN_GAS, read, varied } from './help.ts';
 
 const TABLES = { 'bias.csv': 't [s],bias [V]\n0,0\n1,5\n', 'odd.csv': '",[]#\n\u0000,,\n' };
-const TEXTS = [GOOD, OWN_GAS, caseTemplate(), GOOD.replace('step: 420 V', 'table: { file: bias.csv, time: t, voltage: bias }')];
+const SETS = {
+  'log.h5:/p': { ok: true, values: Float64Array.of(1, 2), units: 'Pa' },
+  'log.h5:/t': { ok: true, values: Float64Array.of(1, 2), units: 's' },
+} as const;
+const STUDIES = [
+  varied(
+    ['{ path: gas.pressure, from: 1 Pa, to: 1 kPa, points: 100, spacing: log }', '{ path: gap.spacing, values: [1 mm] }'],
+    '  find: { what: hold-off, from: 1 V, to: 1 kV, tolerance: 1 % }\n',
+  ),
+  following(
+    '{ bay: { volume: 1 L, start: 1 bar, outside: { ascent: { from: 0 km, to: 9 km, rate: 5 m/s } }, vents: [{ diameter: 1 mm, length: 1 mm, count: 2 }], pump: { speed: 1 L/s }, outgassing: [{ area: 1 m^2, rate_at_1h: 1e-6 Pa m/s, exponent: 1 }] } }',
+    '  duration: 1 h\n  temperature: 300 K\n  voltage: { table: { file: bias.csv, time: t, voltage: bias } }\n',
+  ),
+  following('{ dataset: { file: log.h5, dataset: /p, time: /t } }', ''),
+];
+const TEXTS = [GOOD, OWN_GAS, caseTemplate(), GOOD.replace('step: 420 V', 'table: { file: bias.csv, time: t, voltage: bias }'), ...STUDIES];
 
 /** Reads a text and checks what must hold of any answer. */
 function survives(text: string, overrides: string[] = []): void {
   const start = performance.now();
-  const result = read(text, overrides, TABLES);
+  const result = read(text, overrides, TABLES, SETS);
   expect(performance.now() - start).toBeLessThan(5000);
   if (result.ok) {
     expect(result.case.gap.spacing).toBeGreaterThan(0);
     expect(Number.isFinite(result.case.gas.density)).toBe(true);
+    const { scan, window } = result;
+    // any scan that is accepted has a point, at least one of whose ends makes a case
+    if (scan !== null) {
+      const ends = [0, -1].map((end) => result.at(scan.axes.map(({ values }) => values.at(end) ?? Number.NaN)));
+      expect(scan.axes.length > 1 || ends.every((end) => end.ok)).toBe(true);
+    }
+    if (window !== null) {
+      expect(window.history.duration).toBeGreaterThan(0);
+      expect(window.margin).toBeGreaterThanOrEqual(1);
+    }
     return;
   }
   expect(result.problems.length).toBeGreaterThan(0);
@@ -73,6 +98,14 @@ const scrap = fc.oneof(
     '__proto__',
     'table',
     'file: odd.csv',
+    'path: gas',
+    'values: [',
+    'points: 3',
+    'spacing: log',
+    '1e6',
+    'zip: true',
+    'what: trip-delay',
+    'length: 5',
     'K0',
     'form: root',
   ),
@@ -108,12 +141,12 @@ describe('no text crashes, hangs or throws', () => {
   });
 
   it('any value anywhere', () => {
-    const paths = [...GOOD.matchAll(/^ *(\w+):/gm)].map((m) => m[1]);
+    const places = [GOOD, ...STUDIES].flatMap((text) => [...text.matchAll(/\b(\w+):/g)].map((m) => ({ text, key: m[1] })));
     fc.assert(
-      fc.property(fc.constantFrom(...paths), fc.json({ maxDepth: 3 }), (key, json) =>
-        survives(GOOD.replace(new RegExp(`^( *${key}:).*$`, 'm'), `$1 ${json.replaceAll('$', '$$$$')}`)),
+      fc.property(fc.constantFrom(...places), fc.json({ maxDepth: 3 }), ({ text, key }, json) =>
+        survives(text.replace(new RegExp(`\\b(${key}:)( *[^,{}\\n\\[\\]]*)`), `$1 ${json.replaceAll('$', '$$$$')}`)),
       ),
-      { numRuns: 300 },
+      { numRuns: 400 },
     );
   });
 
@@ -126,6 +159,14 @@ describe('no text crashes, hangs or throws', () => {
         'observe.currents.0',
         'gas.coefficients.ionisation.C',
         'electrodes.left',
+        'scan',
+        'scan.vary.0.path',
+        'scan.vary.0.values',
+        'scan.vary.0.points',
+        'scan.find',
+        'history.pressure',
+        'history.pressure.bay.vents',
+        'history.voltage',
         '',
         '__proto__',
         '0.0',

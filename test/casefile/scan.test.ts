@@ -337,7 +337,7 @@ const AXES: Row[] = [
     null,
   ],
   ['no values', '{ path: gas.pressure }', '', 7, 'either-or', 'either values, or from, to and points', 'none of them', null],
-  ['an empty list', '{ path: gas.pressure, values: [] }', '.values', 37, 'wrong-type', 'at least one value', 'a list', null],
+  ['an empty list', '{ path: gas.pressure, values: [] }', '.values', 37, 'wrong-type', 'at least one item', 'a list', null],
   [
     'values and a range',
     '{ path: gas.pressure, values: [1 Pa], from: 1 Pa }',
@@ -508,8 +508,8 @@ describe('entries of a scan must fit together', () => {
   });
 
   it('more than twenty entries, none, no list', () => {
-    expect(problems(varied(Array(21).fill(STEP)))[0]).toMatchObject({ path: 'scan.vary', expected: 'at most 20 entries' });
-    expect(problem(`${GOOD}scan: { vary: [] }\n`)).toMatchObject({ path: 'scan.vary', line: 18, expected: 'at least one entry' });
+    expect(problems(varied(Array(21).fill(STEP)))[0]).toMatchObject({ path: 'scan.vary', expected: 'at most 20 items' });
+    expect(problem(`${GOOD}scan: { vary: [] }\n`)).toMatchObject({ path: 'scan.vary', line: 18, expected: 'at least one item' });
     expect(problem(`${GOOD}scan: { vary: 5 }\n`)).toMatchObject({ path: 'scan.vary', code: 'wrong-type' });
     expect(problem(`${GOOD}scan: {}\n`)).toMatchObject({ path: 'scan', code: 'missing-key', expected: 'vary, find, or both' });
     expect(problem(`${GOOD}scan: { zip: yes, vary: [${STEP}] }\n`)).toMatchObject({ path: 'scan.zip', code: 'wrong-type', found: 'yes' });

@@ -55,6 +55,37 @@ describe('what check prints for people', () => {
     for (const line of out.split('\n')) if (line !== NOT_A_CLEARANCE) expect([...line].length, line).toBeLessThanOrEqual(80);
   });
 
+  test('validates a scan and a history, and says with one line each who uses them', async () => {
+    const more = `scan:
+  vary:
+    - { path: gas.pressure, from: 1 Torr, to: 5 Torr, points: 5 }
+    - { path: supply.voltage.step, values: [150 V, 200 V] }
+  find: { what: hold-off, from: 100 V, to: 400 V }
+history:
+  duration: 2 h
+  pressure: { ascent: { from: 0 km, to: 35 km, rate: 5 m/s } }
+`;
+    const path = program.write('studies.yaml', openCase({ voltage: 'step: 150 V', more }));
+    const { code, out } = await program.run(['check', path]);
+    expect(code).toBe(0);
+    expect(out.replace(/\n +/g, ' ')).toContain('Its scan (10 points, hold-off at each) is not used here but by gapwake scan.');
+    expect(out).toContain('Its pressure history (7200 s) is not used here but by gapwake window.');
+    const ran = (await program.run(['run', path])).out;
+    expect(ran).toContain('Its scan (10 points, hold-off at each) is not used here but by gapwake scan.\nIts pressure history');
+    const plain = await program.run(['check', program.write('open.yaml', openCase())]);
+    expect(plain.out).not.toMatch(/scan|history/);
+    const resolved = JSON.parse((await program.run(['check', path, '--json'])).out).case;
+    expect(resolved).toMatchObject({
+      'scan.vary.0.points': 5,
+      'scan.vary.1.to': 200,
+      'scan.find.what': 'hold-off',
+      'history.duration': 7200,
+      'history.pressure.ascent.to': 35000,
+      'history.voltage': 150,
+    });
+    expect((await program.run(['run', program.write('bad.yaml', openCase({ more: more.replace('2 h', '2 V') }))])).code).toBe(2);
+  });
+
   test('escapes control characters of the title', async () => {
     const { out } = await program.run(['check', program.write('evil.yaml', openCase({ title: '"\\e[2J\\x9b31mred\\u202e"' }))]);
     expect(out).toMatch(/^\\u001b\[2J\\u009b31mred\\u202e\n/);
