@@ -59,7 +59,7 @@ export function checkText(answer: CheckAnswer, terminal: Terminal): string {
 }
 
 /** Every value of the case, defaults marked. */
-function caseRows({ case: settings, defaults }: LoadedCase): Row[] {
+export function caseRows({ case: settings, defaults }: LoadedCase): Row[] {
   const { gap, gas, electrodes, seed, supply, observe, numerics } = settings;
   const used = new Set(defaults.map(({ path }) => path));
   const rows: Row[] = [];
@@ -130,7 +130,7 @@ function programmeRows({ supply: { programme } }: Case, used: ReadonlySet<string
 }
 
 /** How entries were read, and the defaults that stand in no row. */
-function remarks({ defaults, notes }: LoadedCase): string[] {
+export function remarks({ defaults, notes }: LoadedCase): string[] {
   const coefficients = defaults.filter(({ path }) => path.startsWith('gas.coefficients.'));
   return [...coefficients.map(({ path, value }) => `${path}: ${value}  (default)`), ...notes].map(printable);
 }

@@ -4,6 +4,7 @@ import { EXIT } from './exit-codes.ts';
 import { Failure, problemWithoutPlace } from './failure.ts';
 import { wrap } from './layout.ts';
 import { printable, printableJson } from './printable.ts';
+import type { ReportOptions } from './report.ts';
 import { processTerminal, type Terminal } from './terminal.ts';
 
 /** The command line: arguments -> a command -> an exit code. What a command needs is loaded when it is called, so that `--help` answers at once. */
@@ -164,6 +165,20 @@ function programOf(terminal: Terminal, done: (exitCode: number) => void): Comman
     .action(async (path: string, options: WindowOptions) => {
       const { window } = await import('./window.ts');
       done(await window(path, options, terminal));
+    });
+
+  program
+    .command('report')
+    .argument('<file.h5>', 'result of a run')
+    .description('one self-contained page with figures from a result file; needs no network')
+    .option('-o, --output <file.html>', 'the page (default: beside the result); replaces an older page, nothing else')
+    .option('--figures <folder>', 'also write every figure as SVG, and as PNG where rsvg-convert is installed')
+    .option('--quiet', 'print problems only')
+    .helpOption('-h, --help', 'print this help')
+    .action(async (path: string, options: ReportOptions) => {
+      const { report } = await import('./report.ts');
+      await report(path, options, terminal);
+      done(EXIT.done);
     });
 
   return program;

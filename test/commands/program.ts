@@ -33,7 +33,7 @@ export function realProgram(): {
     folder = mkdtempSync(join(tmpdir(), 'gapwake-commands-'));
     const { scripts } = JSON.parse(readFileSync(join(root, 'package.json'), 'utf8')) as { scripts: { build: string } };
     // the bundler's part of the script, into another folder: tests must not take away the program that somebody is using
-    const elsewhere = /esbuild .*--outdir=dist.*/.exec(scripts.build)?.[0].replace('--outdir=dist', `--outdir='${built}'`);
+    const elsewhere = /esbuild .*--outdir=dist.*/.exec(scripts.build)?.[0].replaceAll('--outdir=dist', `--outdir='${built}'`);
     if (elsewhere === undefined) throw new Error('the build script has changed: no esbuild with --outdir=dist');
     const PATH = `${join(root, 'node_modules', '.bin')}${delimiter}${process.env.PATH}`;
     execFileSync('/bin/sh', ['-c', elsewhere], { cwd: root, env: { ...process.env, PATH } });

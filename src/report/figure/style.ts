@@ -1,0 +1,57 @@
+/** How figures look, on light and on dark ground. Plain CSS without variables: readers of SVG files know no more. */
+export interface Theme {
+  readonly ground: string;
+  readonly ink: string;
+  readonly faint: string;
+  readonly grid: string;
+  readonly mark: string;
+  /** colours of curves; dashes tell them apart as well */
+  readonly series: readonly [string, string, string, string];
+}
+
+export const LIGHT: Theme = {
+  ground: '#ffffff',
+  ink: '#1d2733',
+  faint: '#566273',
+  grid: '#dfe3e8',
+  mark: '#7d3a52',
+  series: ['#0a5a8c', '#b3500c', '#3f4a57', '#8e2f74'],
+};
+
+export const DARK: Theme = {
+  ground: '#141b23',
+  ink: '#e6ebf0',
+  faint: '#a5b1bf',
+  grid: '#2b3643',
+  mark: '#f0a3bb',
+  series: ['#74c4f0', '#f3a95f', '#c6ced8', '#e59bd2'],
+};
+
+const DASHES = ['', '7 4', '2 3', '9 3 2 3'];
+const WIDTHS = [2, 1.8, 1.8, 1.8];
+
+/** The rules of one theme. @param within  selector in front of each, for pages */
+export function figureStyle(theme: Theme, within = ''): string {
+  const rule = (selector: string, body: string): string => `${within}${selector}{${body}}`;
+  return [
+    rule('.figure text', `fill:${theme.ink};font-size:12px;stroke:none`),
+    rule('.figure .heading', 'font-size:13px;font-weight:bold'),
+    rule('.figure .name,.figure .note', `fill:${theme.faint}`).replace(',.figure .note', `,${within}.figure .note`),
+    rule('.figure .ground', `fill:${theme.ground}`),
+    rule('.figure .grid', `stroke:${theme.grid};fill:none`),
+    rule('.figure .axis path', `stroke:${theme.ink};fill:none`),
+    rule('.figure .edge', `stroke:${theme.ink}`),
+    rule('.figure .axis .edge', 'fill:none'),
+    rule('.figure .mark path', `stroke:${theme.mark};fill:none;stroke-dasharray:4 2`),
+    rule('.figure .mark text', `fill:${theme.mark}`),
+    rule('.figure .reading', 'font-weight:bold'),
+    rule('.figure .curve', 'fill:none;stroke-linejoin:round'),
+    ...theme.series.map((colour, i) =>
+      rule(`.figure .s${i + 1}`, `stroke:${colour};stroke-width:${WIDTHS[i]}${DASHES[i] === '' ? '' : `;stroke-dasharray:${DASHES[i]}`}`),
+    ),
+    rule('.figure .band', `fill:${theme.series[0]};opacity:0.18`),
+    rule('.figure .now', `stroke:${theme.ink};stroke-width:1.5;fill:none`),
+    rule('.figure .halo', `stroke:${theme.ground};stroke-width:4;fill:none;opacity:0.75`),
+    rule('.figure .point', `fill:${theme.ground};stroke:${theme.mark};stroke-width:1.8`),
+  ].join('\n');
+}

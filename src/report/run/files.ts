@@ -1,0 +1,58 @@
+import { el, markup } from '../element.ts';
+import { figureStyle, LIGHT } from '../figure/style.ts';
+import type { Figure } from '../figure/frame.ts';
+import { pngAddress } from '../png.ts';
+import { FIELDS, nearest, type RunSeries, SCALARS } from './data.ts';
+import { eventsOf } from './events.ts';
+import { pathFigure, PROFILES, profileFigure, timeFigure, timeFigureNames } from './figures.ts';
+import { settingOf } from './page.ts';
+import type { RunReport } from './report.ts';
+import { TIME_AXES, timeScale } from './time-axis.ts';
+
+/** A figure as the text of an SVG file. */
+export interface FigureFile {
+  /** without ending */
+  readonly name: string;
+  readonly svg: string;
+}
+
+/** One figure as a file of its own: light, on paper, in a font that converters have. */
+export function svgFile({ root }: Figure): string {
+  const style = `.figure text{font-family:'DejaVu Sans',sans-serif}\n${figureStyle(LIGHT)}`;
+  const paper = el('rect', { width: '100%', height: '100%', fill: '#ffffff' });
+  const [title, description, ...rest] = root.children;
+  const children = [title, description, el('style', {}, style), paper, ...rest];
+  return `<?xml version="1.0" encoding="UTF-8"?>\n${markup({ ...root, children })}\n`;
+}
+
+/** [px] */
+const WIDTH = { time: 900, now: 520 };
+
+/** Every figure of a run: those over time on each of the time axes, profiles at each event and at the end, the path. */
+export function runFigures(run: RunReport): FigureFile[] {
+  const series = seriesOf(run);
+  const files: FigureFile[] = [];
+  for (const { kind } of TIME_AXES) {
+    const layout = { width: WIDTH.time, scale: timeScale(kind, series), nameMarks: true };
+    for (const name of timeFigureNames(series))
+      files.push({ name: kind === 'activity' ? name : `${name}-${kind}-time`, svg: svgFile(timeFigure(name, series, layout, pngAddress)) });
+  }
+  const moments = [...series.events, { name: 'end', time: series.time[series.time.length - 1] }];
+  for (const { name: event, time } of moments)
+    for (const name of PROFILES)
+      files.push({ name: `${name}-${event.replaceAll(' ', '-')}`, svg: svgFile(profileFigure(name, series, nearest(series.time, time), WIDTH.now)) });
+  files.push({ name: 'path', svg: svgFile(pathFigure(series, null, WIDTH.now)) });
+  return files;
+}
+
+function seriesOf(run: RunReport): RunSeries {
+  const { time, x } = run;
+  return {
+    time,
+    x,
+    scalars: Object.fromEntries(SCALARS.map((key) => [key, run.scalars[key]])) as RunSeries['scalars'],
+    fields: Object.fromEntries(FIELDS.map((key) => [key, run.fields[key]])) as RunSeries['fields'],
+    setting: settingOf(run),
+    events: eventsOf(run),
+  };
+}

@@ -1,0 +1,196 @@
+import type { State } from '../../onset/outcome.ts';
+import { type Element, el } from '../element.ts';
+import { html } from '../document.ts';
+import { packEven, packExact, packLog } from '../pack.ts';
+import type { Packed } from '../packed.ts';
+import { cautionSection, footer, provenance, type TableFile } from '../sections.ts';
+import { coefficientSection } from './coefficient-section.ts';
+import { FIELDS, type RunEvent, type RunField, type RunScalar, type RunSetting, SCALARS } from './data.ts';
+import { eventsOf } from './events.ts';
+import { allNumbers, type Cell, keyRows } from './key-numbers.ts';
+import type { RunReport } from './report.ts';
+import { TIME_AXES } from './time-axis.ts';
+
+/** What the page's script reads. */
+export interface RunPageData {
+  readonly kind: 'run';
+  readonly time: Packed;
+  readonly x: Packed;
+  readonly scalars: Readonly<Record<RunScalar, Packed>>;
+  readonly fields: Readonly<Partial<Record<RunField, Packed>>>;
+  readonly setting: RunSetting;
+  readonly events: readonly RunEvent[];
+}
+
+/** decades of densities below their largest value that the page keeps */
+const DECADES = 18;
+
+/** The page of a run. @param script  the bundled script of run pages */
+export function runPage(run: RunReport, script: string): string {
+  return html({
+    title: `${run.title} – gapwake run`,
+    body: [
+      el('a', { class: 'skip', href: '#figures' }, 'Skip to the figures'),
+      header(run),
+      el('main', {}, summary(run), figures(run), assumptions(run), coefficientSection(run), evidence(run)),
+      footer(run.reportVersion),
+    ],
+    data: pageData(run),
+    script,
+  });
+}
+
+function pageData(run: RunReport): RunPageData {
+  const { fields } = run;
+  const columns = run.x.length;
+  const packedFields = FIELDS.flatMap((key) => {
+    const values = fields[key];
+    if (values === null) return [];
+    return [[key, key === 'electricField' ? packEven(values, columns) : packLog(values, columns, DECADES)] as const];
+  });
+  return {
+    kind: 'run',
+    time: packExact(run.time),
+    x: packExact(run.x),
+    scalars: Object.fromEntries(SCALARS.map((key) => [key, packExact(run.scalars[key])])) as Record<RunScalar, Packed>,
+    fields: Object.fromEntries(packedFields),
+    setting: settingOf(run),
+    events: eventsOf(run),
+  };
+}
+
+/** What the figures need of the case. */
+export function settingOf({ settings, x }: RunReport): RunSetting {
+  const supply = settings?.supply ?? null;
+  return {
+    // without the case: as much beyond the last cell as before the first
+    spacing: settings?.gap.spacing ?? x[0] + x[x.length - 1],
+    seriesResistance: supply?.seriesResistance ?? null,
+    currentLimit: supply?.currentLimit ?? null,
+    density: settings?.gas.density ?? null,
+  };
+}
+
+const STATES: Readonly<Record<State, string>> = { holds: 'Holds', 'breaks-down': 'Breaks down', undecided: 'Undecided' };
+
+function header(run: RunReport): Element {
+  const { state, regime, reason } = run.outcome.verdict;
+  return el(
+    'header',
+    {},
+    el('p', { class: 'kind' }, `One gap, energised once: ${run.fileName}`),
+    el('h1', {}, run.title),
+    el(
+      'p',
+      { class: `verdict ${state}` },
+      el('strong', {}, `${STATES[state]}${state === 'breaks-down' ? ` (${regime})` : ''}.`),
+      ` ${reason}`,
+    ),
+  );
+}
+
+function summary(run: RunReport): Element {
+  return el('div', { class: 'pair' }, el('section', {}, el('h2', {}, 'Key numbers'), keyTable(run)), cautionSection(run.outcome.cautions));
+}
+
+function keyTable(run: RunReport): Element {
+  const rows = keyRows(run).map(({ label, theory, simulated }) =>
+    el(
+      'tr',
+      {},
+      el('th', { scope: 'row' }, label),
+      el('td', { 'data-label': 'theory' }, cellOf(theory)),
+      el('td', { 'data-label': 'simulated' }, cellOf(simulated)),
+    ),
+  );
+  return el(
+    'table',
+    { class: 'stack' },
+    el('thead', {}, el('tr', {}, el('td', {}, ''), el('th', { scope: 'col' }, 'Theory, no space charge'), el('th', { scope: 'col' }, 'Simulated'))),
+    el('tbody', {}, rows),
+  );
+}
+
+function cellOf(cell: Cell): (Element | string)[] {
+  return cell.map((part) =>
+    typeof part === 'string'
+      ? part
+      : el('span', { class: 'number', 'data-path': part.path, 'data-value': part.value === null ? 'null' : String(part.value) }, part.text),
+  );
+}
+
+/** Empty places that the script fills. */
+function figures(run: RunReport): Element {
+  const last = Math.max(0, run.time.length - 1);
+  return el(
+    'section',
+    { id: 'figures', 'aria-labelledby': 'figures-heading' },
+    el('h2', { id: 'figures-heading' }, 'What happened, moment by moment'),
+    el(
+      'p',
+      { class: 'faint no-print' },
+      'All figures are linked: point at any figure over time, or use the slider and the arrow keys, to choose the moment that the profiles and the current–voltage path show. ',
+      'A click or tap holds it; [ and ] step from event to event.',
+    ),
+    el('noscript', {}, el('p', {}, 'The figures are drawn by the script inside of this page, which is switched off here. gapwake report FILE.h5 --figures DIR writes them as files.')),
+    el(
+      'div',
+      { class: 'rail', role: 'group', 'aria-label': 'Linked time' },
+      el('output', { class: 'where', id: 'where', for: 'moment' }, ''),
+      el('input', { type: 'range', id: 'moment', min: 0, max: last, value: 0, step: 1, 'aria-label': 'Moment, by snapshot' }),
+      el('button', { type: 'button', id: 'hold', 'aria-pressed': 'false' }, 'Hold'),
+      el('span', { class: 'choices', id: 'events', role: 'group', 'aria-label': 'Events' }),
+      el(
+        'fieldset',
+        { class: 'choices' },
+        el('legend', {}, 'Time axis'),
+        TIME_AXES.map(({ kind, name, explanation }) =>
+          el('label', { title: explanation }, el('input', { type: 'radio', name: 'axis', value: kind, checked: kind === 'activity' }), ` ${name}`),
+        ),
+      ),
+    ),
+    el('p', { class: 'faint', id: 'axis-explanation' }, TIME_AXES[0].explanation),
+    el('div', { class: 'bench' }, el('div', { class: 'time-column', id: 'over-time' }), el('div', { class: 'now-column', id: 'now' })),
+  );
+}
+
+function assumptions(run: RunReport): Element {
+  const rows = run.assumptions.map(([label, value]) => el('tr', {}, el('th', { scope: 'row' }, label), el('td', {}, value)));
+  return el(
+    'section',
+    { id: 'assumptions' },
+    el('h2', {}, 'What was assumed'),
+    rows.length === 0
+      ? el('p', {}, 'This version of the program cannot resolve the case of this file; its text is below.')
+      : el('div', { class: 'scroll', tabindex: 0, role: 'region', 'aria-label': 'The case' }, el('table', {}, el('tbody', {}, rows))),
+    ...(run.remarks.length === 0 ? [] : [el('ul', {}, run.remarks.map((note) => el('li', {}, note)))]),
+    el(
+      'p',
+      {},
+      'The model: one dimension between bare, parallel electrodes; electrons, positive ions and, in attaching gases, negative ions drift, diffuse and multiply with ',
+      'coefficients of the local field; space charge and the supply act back through Gauss’s law and the circuit. Insulators, edges, photons, ',
+      'metastables and the heating of the gas are outside it unless a row above says otherwise.',
+    ),
+  );
+}
+
+function evidence(run: RunReport): Element {
+  const { outcome } = run;
+  const { numerics } = outcome;
+  const facts: [string, string][] = [
+    ['Result file', `${run.fileName}, written by gapwake ${run.version}`],
+    ['Case', `SHA-256 ${outcome.case_sha256}`],
+    ['Snapshots', `${run.time.length} of ${numerics.steps} steps (${numerics.rejected} more rejected), at ${run.x.length} cells`],
+    ['Tolerance', String(numerics.tolerance)],
+    ['Linear solves', `${numerics.newton}, in ${numerics.wall_s.toPrecision(3)} s`],
+    ['Charge balance', `held to ${numerics.charge_defect.toPrecision(2)} of the charge passed`],
+    ['Worst undershoot of a density', `${numerics.worst_undershoot.toPrecision(2)} of its largest value`],
+  ];
+  return provenance({
+    facts,
+    caseText: run.caseText,
+    tables: run.tables as readonly TableFile[],
+    command: 'gapwake run case.yaml -o result.h5',
+    numbers: allNumbers(outcome),
+  });
+}

@@ -1,0 +1,104 @@
+import type { Caution, CautionCode } from '../onset/outcome.ts';
+import { type Element, el } from './element.ts';
+
+/** Parts that pages of every kind share. */
+
+/** cautions about people and hardware; the others limit the model or its numbers */
+const SAFETY: ReadonlySet<CautionCode> = new Set<CautionCode>([
+  'not-a-clearance',
+  'arc-risk',
+  'longer-path',
+  'few-electrons',
+  'yield-spread',
+  'seed-lowers-threshold',
+  'insulator',
+  'edges',
+  'streamer',
+  'field-emission',
+]);
+
+/** The cautions, safety first, under what always holds. */
+export function cautionSection(cautions: readonly Caution[]): Element {
+  const shown = cautions.filter(({ code }) => code !== 'not-a-clearance');
+  const ordered = [...shown.filter(({ code }) => SAFETY.has(code)), ...shown.filter(({ code }) => !SAFETY.has(code))];
+  return el(
+    'section',
+    { id: 'cautions' },
+    el('h2', {}, 'Cautions'),
+    el(
+      'p',
+      { class: 'clearance' },
+      'Not a clearance. Stored charge and defeated interlocks can kill: discharge stored charge, keep interlocks, test at pressure. ',
+      'A model’s “holds” permits nobody to approach or to certify; local codes and licensed practice decide.',
+    ),
+    el(
+      'ul',
+      { class: 'cautions' },
+      ordered.map(({ code, text }) => el('li', { class: SAFETY.has(code) ? 'safety' : null }, text, ' ', el('code', { class: 'faint' }, code))),
+    ),
+  );
+}
+
+export interface TableFile {
+  readonly file: string;
+  readonly text: string;
+}
+
+/** Where the numbers come from and how to make them again. */
+export function provenance({
+  facts,
+  caseText,
+  tables,
+  command,
+  numbers,
+}: {
+  readonly facts: readonly (readonly [label: string, value: string])[];
+  readonly caseText: string;
+  readonly tables: readonly TableFile[];
+  readonly command: string;
+  readonly numbers: readonly (readonly [path: string, value: number | null])[];
+}): Element {
+  return el(
+    'section',
+    { id: 'provenance' },
+    el('h2', {}, 'Provenance'),
+    el('table', {}, el('tbody', {}, facts.map(([label, value]) => el('tr', {}, el('th', { scope: 'row' }, label), el('td', {}, value))))),
+    el('h3', {}, 'To make it again'),
+    el(
+      'p',
+      {},
+      `Save the case below as case.yaml${tables.length === 0 ? '' : ', and each table beside it under its name'}, then: `,
+      el('code', {}, command),
+      '. The same version gives the same numbers; the hash of the case says whether it is the same case.',
+    ),
+    el('details', { open: true }, el('summary', {}, 'The case'), el('pre', { tabindex: 0, 'aria-label': 'The case' }, caseText)),
+    ...tables.map(({ file, text }) => el('details', {}, el('summary', {}, `Table ${file}`), el('pre', { tabindex: 0, 'aria-label': `Table ${file}` }, text))),
+    ...(numbers.length === 0
+      ? []
+      : [
+          el(
+            'details',
+            {},
+            el('summary', {}, 'Every number of the outcome, SI'),
+            el(
+              'table',
+              {},
+              el(
+                'tbody',
+                {},
+                numbers.map(([path, value]) => el('tr', {}, el('th', { scope: 'row' }, el('code', {}, path)), el('td', { 'data-outcome': path }, value === null ? 'null' : String(value)))),
+              ),
+            ),
+          ),
+        ]),
+  );
+}
+
+export function footer(version: string): Element {
+  return el(
+    'footer',
+    {},
+    el('p', {}, `Page written by gapwake ${version}. It holds everything it shows and asks nothing of any network.`),
+    el('p', {}, 'Not a clearance: discharge stored charge, keep interlocks, test at pressure; local codes and licensed practice decide.'),
+  );
+}
