@@ -90,9 +90,9 @@ describe('electron curves of the data', () => {
 
   // 0.6 of the solution in oxygen and water vapour, all of it in carbon dioxide. 6 %: rounding of rows and coarser cells
   it.each([
-    ['oxygen', 0.6, [50, 100, 200, 500, 1000]],
-    ['carbon dioxide', 1, [100, 200, 500, 1000]],
-    ['water vapour', 0.6, [50, 100, 200, 500, 1000]],
+    ['oxygen', 0.6, [20, 30, 50, 70, 100, 150, 200, 300, 500, 1000]],
+    ['carbon dioxide', 1, [50, 70, 100, 150, 200, 300, 500, 1000, 2000]],
+    ['water vapour', 0.6, [50, 70, 100, 150, 200, 300, 500, 1000, 2000]],
   ] as const)('attach in %s by %d of what is computed, at %j Td', (gas, share, fields) => {
     const { attachment } = gases[gas].coefficients;
     for (const td of fields) {
