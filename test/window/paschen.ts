@@ -19,7 +19,11 @@ export interface Yields {
 
 /** A case with that gas; its supply steps to 300 V. */
 export function paschenCase(yields: Yields, changes: Partial<Case> = {}): Case {
-  const surface = { material: null, ionYield: { ...yields, source: 'test', status: 'given', uncertainty: null }, workFunction: null } as const;
+  const surface = {
+    material: null,
+    ionYield: { ...yields, source: 'test', status: 'given', uncertainty: null },
+    workFunction: null,
+  } as const;
   const base = makeCase();
   return makeCase({
     gap: { ...base.gap, spacing: SPACING, longestPath: SPACING },
@@ -73,7 +77,8 @@ export function analytic(yields: Yields, ratio: (density: number) => number = ()
     const threshold = closedForm(request.density, request.path, ionYield);
     if (threshold === null) return { kind: 'failed', reason: 'asked where there is no threshold', runs: 1 };
     const holdOff = threshold * ratio(request.density);
-    if (request.kind === 'lag') return { kind: 'lag', lag: request.voltage > holdOff ? 1e-5 / (request.voltage / holdOff - 1) : null, runs: 1 };
+    if (request.kind === 'lag')
+      return { kind: 'lag', lag: request.voltage > holdOff ? 1e-5 / (request.voltage / holdOff - 1) : null, runs: 1 };
     return { kind: 'hold-off', lower: holdOff, upper: holdOff, note: null, runs: 2 };
   };
   return {
