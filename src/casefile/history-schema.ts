@@ -122,7 +122,7 @@ function checkDuration(sound: Readonly<Record<string, unknown>>, report: Report,
 /** The latest time of any row of a history [s], null where it has none. */
 export function lastTime({ pressure, temperature, voltage }: Partial<HistoryInput>): number | null {
   const tables = [pressure, temperature, voltage].map((entry) =>
-    typeof entry === 'object' ? entry.table?.columns?.[0]?.values : undefined,
+    typeof entry === 'object' ? entry?.table?.columns?.[0]?.values : undefined,
   );
   const ends = [...tables, pressure?.dataset?.times].flatMap((times) => (times && times.length > 0 ? [times[times.length - 1]] : []));
   return ends.length === 0 ? null : Math.max(...ends);

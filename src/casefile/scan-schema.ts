@@ -165,11 +165,12 @@ function findSchema(): z.ZodType<FindInput> {
 /** Lengths, sizes and repetitions across the entries that are varied. */
 function checkTogether({ vary, zip, find }: Entries, report: Report): void {
   const axes = (Array.isArray(vary) ? vary : []) as Partial<AxisInput>[];
+  const what = (find as Partial<Record<'what', unknown>> | null | undefined)?.what;
+  const searched = typeof what === 'string' && Object.hasOwn(SEARCHED, what) ? SEARCHED[what] : null;
   const paths = axes.map((axis) => (typeof axis?.path === 'string' ? axis.path.trim() : null));
   for (const [k, path] of paths.entries()) {
     if (path !== null && paths.indexOf(path) < k)
       report(['vary', k, 'path'], 'every path once', { code: 'inconsistent', found: `${clip(path)} again` });
-    const searched = SEARCHED[(find as Partial<FindInput> | undefined)?.what ?? ''];
     if (path !== null && path === searched)
       report(['vary', k, 'path'], 'an entry that find does not search for', { code: 'inconsistent', found: path });
   }

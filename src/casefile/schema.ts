@@ -179,14 +179,14 @@ function runShape(context: SchemaContext): Readonly<Record<string, z.ZodType>> {
 /** What a scan or a history asks of the rest of the case. */
 function checkStudies({ supply, scan, history }: Partial<CaseInput>, report: Report, given: Readonly<Record<string, unknown>>): void {
   const what = scan?.find?.what;
-  const supplyGiven = given.supply as Readonly<Record<string, unknown>> | undefined;
-  if (what === 'trip-delay' && typeof supplyGiven === 'object' && supplyGiven.trip === undefined)
+  const supplyGiven = given.supply as Readonly<Record<string, unknown>> | null | undefined;
+  if (what === 'trip-delay' && typeof supplyGiven === 'object' && supplyGiven?.trip === undefined)
     report(['scan', 'find', 'what'], 'supply.trip in the case, with what: trip-delay', { code: 'inconsistent', found: 'no supply.trip' });
   if (!isZero(supply?.voltage)) return;
   const found = 'a supply at 0 V throughout';
   if (what === 'hold-off')
     report(['scan', 'find', 'what'], 'a supply.voltage that differs from 0 V at some time, to be scaled', { code: 'inconsistent', found });
-  if (history !== undefined && (given.history as Partial<HistoryInput>).voltage === undefined)
+  if (history !== undefined && (given.history as Partial<HistoryInput> | null)?.voltage === undefined)
     report(['history', 'voltage'], 'voltage, required where supply.voltage gives none', { code: 'missing-key', found });
 }
 

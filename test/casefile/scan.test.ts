@@ -657,6 +657,14 @@ describe('each mistake of a search is placed at its own line', () => {
     expect(problem(through)).toMatchObject({ line: 21, path: 'scan.vary.0.path', code: 'inconsistent' });
   });
 
+  it('entries of the wrong type are problems, never faults', () => {
+    for (const wrong of ['{ a: 1 }', '[1]', '__proto__', 'null'])
+      expect(problems(varied([STEP], `  find: { what: ${wrong}, from: 1 V, to: 2 V }\n`)).map((p) => p.path)).toEqual(['scan.find.what']);
+    const trip = searching('{ what: trip-delay, gap_energy: 1 J, from: 1 us, to: 1 s }');
+    expect(problems(trip.replace(/supply:\n(.*\n){2}/, 'supply:\n')).map((p) => p.path)).toContain('supply');
+    expect(problems(trip.replace('100 kohm', '100 kohm\n  trip: 5')).map((p) => p.path)).toEqual(['supply.trip']);
+  });
+
   it('what is searched for cannot be varied too', () => {
     const resistance = varied(
       ['{ path: supply.series_resistance, values: [1 ohm] }'],
