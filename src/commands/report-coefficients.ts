@@ -105,7 +105,14 @@ function formText(form: unknown, unit: string): string {
       return `table of ${count('x')} rows`;
     case 'joined': {
       const pieces = part(form, 'pieces');
-      return Array.isArray(pieces) ? pieces.map((piece) => `from ${formatQuantity((number(part(piece, 'from')) ?? 0) / TOWNSEND, 'Td')}: ${formText(part(piece, 'form'), unit)}`).join('; ') : '–';
+      return Array.isArray(pieces)
+        ? pieces
+            .map(
+              (piece) =>
+                `from ${formatQuantity((number(part(piece, 'from')) ?? 0) / TOWNSEND, 'Td')}: ${formText(part(piece, 'form'), unit)}`,
+            )
+            .join('; ')
+        : '–';
     }
     default:
       return '–';

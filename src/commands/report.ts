@@ -57,7 +57,8 @@ function scriptFor(kind: string): string {
 function checkReplaceable(path: string): void {
   const status = statSync(path, { throwIfNoEntry: false });
   if (!status) return;
-  if (!status.isFile()) throw new ResultFileError('not-a-file', path, status.isDirectory() ? 'is a folder, not a file' : 'is not a regular file');
+  if (!status.isFile())
+    throw new ResultFileError('not-a-file', path, status.isDirectory() ? 'is a folder, not a file' : 'is not a regular file');
   if (!readFileSync(path, 'utf8').slice(0, 4000).includes(`<meta name="generator" content="${GENERATOR}">`))
     throw new ResultFileError('foreign', path, 'exists and is not a page of gapwake; it is not replaced');
 }
@@ -82,9 +83,7 @@ function writeFigures(folder: string, files: readonly FigureFile[]): string {
   } catch (thrown) {
     throw resultFileError(folder, thrown);
   }
-  const pictures = pngOf(
-    files.map(({ name }) => [join(folder, `${name}.svg`), join(folder, `${name}.png`)]),
-  );
+  const pictures = pngOf(files.map(({ name }) => [join(folder, `${name}.svg`), join(folder, `${name}.png`)]));
   const also = pictures === null ? '; no PNG, because rsvg-convert is not installed' : ` and ${pictures} PNG`;
   return `Written: ${printable(folder)} (${files.length} SVG${also}).`;
 }

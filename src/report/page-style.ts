@@ -48,12 +48,12 @@ summary{cursor:pointer;font-weight:600}
 button,select{font:inherit;font-size:.9rem;color:var(--ink);background:var(--card);border:1px solid var(--faint);border-radius:3px;padding:.12em .6em;min-height:1.9em;cursor:pointer}
 button[aria-pressed=true]{background:var(--accent);border-color:var(--accent);color:var(--card)}
 .bench{display:grid;grid-template-columns:minmax(0,1.75fr) minmax(0,1fr);gap:16px 22px;align-items:start;margin-top:12px}
-.now-column{position:sticky;top:64px;display:grid;gap:12px}
+.now-column{display:grid;gap:12px}@media (min-height:880px){.now-column{position:sticky;top:60px}}
 .time-column{display:grid;gap:12px}
 .plot{margin:0;padding:6px 6px 4px;position:relative;min-width:0}
 .plot svg{display:block;max-width:100%;height:auto}
 .timed svg{cursor:crosshair;touch-action:pan-y}
-.strip{display:block}
+.strip{display:block}.narrow{max-width:62em}#coefficients th:nth-child(4),#coefficients td:nth-child(4){min-width:7.5em}#coefficients th:first-child{min-width:8em}
 .strip .has{fill:var(--line)}
 .strip .visited{fill:var(--accent)}
 .strip .outside{fill:var(--alarm)}
@@ -61,7 +61,7 @@ button[aria-pressed=true]{background:var(--accent);border-color:var(--accent);co
 .empty{min-height:210px}
 footer{padding-top:1em;padding-bottom:3em;color:var(--faint);font-size:.88rem}
 .number{white-space:nowrap}
-@media (max-width:1050px){.bench{grid-template-columns:minmax(0,1fr)}.now-column{position:static}}
+@media (max-width:1050px){.bench{grid-template-columns:minmax(0,1fr)}.now-column{position:static;grid-template-columns:repeat(auto-fit,minmax(min(100%,340px),1fr))}}
 @media (max-width:860px){.pair{grid-template-columns:minmax(0,1fr)}}
 @media (max-width:600px){header,main,footer{padding-left:12px;padding-right:12px}h1{font-size:1.3rem}.verdict{font-size:1rem;padding:.6em .7em}.rail{gap:.2em .7em}.rail .where{min-width:0}.plot{padding:4px 2px}th,td{padding-right:.5em}.number{white-space:normal}.stack thead{position:absolute;left:-999em}.stack tr{display:block;padding:.4em 0;border-bottom:1px solid var(--line)}.stack th,.stack td{display:block;border:0;padding:.1em 0}.stack td[data-label]:not(:empty)::before{content:attr(data-label) ": ";color:var(--faint)}.stack td:empty{display:none}}
 `;

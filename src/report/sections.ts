@@ -3,6 +3,11 @@ import { type Element, el } from './element.ts';
 
 /** Parts that pages of every kind share. */
 
+/** A number stays on one line with the unit after it. */
+export function together(text: string): string {
+  return text.replace(/(\d) (?=(?:[fpnµmkMGT]?(?:V|A|s|J|W|Pa|ohm|m|Torr|bar|Td|K)|%|1\/)(?![A-Za-z]))/g, '$1\u00a0');
+}
+
 /** cautions about people and hardware; the others limit the model or its numbers */
 const SAFETY: ReadonlySet<CautionCode> = new Set<CautionCode>([
   'not-a-clearance',
@@ -34,7 +39,9 @@ export function cautionSection(cautions: readonly Caution[]): Element {
     el(
       'ul',
       { class: 'cautions' },
-      ordered.map(({ code, text }) => el('li', { class: SAFETY.has(code) ? 'safety' : null }, text, ' ', el('code', { class: 'faint' }, code))),
+      ordered.map(({ code, text }) =>
+        el('li', { class: SAFETY.has(code) ? 'safety' : null }, together(text), ' ', el('code', { class: 'faint' }, code)),
+      ),
     ),
   );
 }
@@ -62,7 +69,15 @@ export function provenance({
     'section',
     { id: 'provenance' },
     el('h2', {}, 'Provenance'),
-    el('table', {}, el('tbody', {}, facts.map(([label, value]) => el('tr', {}, el('th', { scope: 'row' }, label), el('td', {}, value))))),
+    el(
+      'table',
+      {},
+      el(
+        'tbody',
+        {},
+        facts.map(([label, value]) => el('tr', {}, el('th', { scope: 'row' }, label), el('td', {}, value))),
+      ),
+    ),
     el('h3', {}, 'To make it again'),
     el(
       'p',
@@ -72,7 +87,9 @@ export function provenance({
       '. The same version gives the same numbers; the hash of the case says whether it is the same case.',
     ),
     el('details', { open: true }, el('summary', {}, 'The case'), el('pre', { tabindex: 0, 'aria-label': 'The case' }, caseText)),
-    ...tables.map(({ file, text }) => el('details', {}, el('summary', {}, `Table ${file}`), el('pre', { tabindex: 0, 'aria-label': `Table ${file}` }, text))),
+    ...tables.map(({ file, text }) =>
+      el('details', {}, el('summary', {}, `Table ${file}`), el('pre', { tabindex: 0, 'aria-label': `Table ${file}` }, text)),
+    ),
     ...(numbers.length === 0
       ? []
       : [
@@ -86,7 +103,14 @@ export function provenance({
               el(
                 'tbody',
                 {},
-                numbers.map(([path, value]) => el('tr', {}, el('th', { scope: 'row' }, el('code', {}, path)), el('td', { 'data-outcome': path }, value === null ? 'null' : String(value)))),
+                numbers.map(([path, value]) =>
+                  el(
+                    'tr',
+                    {},
+                    el('th', { scope: 'row' }, el('code', {}, path)),
+                    el('td', { 'data-outcome': path }, value === null ? 'null' : String(value)),
+                  ),
+                ),
               ),
             ),
           ),

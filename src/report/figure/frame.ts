@@ -27,8 +27,9 @@ export function textWidth(text: string): number {
   return 7.1 * [...text].length;
 }
 
-/** The height of a line of text. */
+/** The height of a line of text, and of the heading. */
 export const LINE = 15;
+export const HEADING = 21;
 
 /** Rows in which names of marks stand above a plot, so that none covers another. */
 export function placeMarks(marks: readonly Mark[], box: Pick<Box, 'left' | 'width'>, right: number): { rows: number; places: Place[] } {
@@ -68,12 +69,12 @@ export interface FrameSpec {
   readonly nameMarks?: boolean;
 }
 
-/** Where the plot area of a figure will lie; the vertical room depends on how many rows the marks take. */
-export function boxOf(spec: FrameSpec): Box {
+/** Where the plot area of a figure will lie, below its heading, the rows of its key and those of the names of marks. */
+export function boxOf(spec: FrameSpec, keyRows = 0): Box {
   const { width, height, left, right, marks = [], nameMarks = true } = spec;
   const plain = { left, width: width - left - right };
   const rows = nameMarks ? placeMarks(marks, plain, width - 4).rows : 0;
-  const top = 24 + rows * LINE;
+  const top = HEADING + (rows + keyRows) * LINE + 3;
   return { ...plain, top, height: height - top - 40 };
 }
 
@@ -157,6 +158,7 @@ function markElements(marks: readonly Mark[], named: boolean, box: Box, width: n
     return el(
       'g',
       { class: 'mark' },
+      el('path', { class: 'halo', d: `M${round(x)} ${box.top}v${box.height}` }),
       el('path', { d: `M${round(x)} ${named ? y - 10 : box.top}V${box.top + box.height}` }),
       named ? el('text', { x: leftwards ? x - 4 : x + 4, y, 'text-anchor': leftwards ? 'end' : 'start' }, name) : null,
     );

@@ -1,5 +1,5 @@
 import { type Element, el } from '../element.ts';
-import { type Box, boxOf, type Figure, type FrameSpec, frame, grid, LINE, round } from './frame.ts';
+import { type Box, boxOf, type Figure, type FrameSpec, frame, grid, HEADING, LINE, round } from './frame.ts';
 import type { Scale } from './scale.ts';
 
 /** One curve; x and y in the units of the axes. */
@@ -22,17 +22,18 @@ export interface LineSpec extends FrameSpec {
 /** A figure of curves, named at its right or, where there is no room, under its title. */
 export function lineFigure(spec: LineSpec, xScale: (length: number) => Scale, yScale: (length: number) => Scale): Figure {
   const above = spec.right < KEY_WIDTH;
-  const plain = boxOf(spec);
-  const keyRows = above ? keyRowsAbove(spec.curves, spec.width - spec.left).length : 0;
-  const box = { ...plain, top: plain.top + keyRows * LINE, height: plain.height - keyRows * LINE };
+  // one curve that the heading names needs no key
+  const named = spec.curves.length === 1 && spec.curves[0].reading === undefined ? [] : spec.curves;
+  const keyRows = above ? keyRowsAbove(named, spec.width - spec.left).length : 0;
+  const box = boxOf(spec, keyRows);
   const [x, y] = [xScale(box.width), yScale(box.height)];
   const curves = spec.curves.map((curve) => el('path', { class: `curve ${curve.style}`, d: pathOf(curve, box, x, y) }));
-  const key = above ? keyAbove(spec.curves, plain.top, spec.left, spec.width) : keyBeside(spec.curves, box);
+  const key = above ? keyAbove(named, spec.left, spec.width) : keyBeside(named, box);
   return frame(spec, box, x, y, y.title, [grid(box, x, y), ...curves, ...(spec.over?.(box, x, y) ?? [])], key);
 }
 
 /** room for names and values beside a plot [px] */
-export const KEY_WIDTH = 84;
+export const KEY_WIDTH = 100;
 
 function keyBeside(curves: readonly Curve[], box: Box): Element[] {
   const left = box.left + box.width + 10;
@@ -65,10 +66,10 @@ function keyRowsAbove(curves: readonly Curve[], width: number): Curve[][] {
   return rows;
 }
 
-function keyAbove(curves: readonly Curve[], top: number, left: number, width: number): Element[] {
+function keyAbove(curves: readonly Curve[], left: number, width: number): Element[] {
   return keyRowsAbove(curves, width - left).flatMap((row, k) => {
     let x = left;
-    const y = top + k * LINE + 3;
+    const y = HEADING + (k + 1) * LINE - 4;
     return row.map(({ name, style, reading }) => {
       const key = el(
         'g',

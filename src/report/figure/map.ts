@@ -54,7 +54,15 @@ export function mapFigure(
     { class: 'name', transform: `translate(12 ${box.top + box.height / 2}) rotate(-90)`, 'text-anchor': 'middle' },
     spec.yName,
   );
-  return frame(spec, box, x, y, spec.heading, [image], [yName, ...colourBar(spec.id, box.left + box.width + 10, box.top, box.height, colour)]);
+  return frame(
+    spec,
+    box,
+    x,
+    y,
+    spec.heading,
+    [image],
+    [yName, ...colourBar(spec.id, box.left + box.width + 10, box.top, box.height, colour)],
+  );
 }
 
 /** Colours with the values they stand for. */

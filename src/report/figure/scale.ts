@@ -68,7 +68,14 @@ export function linear(name: string, unit: string, from: number, to: number, roo
 }
 
 /** A logarithmic axis with decades labelled. @param engineering  labels as `1 nA` instead of `10⁻⁹` */
-export function logarithmic(name: string, unit: string, from: number, to: number, room: Room, engineering: boolean = WITH_PREFIX.has(unit)): Scale {
+export function logarithmic(
+  name: string,
+  unit: string,
+  from: number,
+  to: number,
+  room: Room,
+  engineering: boolean = WITH_PREFIX.has(unit),
+): Scale {
   const [low, high] = [Math.log10(from), Math.log10(Math.max(to, from * 1.0001))];
   const at = (value: number): number => (Math.log10(value) - low) / (high - low);
   return {
@@ -128,7 +135,7 @@ const RAISED = '⁰¹²³⁴⁵⁶⁷⁸⁹';
 export function powerLabel(value: number): string {
   const exponent = Math.floor(Math.log10(value) + 1e-9);
   const digit = Math.round(value / 10 ** exponent);
-  if (exponent >= -2 && exponent <= 3) return String(Number((digit * 10 ** exponent).toPrecision(3)));
+  if (exponent >= -2 && exponent <= 2) return String(Number((digit * 10 ** exponent).toPrecision(3)));
   const raised = [...String(exponent)].map((c) => (c === '-' ? '⁻' : RAISED[Number(c)])).join('');
   return `${digit === 1 ? '' : `${digit}·`}10${raised}`;
 }

@@ -42,8 +42,11 @@ export function figureStyle(theme: Theme, within = ''): string {
     rule('.figure .axis path', `stroke:${theme.ink};fill:none`),
     rule('.figure .edge', `stroke:${theme.ink}`),
     rule('.figure .axis .edge', 'fill:none'),
-    rule('.figure .mark path', `stroke:${theme.mark};fill:none;stroke-dasharray:4 2`),
-    rule('.figure .mark text', `fill:${theme.mark}`),
+    rule('.figure .halo', `stroke:${theme.ground};stroke-width:4;fill:none;opacity:0.75`),
+    rule('.figure .mark .halo', 'stroke-width:3'),
+    rule('.figure .mark path:not(.halo)', `stroke:${theme.mark};fill:none;stroke-dasharray:4 2`),
+    // its own halo keeps a name readable over curves
+    rule('.figure .mark text', `fill:${theme.mark};stroke:${theme.ground};stroke-width:3;paint-order:stroke`),
     rule('.figure .reading', 'font-weight:bold'),
     rule('.figure .curve', 'fill:none;stroke-linejoin:round'),
     ...theme.series.map((colour, i) =>
@@ -51,7 +54,6 @@ export function figureStyle(theme: Theme, within = ''): string {
     ),
     rule('.figure .band', `fill:${theme.series[0]};opacity:0.18`),
     rule('.figure .now', `stroke:${theme.ink};stroke-width:1.5;fill:none`),
-    rule('.figure .halo', `stroke:${theme.ground};stroke-width:4;fill:none;opacity:0.75`),
     rule('.figure .point', `fill:${theme.ground};stroke:${theme.mark};stroke-width:1.8`),
   ].join('\n');
 }

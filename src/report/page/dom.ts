@@ -1,4 +1,4 @@
-import { type Element as Tree, shortNumber, visible } from '../element.ts';
+import { shortNumber, type Element as Tree, visible } from '../element.ts';
 import type { Raster } from '../figure/map.ts';
 
 const SVG = 'http://www.w3.org/2000/svg';

@@ -28,9 +28,7 @@ function byId<T extends HTMLElement>(id: string): T {
 
 async function unpacked(data: RunPageData): Promise<RunSeries> {
   const entries = async <K extends string, V>(record: Readonly<Record<K, V>>, open: (value: V) => Promise<unknown>): Promise<unknown> =>
-    Object.fromEntries(
-      await Promise.all(Object.entries(record).map(async ([key, value]) => [key, await open(value as V)] as const)),
-    );
+    Object.fromEntries(await Promise.all(Object.entries(record).map(async ([key, value]) => [key, await open(value as V)] as const)));
   const [time, x, scalars, fields] = await Promise.all([
     exact(data.time),
     exact(data.x),
@@ -149,7 +147,9 @@ class RunView {
     this.#scale = timeScale(this.#axis, this.#run);
     const layout = { width: this.#width, scale: this.#scale };
     const names = timeFigureNames(this.#run);
-    this.#panels = names.map((name, i) => this.#panel(name, timeFigure(name, this.#run, { ...layout, nameMarks: i % 2 === 0 }, canvasAddress)));
+    this.#panels = names.map((name, i) =>
+      this.#panel(name, timeFigure(name, this.#run, { ...layout, nameMarks: i % 2 === 0 }, canvasAddress)),
+    );
     this.#column.replaceChildren(...this.#panels.map(({ holder }) => holder));
     this.#drawNow();
   }
@@ -181,7 +181,10 @@ class RunView {
       this.#setHeld(!this.#held);
       this.#go(indexAt(event as PointerEvent));
     });
-    const readings = [...svg.querySelectorAll('[data-reading]')].map((node) => ({ node, key: node.getAttribute('data-reading') as RunScalar }));
+    const readings = [...svg.querySelectorAll('[data-reading]')].map((node) => ({
+      node,
+      key: node.getAttribute('data-reading') as RunScalar,
+    }));
     return { holder, figure, cursor, readings };
   }
 

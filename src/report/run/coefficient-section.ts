@@ -47,7 +47,14 @@ export function coefficientSection(run: RunReport): Element {
     ),
     ...(coefficients.notes.length === 0
       ? []
-      : [el('h3', {}, 'Notes on this gas'), el('ul', {}, coefficients.notes.map((note) => el('li', {}, note)))]),
+      : [
+          el('h3', {}, 'Notes on this gas'),
+          el(
+            'ul',
+            {},
+            coefficients.notes.map((note) => el('li', {}, note)),
+          ),
+        ]),
   );
 }
 
@@ -80,7 +87,8 @@ function usedText({ range }: CoefficientUsed, use: Visited): string {
   if (range === null || use.inside === null) return fields;
   const overlap = Math.log(Math.min(range.to, use.to) / Math.max(range.from, use.from, 1e-30));
   const whole = Math.log(range.to / Math.max(range.from, 1e-30));
-  const part = whole > 0 && whole < 100 && overlap > 0 ? `, ${Math.max(1, Math.round((100 * overlap) / whole))} % of the range (logarithmic)` : '';
+  const part =
+    whole > 0 && whole < 100 && overlap > 0 ? `, ${Math.max(1, Math.round((100 * overlap) / whole))} % of the range (logarithmic)` : '';
   const outside = 1 - use.inside;
   return `${fields}${part}; ${outside < 5e-4 ? 'none of the use' : `${percent(outside, false)} of the use`} lies outside`;
 }
@@ -93,7 +101,13 @@ function strip({ range }: CoefficientUsed, use: Visited): Element {
   const at = (x: number): number => WIDTH * Math.min(1, Math.max(0, Math.log(Math.max(x, 1e-40) / LOW) / Math.log(HIGH / LOW)));
   const bar = (kind: string, from: number, to: number, y: number, height: number): Element =>
     el('rect', { class: kind, x: at(from), y, width: Math.max(1.5, at(to) - at(from)), height });
-  const beyond = range === null ? [] : [use.from < range.from ? bar('outside', use.from, Math.min(range.from, use.to), 3, 6) : null, use.to > range.to ? bar('outside', Math.max(range.to, use.from), use.to, 3, 6) : null];
+  const beyond =
+    range === null
+      ? []
+      : [
+          use.from < range.from ? bar('outside', use.from, Math.min(range.from, use.to), 3, 6) : null,
+          use.to > range.to ? bar('outside', Math.max(range.to, use.from), use.to, 3, 6) : null,
+        ];
   return el(
     'svg',
     { class: 'strip', width: WIDTH, height: 12, viewBox: `0 0 ${WIDTH} 12`, 'aria-hidden': 'true' },

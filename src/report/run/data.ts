@@ -47,8 +47,8 @@ export interface RunSetting {
   readonly seriesResistance: number | null;
   /** [A] */
   readonly currentLimit: number | null;
-  /** [1/m³] */
-  readonly density: number | null;
+  /** [A] that leaves the cathode without any feedback */
+  readonly seedCurrent: number | null;
 }
 
 export interface RunEvent {

@@ -16,23 +16,24 @@ export interface TimeLayout {
   readonly nameMarks: boolean;
 }
 
-export const LEFT = 66;
-export const RIGHT: number = KEY_WIDTH + 14;
+const LEFT = 66;
+const RIGHT = KEY_WIDTH + 14;
 /** axes never reach further below their largest value than this */
-const MOST_DECADES = 16;
+const MOST_DECADES = 13;
 
-const HEIGHT = { line: 250, map: 210 };
+const HEIGHT = { line: 250, map: 226, profile: 176, path: 270 };
 
 export type TimeFigureName = 'voltages' | 'currents' | 'energies' | MapName;
 export type MapName = 'field-map' | 'electron-map' | 'ion-map' | 'negative-ion-map' | 'ionisation-map';
 
-const MAPS: Readonly<Record<MapName, { readonly field: RunField; readonly name: string; readonly unit: string; readonly factor: number }>> = {
-  'field-map': { field: 'electricField', name: 'Field strength', unit: 'V/cm', factor: 1e-2 },
-  'electron-map': { field: 'electronDensity', name: 'Electron density', unit: 'cm⁻³', factor: 1e-6 },
-  'ion-map': { field: 'ionDensity', name: 'Positive ion density', unit: 'cm⁻³', factor: 1e-6 },
-  'negative-ion-map': { field: 'negativeIonDensity', name: 'Negative ion density', unit: 'cm⁻³', factor: 1e-6 },
-  'ionisation-map': { field: 'ionisationRate', name: 'Ionisation rate', unit: 'cm⁻³ s⁻¹', factor: 1e-6 },
-};
+const MAPS: Readonly<Record<MapName, { readonly field: RunField; readonly name: string; readonly unit: string; readonly factor: number }>> =
+  {
+    'field-map': { field: 'electricField', name: 'Field strength', unit: 'V/cm', factor: 1e-2 },
+    'electron-map': { field: 'electronDensity', name: 'Electron density', unit: 'cm⁻³', factor: 1e-6 },
+    'ion-map': { field: 'ionDensity', name: 'Positive ion density', unit: 'cm⁻³', factor: 1e-6 },
+    'negative-ion-map': { field: 'negativeIonDensity', name: 'Negative ion density', unit: 'cm⁻³', factor: 1e-6 },
+    'ionisation-map': { field: 'ionisationRate', name: 'Ionisation rate', unit: 'cm⁻³ s⁻¹', factor: 1e-6 },
+  };
 
 /** The figures over time that this run has. */
 export function timeFigureNames(run: RunSeries): TimeFigureName[] {
@@ -94,8 +95,14 @@ function currents(run: RunSeries, layout: TimeLayout): Figure {
     { name: 'total', style: 's2', x: time, y: scalars.totalCurrent.map(Math.abs), reading: 'totalCurrent' },
     { name: 'conduction', style: 's1', x: time, y: scalars.conductionCurrent.map(Math.abs), reading: 'conductionCurrent' },
   ];
-  const spec = common(run, layout, 'currents', 'Currents against time', 'Magnitudes of conduction and total current through the gap against time');
-  const [from, to] = positiveExtent([curves[1].y], curves[0].y);
+  const spec = common(
+    run,
+    layout,
+    'currents',
+    'Currents against time',
+    'Magnitudes of conduction and total current through the gap against time',
+  );
+  const [from, to] = currentExtent(run, curves[1].y, curves[0].y);
   return lineFigure({ ...spec, curves }, layout.scale, (length) => logarithmic('Current, magnitude', 'A', from, to, { length, apart: 18 }));
 }
 
@@ -105,7 +112,13 @@ function energies(run: RunSeries, layout: TimeLayout): Figure {
     { name: 'from supply', style: 's2', x: time, y: scalars.sourceEnergy, reading: 'sourceEnergy' },
     { name: 'into gap', style: 's1', x: time, y: scalars.gapEnergy, reading: 'gapEnergy' },
   ];
-  const spec = common(run, layout, 'energies', 'Energy against time', 'Energy put into the gas gap and energy delivered by the supply since time 0');
+  const spec = common(
+    run,
+    layout,
+    'energies',
+    'Energy against time',
+    'Energy put into the gas gap and energy delivered by the supply since time 0',
+  );
   const most = Math.max(largest(scalars.sourceEnergy), largest(scalars.gapEnergy), 1e-30);
   // what stands below a billionth of the whole interests nobody
   const [from, to] = positiveExtent([scalars.sourceEnergy, scalars.gapEnergy]);
@@ -121,41 +134,43 @@ function map(name: MapName, run: RunSeries, layout: TimeLayout, picture: Picture
   const [from, to] = mapRange(run, field);
   const spec = common(run, layout, name, `${label} over time and position`, `${label} between the electrodes against time, as colours`);
   const axis = layout.scale(layout.width);
-  const rows = columnsInTime(time, axis);
+  const rows = between(time.map((t) => axis.at(t)));
   const cells = x.length;
-  const cellAt = cellLookup(x, setting.spacing);
-  const low = from / 10;
+  const columns = between(x.map((v) => v / setting.spacing));
+  // the field changes its sign: it is interpolated as it is, densities in their logarithm
+  const signed = field === 'electricField';
+  const low = from / factor / 10;
+  const at = (row: number, cell: number): number => {
+    const v = values[row * cells + cell];
+    return signed ? v : Math.log(Math.max(v, low));
+  };
   const valueAt = (sx: number, sy: number): number => {
-    const { row, next, share } = rows(sx);
-    const cell = cellAt(sy);
-    const a = Math.max(Math.abs(values[row * cells + cell]), low / factor);
-    const b = Math.max(Math.abs(values[next * cells + cell]), low / factor);
-    return factor * a ** (1 - share) * b ** share;
+    const [i, j] = [rows(sx), columns(sy)];
+    const before = (1 - j.share) * at(i.first, j.first) + j.share * at(i.first, j.second);
+    const after = (1 - j.share) * at(i.second, j.first) + j.share * at(i.second, j.second);
+    const mean = (1 - i.share) * before + i.share * after;
+    return factor * (signed ? Math.abs(mean) : Math.exp(mean));
   };
   return mapFigure(
     { ...spec, height: HEIGHT.map, heading: `${label} [${unit}]`, yName: 'Position [mm]', valueAt },
     layout.scale,
-    (length) => positionScale(setting.spacing, length, 30),
+    (length) => positionScale(setting.spacing, length, 22),
     (length) => logarithmic(label, unit, from, to, { length, apart: 20 }, false),
     picture,
   );
 }
 
-/** Rows between which a share of the time axis lies, and how far; profiles in between are interpolated in their logarithm. */
-function columnsInTime(time: Float64Array, axis: Scale): (share: number) => { row: number; next: number; share: number } {
-  const places = time.map((t) => axis.at(t));
-  let row = 0;
-  return (share) => {
-    if (share < places[row]) row = 0;
-    while (row < places.length - 2 && places[row + 1] <= share) row++;
-    const next = Math.min(places.length - 1, row + 1);
-    const width = places[next] - places[row];
-    return { row, next, share: width > 0 ? Math.min(1, Math.max(0, (share - places[row]) / width)) : 0 };
+/** Between which two places a share of an axis lies, and how far; it remembers where it was last, because pictures are made in order. */
+function between(places: Float64Array): (share: number) => { first: number; second: number; share: number } {
+  let k = 0;
+  const last = places.length - 1;
+  return (at) => {
+    while (k > 0 && places[k] > at) k--;
+    while (k < last - 1 && places[k + 1] <= at) k++;
+    const second = Math.min(last, k + 1);
+    const width = places[second] - places[k];
+    return { first: k, second, share: width > 0 ? Math.min(1, Math.max(0, (at - places[k]) / width)) : 0 };
   };
-}
-
-function cellLookup(x: Float64Array, spacing: number): (share: number) => number {
-  return (share) => nearest(x, share * spacing);
 }
 
 /** The colours of a map: from its largest value down to where the weakest stage begins. In the units of the figure. */
@@ -194,16 +209,22 @@ export function profileFigure(name: ProfileName, run: RunSeries, index: number, 
     const values = run.fields[field];
     return values === null ? null : Float64Array.from(values.subarray(index * cells, (index + 1) * cells), (v) => v * factor);
   };
-  const base = { id: name, width, height: 210, left: LEFT, right: 14 };
+  const base = { id: name, width, height: HEIGHT.profile, left: LEFT, right: 14 };
   const xScale = (length: number): Scale => positionScale(run.setting.spacing, length, 50);
-  const curve = (label: string, style: string, y: Float64Array | null): Curve[] => (y === null ? [] : [{ name: label, style, x: run.x, y }]);
+  const curve = (label: string, style: string, y: Float64Array | null): Curve[] =>
+    y === null ? [] : [{ name: label, style, x: run.x, y }];
   if (name === 'field-profile') {
     const field = at('electricField', -1e-2) ?? new Float64Array(cells);
     const [low, high] = extent([field]);
     return lineFigure(
-      { ...base, title: 'Field profile', description: 'Field between the electrodes at the linked time', curves: curve('field', 's1', field) },
+      {
+        ...base,
+        title: 'Field profile',
+        description: 'Field between the electrodes at the linked time',
+        curves: curve('field', 's1', field),
+      },
       xScale,
-      (length) => linear('Field towards the left', 'V/cm', Math.min(0, low), Math.max(0, high), { length, apart: 30 }),
+      (length) => linear('Field towards the left electrode', 'V/cm', Math.min(0, low), Math.max(0, high), { length, apart: 24 }),
     );
   }
   if (name === 'density-profile') {
@@ -241,11 +262,15 @@ export function pathFigure(run: RunSeries, index: number | null, width: number):
   const voltage = scalars.gapVoltage.map((v) => v * sign);
   const supply = scalars.supplyVoltage.map((v) => v * sign);
   const highest = extent([supply])[1];
-  const [from, to] = positiveExtent([current]);
+  const [from, to] = currentExtent(run, current);
   const load = (volts: number): Pick<Curve, 'x' | 'y'> | null => {
     const resistance = setting.seriesResistance;
     if (resistance === null || !(volts > 0)) return null;
-    const end = Math.min(resistance > 0 ? volts / resistance : Number.POSITIVE_INFINITY, setting.currentLimit ?? Number.POSITIVE_INFINITY, to * 30);
+    const end = Math.min(
+      resistance > 0 ? volts / resistance : Number.POSITIVE_INFINITY,
+      setting.currentLimit ?? Number.POSITIVE_INFINITY,
+      to * 30,
+    );
     const x = Array.from({ length: 121 }, (_, k) => from * (end / from) ** (k / 120));
     const y = x.map((amps) => volts - amps * resistance);
     if (setting.currentLimit !== null && end === setting.currentLimit) {
@@ -268,7 +293,7 @@ export function pathFigure(run: RunSeries, index: number | null, width: number):
       title: 'Current and voltage of the gap',
       description: 'The path of the gap through conduction current and voltage, with the load line of the supply',
       width,
-      height: 290,
+      height: HEIGHT.path,
       left: LEFT,
       right: 14,
       curves,
@@ -279,7 +304,11 @@ export function pathFigure(run: RunSeries, index: number | null, width: number):
       ],
     },
     (length) => logarithmic('Conduction current', 'A', from, end, { length, apart: 56 }),
-    (length) => linear(sign < 0 ? 'Gap voltage, sign reversed' : 'Gap voltage', 'V', Math.min(0, lowest), Math.max(highest, most), { length, apart: 34 }),
+    (length) =>
+      linear(sign < 0 ? 'Gap voltage, sign reversed' : 'Gap voltage', 'V', Math.min(0, lowest), Math.max(highest, most), {
+        length,
+        apart: 34,
+      }),
   );
 }
 
@@ -309,7 +338,11 @@ function eventsOnPath(
     taken.push(labelY);
     return [
       el('circle', { class: 'point', cx: round(cx), cy: round(cy), r: 3.5 }),
-      el('g', { class: 'mark' }, el('text', { x: leftwards ? cx - 8 : cx + 8, y: labelY, 'text-anchor': leftwards ? 'end' : 'start' }, name)),
+      el(
+        'g',
+        { class: 'mark' },
+        el('text', { x: leftwards ? cx - 8 : cx + 8, y: labelY, 'text-anchor': leftwards ? 'end' : 'start' }, name),
+      ),
     ];
   });
 }
@@ -335,6 +368,12 @@ function positiveExtent(series: readonly ArrayLike<number>[], upper: ArrayLike<n
     }
   if (!(to > 0)) return [1e-3, 1]; // nothing flows: an axis all the same
   return [Math.max(Math.min(to / 10, from), to * 10 ** -MOST_DECADES), to];
+}
+
+/** What is far below the seed current, in the first instants, is not worth an axis. */
+function currentExtent(run: RunSeries, current: ArrayLike<number>, upper: ArrayLike<number> = []): [from: number, to: number] {
+  const [from, to] = positiveExtent([current], upper);
+  return [Math.min(Math.max(from, (run.setting.seedCurrent ?? 0) / 100), to / 10), to];
 }
 
 function largest(values: ArrayLike<number>): number {

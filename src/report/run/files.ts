@@ -1,10 +1,10 @@
 import { el, markup } from '../element.ts';
-import { figureStyle, LIGHT } from '../figure/style.ts';
 import type { Figure } from '../figure/frame.ts';
+import { figureStyle, LIGHT } from '../figure/style.ts';
 import { pngAddress } from '../png.ts';
 import { FIELDS, nearest, type RunSeries, SCALARS } from './data.ts';
 import { eventsOf } from './events.ts';
-import { pathFigure, PROFILES, profileFigure, timeFigure, timeFigureNames } from './figures.ts';
+import { PROFILES, pathFigure, profileFigure, timeFigure, timeFigureNames } from './figures.ts';
 import { settingOf } from './page.ts';
 import type { RunReport } from './report.ts';
 import { TIME_AXES, timeScale } from './time-axis.ts';
@@ -40,7 +40,10 @@ export function runFigures(run: RunReport): FigureFile[] {
   const moments = [...series.events, { name: 'end', time: series.time[series.time.length - 1] }];
   for (const { name: event, time } of moments)
     for (const name of PROFILES)
-      files.push({ name: `${name}-${event.replaceAll(' ', '-')}`, svg: svgFile(profileFigure(name, series, nearest(series.time, time), WIDTH.now)) });
+      files.push({
+        name: `${name}-${event.replaceAll(' ', '-')}`,
+        svg: svgFile(profileFigure(name, series, nearest(series.time, time), WIDTH.now)),
+      });
   files.push({ name: 'path', svg: svgFile(pathFigure(series, null, WIDTH.now)) });
   return files;
 }

@@ -40,16 +40,24 @@ export function keyRows(run: RunReport): KeyRow[] {
   const ahead =
     settings === null
       ? null
-      : prospects(settings, (peak.gap_voltage_V < 0 ? -1 : 1) * theory.reduced_field_Td * TOWNSEND * settings.gas.density * settings.gap.spacing);
+      : prospects(
+          settings,
+          (peak.gap_voltage_V < 0 ? -1 : 1) * theory.reduced_field_Td * TOWNSEND * settings.gas.density * settings.gap.spacing,
+        );
   const rows: KeyRow[] = [
     {
       label: 'Threshold (static breakdown voltage)',
       theory: [show('theory.static_breakdown_voltage_V', theory.static_breakdown_voltage_V, 'V')],
-      simulated: onset.threshold_time_s === null ? ['not passed'] : ['passed at ', show('onset.threshold_time_s', onset.threshold_time_s, 's')],
+      simulated:
+        onset.threshold_time_s === null ? ['not passed'] : ['passed at ', show('onset.threshold_time_s', onset.threshold_time_s, 's')],
     },
   ];
   if (theory.lowest_over_paths_V !== null && theory.lowest_over_paths_V !== theory.static_breakdown_voltage_V)
-    rows.push({ label: 'Lowest over longer paths', theory: [show('theory.lowest_over_paths_V', theory.lowest_over_paths_V, 'V')], simulated: [] });
+    rows.push({
+      label: 'Lowest over longer paths',
+      theory: [show('theory.lowest_over_paths_V', theory.lowest_over_paths_V, 'V')],
+      simulated: [],
+    });
   if (theory.overvoltage !== null)
     rows.push({
       label: 'Overvoltage',
@@ -95,7 +103,8 @@ export function keyRows(run: RunReport): KeyRow[] {
     ],
   });
   const fall = outcome.verdict.regime === 'dark' || !outcome.verdict.self_sustaining ? null : (ahead?.normalCathodeFall ?? null);
-  const dark = theory.steady_amplification !== null && settings !== null ? theory.steady_amplification * settings.seed.cathodeCurrent : null;
+  const dark =
+    theory.steady_amplification !== null && settings !== null ? theory.steady_amplification * settings.seed.cathodeCurrent : null;
   rows.push(
     { label: 'End', theory: [], simulated: [show('final.time_s', final.time_s, 's'), `: ${STOPS[final.stop]}`] },
     { label: 'Gap voltage at the end', theory: [], simulated: [show('final.gap_voltage_V', final.gap_voltage_V, 'V')] },
@@ -128,13 +137,23 @@ export function keyRows(run: RunReport): KeyRow[] {
     { label: 'Energy from the supply', theory: [], simulated: [show('energy.source_J', energy.source_J, 'J')] },
   );
   if (energy.after_trip_J !== null)
-    rows.push({ label: 'Energy into the gap after the trip', theory: [], simulated: [show('energy.after_trip_J', energy.after_trip_J, 'J')] });
+    rows.push({
+      label: 'Energy into the gap after the trip',
+      theory: [],
+      simulated: [show('energy.after_trip_J', energy.after_trip_J, 'J')],
+    });
   outcome.currents.forEach(({ level_A, time_s, gap_voltage_V }, i) => {
     const simulated =
       time_s === null
         ? ['not reached']
-        : ['at ', show(`currents.${i}.time_s`, time_s, 's'), ', with ', show(`currents.${i}.gap_voltage_V`, gap_voltage_V, 'V'), ' on the gap'];
-    rows.push({ label: `First ${text(level_A, 'A')}`, theory: [], simulated });
+        : [
+            'at ',
+            show(`currents.${i}.time_s`, time_s, 's'),
+            ', with ',
+            show(`currents.${i}.gap_voltage_V`, gap_voltage_V, 'V'),
+            ' on the gap',
+          ];
+    rows.push({ label: `Current first reaches ${text(level_A, 'A')}`, theory: [], simulated });
   });
   return rows;
 }

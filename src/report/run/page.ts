@@ -1,9 +1,9 @@
 import type { State } from '../../onset/outcome.ts';
-import { type Element, el } from '../element.ts';
 import { html } from '../document.ts';
+import { type Element, el } from '../element.ts';
 import { packEven, packExact, packLog } from '../pack.ts';
 import type { Packed } from '../packed.ts';
-import { cautionSection, footer, provenance, type TableFile } from '../sections.ts';
+import { cautionSection, footer, provenance, type TableFile, together } from '../sections.ts';
 import { coefficientSection } from './coefficient-section.ts';
 import { FIELDS, type RunEvent, type RunField, type RunScalar, type RunSetting, SCALARS } from './data.ts';
 import { eventsOf } from './events.ts';
@@ -67,7 +67,7 @@ export function settingOf({ settings, x }: RunReport): RunSetting {
     spacing: settings?.gap.spacing ?? x[0] + x[x.length - 1],
     seriesResistance: supply?.seriesResistance ?? null,
     currentLimit: supply?.currentLimit ?? null,
-    density: settings?.gas.density ?? null,
+    seedCurrent: settings?.seed.cathodeCurrent ?? null,
   };
 }
 
@@ -84,7 +84,7 @@ function header(run: RunReport): Element {
       'p',
       { class: `verdict ${state}` },
       el('strong', {}, `${STATES[state]}${state === 'breaks-down' ? ` (${regime})` : ''}.`),
-      ` ${reason}`,
+      ` ${together(reason)}`,
     ),
   );
 }
@@ -106,7 +106,11 @@ function keyTable(run: RunReport): Element {
   return el(
     'table',
     { class: 'stack' },
-    el('thead', {}, el('tr', {}, el('td', {}, ''), el('th', { scope: 'col' }, 'Theory, no space charge'), el('th', { scope: 'col' }, 'Simulated'))),
+    el(
+      'thead',
+      {},
+      el('tr', {}, el('td', {}, ''), el('th', { scope: 'col' }, 'Theory, no space charge'), el('th', { scope: 'col' }, 'Simulated')),
+    ),
     el('tbody', {}, rows),
   );
 }
@@ -132,7 +136,15 @@ function figures(run: RunReport): Element {
       'All figures are linked: point at any figure over time, or use the slider and the arrow keys, to choose the moment that the profiles and the current–voltage path show. ',
       'A click or tap holds it; [ and ] step from event to event.',
     ),
-    el('noscript', {}, el('p', {}, 'The figures are drawn by the script inside of this page, which is switched off here. gapwake report FILE.h5 --figures DIR writes them as files.')),
+    el(
+      'noscript',
+      {},
+      el(
+        'p',
+        {},
+        'The figures are drawn by the script inside of this page, which is switched off here. gapwake report FILE.h5 --figures DIR writes them as files.',
+      ),
+    ),
     el(
       'div',
       { class: 'rail', role: 'group', 'aria-label': 'Linked time' },
@@ -140,16 +152,21 @@ function figures(run: RunReport): Element {
       el('input', { type: 'range', id: 'moment', min: 0, max: last, value: 0, step: 1, 'aria-label': 'Moment, by snapshot' }),
       el('button', { type: 'button', id: 'hold', 'aria-pressed': 'false' }, 'Hold'),
       el('span', { class: 'choices', id: 'events', role: 'group', 'aria-label': 'Events' }),
-      el(
-        'fieldset',
-        { class: 'choices' },
-        el('legend', {}, 'Time axis'),
-        TIME_AXES.map(({ kind, name, explanation }) =>
-          el('label', { title: explanation }, el('input', { type: 'radio', name: 'axis', value: kind, checked: kind === 'activity' }), ` ${name}`),
+    ),
+    el(
+      'fieldset',
+      { class: 'choices no-print' },
+      el('legend', {}, 'Time axis'),
+      TIME_AXES.map(({ kind, name, explanation }) =>
+        el(
+          'label',
+          { title: explanation },
+          el('input', { type: 'radio', name: 'axis', value: kind, checked: kind === 'activity' }),
+          ` ${name}`,
         ),
       ),
+      el('span', { class: 'faint', id: 'axis-explanation' }, TIME_AXES[0].explanation),
     ),
-    el('p', { class: 'faint', id: 'axis-explanation' }, TIME_AXES[0].explanation),
     el('div', { class: 'bench' }, el('div', { class: 'time-column', id: 'over-time' }), el('div', { class: 'now-column', id: 'now' })),
   );
 }
@@ -162,8 +179,16 @@ function assumptions(run: RunReport): Element {
     el('h2', {}, 'What was assumed'),
     rows.length === 0
       ? el('p', {}, 'This version of the program cannot resolve the case of this file; its text is below.')
-      : el('div', { class: 'scroll', tabindex: 0, role: 'region', 'aria-label': 'The case' }, el('table', {}, el('tbody', {}, rows))),
-    ...(run.remarks.length === 0 ? [] : [el('ul', {}, run.remarks.map((note) => el('li', {}, note)))]),
+      : el('table', { class: 'narrow' }, el('tbody', {}, rows)),
+    ...(run.remarks.length === 0
+      ? []
+      : [
+          el(
+            'ul',
+            {},
+            run.remarks.map((note) => el('li', {}, note)),
+          ),
+        ]),
     el(
       'p',
       {},

@@ -16,7 +16,14 @@ export interface RunReport {
   /** over (time, x); null for what this gas has not */
   readonly fields: Readonly<
     Record<
-      'electricField' | 'electronDensity' | 'ionDensity' | 'negativeIonDensity' | 'ionisationRate' | 'electronFlux' | 'ionFlux' | 'negativeIonFlux',
+      | 'electricField'
+      | 'electronDensity'
+      | 'ionDensity'
+      | 'negativeIonDensity'
+      | 'ionisationRate'
+      | 'electronFlux'
+      | 'ionFlux'
+      | 'negativeIonFlux',
       Profiles | null
     >
   >;

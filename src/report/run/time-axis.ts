@@ -1,5 +1,5 @@
-import type { Scale, Tick } from '../figure/scale.ts';
 import { formatQuantity } from '../../units/index.ts';
+import { logarithmic, type Scale, type Tick } from '../figure/scale.ts';
 import type { RunSeries } from './data.ts';
 
 /** The ways to lay out time, which runs over six and more decades in one run. */
@@ -57,7 +57,7 @@ function activityScale({ time, scalars }: RunSeries): TimeScale {
   const position = new Float64Array(n);
   for (const [share, values] of parts) {
     const whole = values.reduce((sum, v) => sum + v, 0);
-    if (whole > 0) values.forEach((v, i) => (position[i] += (share * v) / whole));
+    if (whole > 0) for (let i = 0; i < n; i++) position[i] += (share * values[i]) / whole;
   }
   for (let i = 1; i < n; i++) position[i] += position[i - 1];
   const whole = position[n - 1] || 1;
@@ -87,12 +87,8 @@ function logScale({ time, events }: RunSeries): TimeScale {
       : time[0] + (share / before) * (origin + start - time[0]);
   const title = threshold === null ? 'Time after turn-on [s], log' : `Time after the threshold at ${formatQuantity(threshold, 's')}, log`;
   return (length) => {
-    const ticks: Tick[] = [];
-    const perDecade = (length * (1 - before)) / decades;
-    const every = [1, 2, 3, 6].find((k) => k * perDecade >= 62) ?? 12;
-    for (let k = Math.ceil(Math.log10(start) - 1e-9); k <= Math.log10(span) + 1e-9; k++)
-      ticks.push({ at: at(origin + 10 ** k), label: k % every === 0 ? formatQuantity(Number(`1e${k}`), 's') : '' });
-    return { at, from, ticks, title };
+    const after = logarithmic('', 's', start, span, { length: length * (1 - before), apart: 60 });
+    return { at, from, ticks: after.ticks.map((tick) => ({ ...tick, at: before + (1 - before) * tick.at })), title };
   };
 }
 
@@ -128,14 +124,14 @@ function placed(time: Float64Array, position: Float64Array, title: string): Time
 
 /** About every {@link APART} pixels the roundest time nearby. */
 function roundTimes(at: (t: number) => number, from: (share: number) => number, length: number): Tick[] {
-  const count = Math.max(2, Math.floor(length / APART));
+  const count = Math.max(3, Math.floor(length / APART));
   const ticks: Tick[] = [];
   let lastEnd = Number.NEGATIVE_INFINITY;
   for (let k = 0; k <= count; k++) {
     const middle = k / count;
     const reach = k === 0 || k === count ? 0 : 0.36 / count;
     const [low, high] = [from(middle - reach), from(middle + reach)];
-    const value = roundest(low, high);
+    const value = k === count ? { value: high, digits: 3 } : roundest(low, high);
     const label = formatQuantity(value.value, 's', value.digits);
     const centre = at(value.value) * length;
     const half = 3.7 * label.length + 5;
@@ -167,4 +163,3 @@ export function roundest(low: number, high: number): { readonly value: number; r
 function largest(values: Float64Array): number {
   return values.reduce((most, v) => Math.max(most, Math.abs(v)), 0);
 }
-
