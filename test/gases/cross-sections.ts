@@ -3,7 +3,9 @@ import type { Target } from './two-term.ts';
 /** Electron cross-sections of the gases whose curves were computed, 1e-20 m² against eV: rounded recollection of the sets in common use, from memory, nobody here has read them.
  *  Elastic ones and ionisation are good to some 10 to 15 %, excitation of molecules to a factor of 1.5 or so. Maxima of ionisation after Rapp and Englander-Golden,
  *  J. Chem. Phys. 43, 1464, 1965 (from memory, M): helium 0.37, neon 0.78, krypton 4.3, xenon 5.4, hydrogen 0.97, nitrogen 2.5, oxygen 2.7, carbon dioxide 3.55. */
-export const targets = {
+export const targets: Readonly<
+  Record<'helium' | 'neon' | 'krypton' | 'xenon' | 'hydrogen' | 'nitrogen' | 'oxygen' | 'carbon dioxide' | 'water vapour', Target>
+> = {
   helium: {
     mass: 4.0026,
     momentum: [
@@ -865,4 +867,4 @@ export const targets = {
       [20, 0.0005],
     ],
   },
-} as const satisfies Record<string, Target>;
+};
