@@ -51,18 +51,23 @@ export function narrow(runs: Runs, from: Sample, to: Sample, tolerance: number, 
 interface Stretch {
   readonly from: number;
   readonly to: number;
+  /** a place to try first, close to what is undecided, where that is narrow; else null */
+  readonly beside: number | null;
 }
 
 /** Where to look next: the bracket, or the wider of the gaps on either side of what is undecided in it; null when both are narrow
  *  and the undecided stretch itself is too wide. */
 function stretchToSearch(undecided: readonly Sample[], lower: Sample, upper: Sample, tolerance: number): Stretch | null {
-  if (undecided.length === 0) return { from: lower.value, to: upper.value };
+  if (undecided.length === 0) return { from: lower.value, to: upper.value, beside: null };
   const first = undecided[0].value;
   const last = undecided[undecided.length - 1].value;
   const below = first / lower.value;
   const above = upper.value / last;
   if (Math.max(below, above) <= 1 + tolerance && last / first > 1 + TOO_WIDE * tolerance) return null;
-  return below >= above ? { from: lower.value, to: first } : { from: last, to: upper.value };
+  const small = last / first <= 1 + BELOW * tolerance;
+  return below >= above
+    ? { from: lower.value, to: first, beside: small ? first * (1 - BELOW * tolerance) : null }
+    : { from: last, to: upper.value, beside: small ? last * (1 + BELOW * tolerance) : null };
 }
 
 /** The middle of a stretch (in ratio); beside an undecided stretch the place that makes the bracket just narrow enough, if that is
@@ -74,14 +79,17 @@ function middle({ from, to }: Stretch, lower: Sample, upper: Sample, tolerance: 
   return half;
 }
 
-/** The next of the two places that enclose the estimated crossing; null without an estimate or where a run is near already. */
+/** The place beside what is undecided, else the next of the two that enclose the estimated crossing; null without either or where a
+ *  run is near already. */
 function aim(runs: Runs, lower: Sample, upper: Sample, stretch: Stretch, tolerance: number, measures: readonly Measure[]): number | null {
+  const apart = 1 + APART * tolerance;
+  const isFree = (place: number): boolean => place > stretch.from * apart && place * apart < stretch.to;
+  if (stretch.beside !== null && isFree(stretch.beside)) return stretch.beside;
   const crossing = crossingBetween(runs, lower, upper, measures);
   if (crossing === null) return null;
   const below = crossing * (1 - BELOW * tolerance);
   const trial = lower.value < below ? below : crossing * (1 + ABOVE * tolerance);
-  const apart = 1 + APART * tolerance;
-  return trial > stretch.from * apart && trial * apart < stretch.to ? trial : null;
+  return isFree(trial) ? trial : null;
 }
 
 /** Where a measure crosses zero between the ends of a bracket; null where none tells. */
