@@ -52,7 +52,7 @@ export interface ScanSettings {
 /** One gap in changing surroundings. */
 export interface WindowSettings {
   readonly history: HistorySettings;
-  /** supply voltage while energised [V], in time or constant */
+  /** supply voltage while energised [V], in time or constant; positive makes the left electrode the cathode */
   readonly voltage: number | Rows;
   /** factor on the voltage below which a hold counts as marginal, ≥ 1 */
   readonly margin: number;
