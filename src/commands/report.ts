@@ -41,7 +41,7 @@ export async function report(path: string, options: ReportOptions, terminal: Ter
     checkReplaceable(output);
     const made = await open(path);
     const lines = [written(output, writeWhole(output, made.page(scriptFor(kind))))];
-    if (options.figures !== undefined) lines.push(writeFigures(options.figures, made.figures()));
+    if (options.figures !== undefined) lines.push(await writeFigures(options.figures, made.figures()));
     if (!options.quiet) terminal.out(lines.map((line) => `${line}\n`).join(''));
   } catch (thrown) {
     throw thrown instanceof ResultFileError ? failureOf(thrown) : thrown;
@@ -76,14 +76,14 @@ function writeWhole(path: string, text: string): number {
   return Buffer.byteLength(text);
 }
 
-function writeFigures(folder: string, files: readonly FigureFile[]): string {
+async function writeFigures(folder: string, files: readonly FigureFile[]): Promise<string> {
   try {
     mkdirSync(folder, { recursive: true });
     for (const { name, svg } of files) writeFileSync(join(folder, `${name}.svg`), svg);
   } catch (thrown) {
     throw resultFileError(folder, thrown);
   }
-  const pictures = pngOf(files.map(({ name }) => [join(folder, `${name}.svg`), join(folder, `${name}.png`)]));
+  const pictures = await pngOf(files.map(({ name }) => [join(folder, `${name}.svg`), join(folder, `${name}.png`)]));
   const also = pictures === null ? '; no PNG, because rsvg-convert is not installed' : ` and ${pictures} PNG`;
   return `Written: ${printable(folder)} (${files.length} SVG${also}).`;
 }

@@ -7,7 +7,7 @@ import { eventsOf } from './events.ts';
 import { PROFILES, pathFigure, profileFigure, timeFigure, timeFigureNames } from './figures.ts';
 import { settingOf } from './page.ts';
 import type { RunReport } from './report.ts';
-import { TIME_AXES, timeScale } from './time-axis.ts';
+import { timeScale } from './time-axis.ts';
 
 /** A figure as the text of an SVG file. */
 export interface FigureFile {
@@ -28,11 +28,11 @@ export function svgFile({ root }: Figure): string {
 /** [px] */
 const WIDTH = { time: 900, now: 520 };
 
-/** Every figure of a run: those over time on each of the time axes, profiles at each event and at the end, the path. */
+/** Every figure of a run: those over time stretched by activity and in the logarithm, profiles at each event and at the end, the path. */
 export function runFigures(run: RunReport): FigureFile[] {
   const series = seriesOf(run);
   const files: FigureFile[] = [];
-  for (const { kind } of TIME_AXES) {
+  for (const kind of ['activity', 'log'] as const) {
     const layout = { width: WIDTH.time, scale: timeScale(kind, series), nameMarks: true };
     for (const name of timeFigureNames(series))
       files.push({ name: kind === 'activity' ? name : `${name}-${kind}-time`, svg: svgFile(timeFigure(name, series, layout, pngAddress)) });

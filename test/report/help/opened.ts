@@ -1,0 +1,30 @@
+import { pathToFileURL } from 'node:url';
+import type { Browser, BrowserContextOptions, Page } from 'playwright-core';
+
+/** A page opened from disk, and what it asked for or complained about meanwhile. */
+export interface Opened {
+  readonly tab: Page;
+  /** addresses asked for, but for the page itself and pictures that lie in it */
+  readonly requests: readonly string[];
+  readonly complaints: readonly string[];
+  readonly close: () => Promise<void>;
+}
+
+export async function open(browser: Browser, path: string, options: BrowserContextOptions = {}): Promise<Opened> {
+  const context = await browser.newContext({ viewport: { width: 1400, height: 900 }, ...options });
+  const tab = await context.newPage();
+  const [requests, complaints]: [string[], string[]] = [[], []];
+  const address = pathToFileURL(path).href;
+  tab.on('request', (request) => {
+    if (request.url() !== address && !request.url().startsWith('data:')) requests.push(request.url());
+  });
+  tab.on('console', (message) => complaints.push(`${message.type()}: ${message.text()}`));
+  tab.on('pageerror', (error) => complaints.push(String(error)));
+  tab.on('dialog', (dialog) => {
+    complaints.push(`dialog: ${dialog.message()}`);
+    void dialog.dismiss();
+  });
+  await tab.goto(address);
+  await tab.waitForSelector('body[data-ready]', { timeout: 20_000 });
+  return { tab, requests, complaints, close: () => context.close() };
+}
