@@ -47,7 +47,7 @@ export function planText(preview: Preview, paths: readonly { readonly path: stri
   const { style, width } = terminal;
   const { total, count, shard, workers, first, pilot, estimate } = preview;
   const share = shard === null ? '' : `, of which shard ${shard.k} of ${shard.n} takes ${count}`;
-  const lines = [style.strong(`${pointsText(total)}${share}.`), ''];
+  const lines = [...wrap(`${pointsText(total)}${share}.`, width).map(style.strong), ''];
   const headers = ['point', 'id', ...paths.map(({ path }) => shortened(path))];
   const rows = first.map(({ index, id, values }) => [
     String(index),

@@ -33,11 +33,12 @@ const FIRST = 5;
 const FEWEST_PILOTS = 8;
 /** [ms] after which the pilot ends, whatever is finished */
 const LONGEST_PILOT = 20_000;
-/** [ms] below which compiling is a large part of it */
-const QUICK_PILOT = 5000;
+/** [ms] until which compiling is a large part of what points take, and passes that are enough */
+const WARM_UP = 2000;
+const MOST_PASSES = 5;
 
 /** Counts a scan's points, names the first and computes a few spread over the plan. The first points of a worker take several times as long as later ones,
- *  because its code is not yet compiled: where the pilot is quick it is done twice, and the second time counts. */
+ *  because its code is not yet compiled: a quick pilot is repeated, and its last pass counts. */
 export async function preview(
   study: Study,
   shard: Shard | null,
@@ -71,8 +72,7 @@ export async function preview(
   options.stop.addEventListener('abort', interrupt);
   try {
     const start = performance.now();
-    await pass();
-    if (performance.now() - start < QUICK_PILOT) await pass();
+    for (let passes = 0; passes < MOST_PASSES && (passes === 0 || performance.now() - start < WARM_UP); passes++) await pass();
   } finally {
     clearTimeout(timeOver);
     options.stop.removeEventListener('abort', interrupt);
