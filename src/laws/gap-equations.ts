@@ -1,6 +1,8 @@
 import type { Grid } from '../gap/grid.ts';
 import type { Layout } from '../gap/layout.ts';
 import type { Curve } from '../gases/curves.ts';
+import type { IonYield } from '../surfaces/surface.ts';
+import { yieldAt, yieldSlopeAt } from '../surfaces/yield-law.ts';
 import { ELEMENTARY_CHARGE } from '../units/constants.ts';
 import { fluxAtFaces, linearFluxAtFaces, makeStencils, type Stencils } from './drift-diffusion.ts';
 import { emissionShare, emissionShareSlope } from './emission.ts';
@@ -27,8 +29,8 @@ export interface GapLaws {
   readonly ionIonRecombination: number;
   /** N [1/m³] */
   readonly density: number;
-  readonly leftYield: number;
-  readonly rightYield: number;
+  readonly leftYield: IonYield;
+  readonly rightYield: IonYield;
   /** seed electrons that leave the cathode [1/(m² s)] */
   readonly seedFlux: number;
 }
@@ -228,11 +230,11 @@ export class GapEquations {
     const { field, cells } = this.layout;
     const { density, leftYield, rightYield, seedFlux } = this.laws;
     const leftShare = emissionShare(-y[field] / density);
-    v.emissionLeft = leftYield * leftShare;
+    v.emissionLeft = yieldAt(leftYield, v.reducedField[0]) * leftShare;
     v.seedLeft = seedFlux * leftShare;
     v.flux[0][0] += v.seedLeft - v.emissionLeft * v.flux[1][0];
     const rightShare = emissionShare(y[field + cells] / density);
-    v.emissionRight = rightYield * rightShare;
+    v.emissionRight = yieldAt(rightYield, v.reducedField[cells]) * rightShare;
     v.seedRight = seedFlux * rightShare;
     v.flux[0][cells] -= v.seedRight + v.emissionRight * v.flux[1][cells];
   }
@@ -242,10 +244,19 @@ export class GapEquations {
     const { field, cells } = this.layout;
     const { density, leftYield, rightYield, seedFlux } = this.laws;
     const ions = v.flux[1];
-    const left = -emissionShareSlope(-y[field] / density) / density;
-    this.byField[0][0] += (seedFlux - leftYield * ions[0]) * left - v.emissionLeft * this.byField[1][0];
-    const right = emissionShareSlope(y[field + cells] / density) / density;
-    this.byField[0][cells] -= (seedFlux + rightYield * ions[cells]) * right + v.emissionRight * this.byField[1][cells];
+    // both change with the field: the share that leaves, and the yield
+    const toLeft = -y[field] / density;
+    const xLeft = v.reducedField[0];
+    const left = -emissionShareSlope(toLeft) / density;
+    const yieldLeft = (-yieldSlopeAt(leftYield, xLeft) * emissionShare(toLeft)) / density;
+    this.byField[0][0] +=
+      (seedFlux - yieldAt(leftYield, xLeft) * ions[0]) * left - yieldLeft * ions[0] - v.emissionLeft * this.byField[1][0];
+    const toRight = y[field + cells] / density;
+    const xRight = v.reducedField[cells];
+    const right = emissionShareSlope(toRight) / density;
+    const yieldRight = (yieldSlopeAt(rightYield, xRight) * emissionShare(toRight)) / density;
+    this.byField[0][cells] -=
+      (seedFlux + yieldAt(rightYield, xRight) * ions[cells]) * right + yieldRight * ions[cells] + v.emissionRight * this.byField[1][cells];
   }
 
   #sources(y: Float64Array, v: FaceValues, out: Float64Array): void {

@@ -23,8 +23,8 @@ export function lawsOf(settings: Case): GapLaws {
     electronIonRecombination: rate(c.electronIonRecombination),
     ionIonRecombination: rate(c.ionIonRecombination),
     density,
-    leftYield: settings.electrodes.left.ionYield.typical,
-    rightYield: settings.electrodes.right.ionYield.typical,
+    leftYield: settings.electrodes.left.ionYield,
+    rightYield: settings.electrodes.right.ionYield,
     seedFlux: settings.seed.cathodeCurrent / (ELEMENTARY_CHARGE * settings.gap.area),
   };
 }

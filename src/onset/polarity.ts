@@ -1,4 +1,5 @@
 import type { Case } from '../case.ts';
+import { sameYield } from '../surfaces/yield-law.ts';
 import { limitsOf } from '../theory/predict.ts';
 
 /** What one polarity of a run went up to, and what it could have stood. */
@@ -18,7 +19,7 @@ export interface Polarity {
  *  @param highest, lowest open-gap voltages [V] */
 export function polaritiesOf(settings: Case, highest: number, lowest: number): Polarity[] {
   const { left, right } = settings.electrodes;
-  const alike = left.ionYield.typical === right.ionYield.typical;
+  const alike = sameYield(left.ionYield, right.ionYield);
   const of = (cathode: 'left' | 'right', largest: number): Polarity => {
     const { threshold, lowest: path } = limitsOf(settings, cathode === 'left' ? 1 : -1);
     return { cathode: alike ? null : cathode, largest, breakdown: threshold.breakdown, upper: threshold.upper, lowest: path };

@@ -1,4 +1,5 @@
 import type { Provenance } from '../gases/gas.ts';
+import type { YieldLaw } from './yield-law.ts';
 
 /** Electrons that leave a cathode for each positive ion that arrives: a net yield, as breakdown measurements give it. */
 export interface IonYield extends Provenance {
@@ -6,6 +7,8 @@ export interface IonYield extends Provenance {
   /** the ends of the published spread; equal to `typical` where a case gives one number */
   readonly low: number;
   readonly high: number;
+  /** how it depends on the field at the cathode: the three numbers above then multiply what the law gives; absent where it does not */
+  readonly law?: YieldLaw;
 }
 
 /** One electrode of a case. */

@@ -2,6 +2,7 @@ import { type Curve, curveOf } from '../gases/curves.ts';
 import type { Form } from '../gases/forms.ts';
 import type { Provenance } from '../gases/gas.ts';
 import { TOWNSEND } from '../units/constants.ts';
+import type { IonYield } from './surface.ts';
 
 /** One term of a yield against the energy ε of what hits the wall [eV]:
  *      factor (ε − from)^power / (1 + (ε/scale)^fall)   above `from`, nothing below. */
@@ -70,10 +71,36 @@ export function meanYield(terms: readonly YieldTerm[], meanEnergy: number): numb
   return sum;
 }
 
+/** Curves already made, by their laws: averaging a law of the energy takes a while. */
+const known = new WeakMap<YieldLaw, Curve>();
+
 /** The yield as a function of E/N at the cathode [V m²], with its slope: finite and not negative from 0 to 1e5 Td and beyond.
  *
  *  A law of the energy is averaged once, at 12 fields a decade from 1 to 1e6 Td, and interpolated; its end values are kept outside. */
 export function yieldCurve(law: YieldLaw): Curve {
+  const before = known.get(law);
+  if (before !== undefined) return before;
+  const curve = curveOfLaw(law);
+  known.set(law, curve);
+  return curve;
+}
+
+/** γ at one reduced field [V m²] at the cathode. */
+export function yieldAt({ typical, law }: IonYield, x: number): number {
+  return law === undefined ? typical : typical * yieldCurve(law).valueAt(x);
+}
+
+/** dγ/d(E/N) [1/(V m²)]. */
+export function yieldSlopeAt({ typical, law }: IonYield, x: number): number {
+  return law === undefined ? 0 : typical * yieldCurve(law).slopeAt(x);
+}
+
+/** Do two walls answer alike to the same ions? */
+export function sameYield(one: IonYield, other: IonYield): boolean {
+  return one.typical === other.typical && one.law === other.law;
+}
+
+function curveOfLaw(law: YieldLaw): Curve {
   switch (law.kind) {
     case 'constant':
       return curveOf(law);

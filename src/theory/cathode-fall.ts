@@ -15,12 +15,17 @@ export interface CathodeLayer {
 /** The layer that sustains itself with a given reduced field at the cathode.
  *  N d_c ∫₀¹ (α/N)(x_c s) ds = ln(1 + 1/γ),  V_c = ½ x_c N d_c; no attachment
  *  @param ionisation  α/N [m²] of E/N [V m²]
+ *  @param ionYield  γ of E/N [V m²] at the cathode
  *  @returns null when the field does not ionise
  *  Source: von Engel & Steenbeck 1934 (the linear field); the integral is resolved here
- *  @example cathodeLayer((x) => (x > 0 ? Math.exp(-1 / x) : 0), 0.01, 1.639)?.voltage // 13.923769 */
-export function cathodeLayer(ionisation: (x: number) => number, ionYield: number, cathodeReducedField: number): CathodeLayer | null {
+ *  @example cathodeLayer((x) => (x > 0 ? Math.exp(-1 / x) : 0), () => 0.01, 1.639)?.voltage // 13.923769 */
+export function cathodeLayer(
+  ionisation: (x: number) => number,
+  ionYield: (x: number) => number,
+  cathodeReducedField: number,
+): CathodeLayer | null {
   const mean = integral((s) => ionisation(cathodeReducedField * s), 0, 1);
-  const column = Math.log1p(1 / ionYield) / mean;
+  const column = Math.log1p(1 / ionYield(cathodeReducedField)) / mean;
   if (!Number.isFinite(column)) return null;
   return { cathodeReducedField, column, voltage: 0.5 * cathodeReducedField * column };
 }
@@ -28,10 +33,10 @@ export function cathodeLayer(ionisation: (x: number) => number, ionYield: number
 /** The layer of lowest voltage: the normal cathode fall. Null when no minimum lies inside 1e-4 … 1e4 Td.
  *  For α/N = A exp(−B/x), L = ln(1 + 1/γ): V_n = 3.017 (B/A) L, N d_n = 3.681 L/A, x_c = 1.639 B (textbooks round to 3 and 3.78).
  *  Source: von Engel & Steenbeck 1934; constants re-solved
- *  @example normalCathodeLayer((x) => (x > 0 ? 1e-20 * Math.exp(-5e-19 / x) : 0), 0.01)?.voltage // 696.2 */
-export function normalCathodeLayer(ionisation: (x: number) => number, ionYield: number): CathodeLayer | null {
+ *  @example normalCathodeLayer((x) => (x > 0 ? 1e-20 * Math.exp(-5e-19 / x) : 0), () => 0.01)?.voltage // 696.2 */
+export function normalCathodeLayer(ionisation: (x: number) => number, ionYield: (x: number) => number): CathodeLayer | null {
   const voltageAt = (x: number): number => cathodeLayer(ionisation, ionYield, x)?.voltage ?? Number.POSITIVE_INFINITY;
-  const lowest = lowestScanned(ionisation);
+  const lowest = lowestScanned(ionisation, ionYield);
   if (lowest === null) return null;
   const best = minimumBetween(
     (u) => voltageAt(Math.exp(u)),
@@ -45,9 +50,9 @@ export function normalCathodeLayer(ionisation: (x: number) => number, ionYield: 
 /** How closely the field of the lowest layer is sought, relative to its logarithm: the voltage follows as the square. */
 const LAYER_PLACE = 1e-7;
 
-/** Index of the scanned field whose layer has the lowest voltage, V ∝ x²/∫₀ˣ α dx; null when it is the first or the last. The
+/** Index of the scanned field whose layer has the lowest voltage, V ∝ x² ln(1 + 1/γ)/∫₀ˣ α dx; null when it is the first or the last. The
  *  integral is the running trapezoid over the scan (2.3 % steps): close enough to say which. */
-function lowestScanned(ionisation: (x: number) => number): number | null {
+function lowestScanned(ionisation: (x: number) => number, ionYield: (x: number) => number): number | null {
   const fields = SCANNED_FIELDS;
   let lowest = 0;
   let least = Number.POSITIVE_INFINITY;
@@ -57,7 +62,7 @@ function lowestScanned(ionisation: (x: number) => number): number | null {
     const here = ionisation(fields[i]);
     integral += 0.5 * (before + here) * (fields[i] - fields[i - 1]);
     before = here;
-    const voltage = (fields[i] * fields[i]) / integral;
+    const voltage = (fields[i] * fields[i] * Math.log1p(1 / ionYield(fields[i]))) / integral;
     if (voltage < least) {
       least = voltage;
       lowest = i;
@@ -68,8 +73,12 @@ function lowestScanned(ionisation: (x: number) => number): number | null {
 
 /** The abnormal layer of a given voltage, thinner than the normal one and with a stronger field at the cathode; null below the
  *  normal fall or beyond 1e4 Td.
- *  @example abnormalCathodeLayer((x) => (x > 0 ? 1e-20 * Math.exp(-5e-19 / x) : 0), 0.01, 1000)?.voltage // 1000 */
-export function abnormalCathodeLayer(ionisation: (x: number) => number, ionYield: number, voltage: number): CathodeLayer | null {
+ *  @example abnormalCathodeLayer((x) => (x > 0 ? 1e-20 * Math.exp(-5e-19 / x) : 0), () => 0.01, 1000)?.voltage // 1000 */
+export function abnormalCathodeLayer(
+  ionisation: (x: number) => number,
+  ionYield: (x: number) => number,
+  voltage: number,
+): CathodeLayer | null {
   const normal = normalCathodeLayer(ionisation, ionYield);
   if (normal === null || voltage < normal.voltage) return null;
   const excess = (u: number): number => (cathodeLayer(ionisation, ionYield, Math.exp(u))?.voltage ?? 0) - voltage;

@@ -2,6 +2,7 @@ import type { Case } from '../case.ts';
 import type { PlanarGap } from '../gap/geometry.ts';
 import { curveOf } from '../gases/curves.ts';
 import type { Gas } from '../gases/gas.ts';
+import { sameYield, yieldAt } from '../surfaces/yield-law.ts';
 import { BOLTZMANN, ELEMENTARY_CHARGE, TOWNSEND } from '../units/constants.ts';
 import { type Threshold, threshold } from './breakdown-voltage.ts';
 import { layerCurrentDensity, normalCathodeLayer } from './cathode-fall.ts';
@@ -76,11 +77,10 @@ export function multiplicationOf(settings: Case, polarity: number): Multiplicati
   const alpha = curveOf(ionisation.form);
   const eta = attachment === null ? null : curveOf(attachment.form);
   const cathode = polarity < 0 ? settings.electrodes.right : settings.electrodes.left;
-  const ionYield = cathode.ionYield.typical;
   return {
     ionisation: (x) => alpha.valueAt(x),
     attachment: (x) => (eta === null ? 0 : eta.valueAt(x)),
-    ionYield: () => ionYield,
+    ionYield: (x) => yieldAt(cathode.ionYield, x),
   };
 }
 
@@ -133,7 +133,7 @@ const MOST_KNOWN = 8;
 export function limitsOf(settings: Case, polarity: number): Limits {
   const found = knownLimits(settings);
   const { left, right } = settings.electrodes;
-  const negative = polarity < 0 && left.ionYield.typical !== right.ionYield.typical;
+  const negative = polarity < 0 && !sameYield(left.ionYield, right.ionYield);
   const before = negative ? found.negative : found.positive;
   if (before !== undefined) return before;
   const { gap, gas } = settings;
@@ -243,7 +243,7 @@ function timeToSpaceCharge(settings: Case, here: LocalState): number | null {
 
 function normalFall(settings: Case, here: LocalState): Prospects['normalCathodeFall'] {
   const { gas } = settings;
-  const layer = normalCathodeLayer(here.multiplication.ionisation, here.ionYield);
+  const layer = normalCathodeLayer(here.multiplication.ionisation, here.multiplication.ionYield);
   if (layer === null) return null;
   const x = layer.cathodeReducedField;
   const ionSpeed = driftSpeed(curveOf(gas.coefficients.ionMobility.form).valueAt(x), x);
@@ -251,6 +251,6 @@ function normalFall(settings: Case, here: LocalState): Prospects['normalCathodeF
     voltage: layer.voltage,
     thickness: layer.column / gas.density,
     cathodeField: x * gas.density,
-    currentDensity: layerCurrentDensity(layer, here.ionYield, gas.density, ionSpeed),
+    currentDensity: layerCurrentDensity(layer, here.multiplication.ionYield(x), gas.density, ionSpeed),
   };
 }

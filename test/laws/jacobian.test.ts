@@ -135,6 +135,16 @@ function settingsOf(name: string): Case {
       return caseOf(rightOfMinimum, { ...base, supply: RESISTOR });
     case 'coefficients that depend on the field':
       return caseOf(rightOfMinimum, { ...base, supply: RESISTOR, coefficients: fieldDependent(rightOfMinimum) });
+    case 'yields that depend on the field': {
+      const plain = caseOf(rightOfMinimum, { ...base, supply: RESISTOR });
+      const { left } = plain.electrodes;
+      // of another slope at either wall, so that a mistake at one of them shows
+      const surface = (b: number): Case['electrodes']['left'] => ({
+        ...left,
+        ionYield: { ...left.ionYield, law: { kind: 'reduced-field', form: { kind: 'linear', a: 0.5, b } } },
+      });
+      return { ...plain, electrodes: { left: surface(3e18), right: surface(-1e18) } };
+    }
     case 'an ideal supply':
       return caseOf(rightOfMinimum, { ...base, coefficients: fieldDependent(rightOfMinimum) });
     case 'attachment and three species':
@@ -169,6 +179,7 @@ function settingsOf(name: string): Case {
 const MODELS = [
   'constant mobilities',
   'coefficients that depend on the field',
+  'yields that depend on the field',
   'an ideal supply',
   'attachment and three species',
   'recombination',

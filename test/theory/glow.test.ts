@@ -15,7 +15,7 @@ const L = Math.log(1 + 1 / ionYield);
 const alpha = (x: number): number => (x > 0 ? A * Math.exp(-B / x) : 0);
 
 describe('the cathode layer with a linear field', () => {
-  const normal = normalCathodeLayer(alpha, ionYield) as CathodeLayer;
+  const normal = normalCathodeLayer(alpha, () => ionYield) as CathodeLayer;
 
   it('of lowest voltage has the constants of the re-solved integral', () => {
     // source: reference-values §8, von Engel–Steenbeck optimum: 3.017, 3.681, 1.639, 4V²/(pd)³ = 0.730 A B²/L (computed)
@@ -27,18 +27,18 @@ describe('the cathode layer with a linear field', () => {
 
   it('is stationary: 1 % off either way costs only second order', () => {
     for (const factor of [0.99, 1.01]) {
-      const off = cathodeLayer(alpha, ionYield, factor * normal.cathodeReducedField) as CathodeLayer;
+      const off = cathodeLayer(alpha, () => ionYield, factor * normal.cathodeReducedField) as CathodeLayer;
       expect(off.voltage / normal.voltage - 1).toBeGreaterThan(0);
       expect(off.voltage / normal.voltage - 1).toBeLessThan(1e-4);
     }
   });
 
   it('of a higher voltage is thinner, with a stronger field; below the normal fall there is none', () => {
-    const abnormal = abnormalCathodeLayer(alpha, ionYield, 2 * normal.voltage) as CathodeLayer;
+    const abnormal = abnormalCathodeLayer(alpha, () => ionYield, 2 * normal.voltage) as CathodeLayer;
     expect(abnormal.voltage / normal.voltage).toBeCloseTo(2, 9);
     expect(abnormal.column).toBeLessThan(normal.column);
     expect(abnormal.cathodeReducedField).toBeGreaterThan(normal.cathodeReducedField);
-    expect(abnormalCathodeLayer(alpha, ionYield, 0.99 * normal.voltage)).toBeNull();
+    expect(abnormalCathodeLayer(alpha, () => ionYield, 0.99 * normal.voltage)).toBeNull();
   });
 
   it('carries 4 ε0 μ V²(1 + γ)/d³', () => {
@@ -52,8 +52,19 @@ describe('the cathode layer with a linear field', () => {
   });
 
   it('does not exist in a gas that does not ionise, nor has it a minimum where ionisation is constant', () => {
-    expect(cathodeLayer(() => 0, ionYield, B)).toBeNull();
-    expect(normalCathodeLayer(() => A, ionYield)).toBeNull();
+    expect(
+      cathodeLayer(
+        () => 0,
+        () => ionYield,
+        B,
+      ),
+    ).toBeNull();
+    expect(
+      normalCathodeLayer(
+        () => A,
+        () => ionYield,
+      ),
+    ).toBeNull();
   });
 });
 
