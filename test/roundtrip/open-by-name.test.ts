@@ -3,9 +3,11 @@ import { existsSync } from 'node:fs';
 import { join } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { describe, expect, test } from 'vitest';
+import { headlinesOf } from '../../src/results/scan-variables.ts';
 import { fieldVariables, scalarVariables } from '../../src/results/variables.ts';
 import { openRunFile } from '../../src/results/write.ts';
 import { folder } from './folder.ts';
+import { about, axis, point, writePoints } from './points.ts';
 import { cellCentres, documents, snapshot } from './snapshots.ts';
 
 /** Debian's own Python has the packages; another may come first on the path. */
@@ -17,7 +19,20 @@ interface Opened {
   readonly sizes: Readonly<Record<string, number>>;
   readonly coords: readonly string[];
   readonly attrs: Readonly<Record<string, string>>;
-  readonly variables: Readonly<Record<string, { dims: string[]; kind: string; units: string | null; long_name: string; value: unknown }>>;
+  readonly variables: Readonly<
+    Record<
+      string,
+      {
+        dims: string[];
+        kind: string;
+        units: string | null;
+        long_name: string;
+        flags: number[][];
+        flag_meanings: string | null;
+        value: unknown;
+      }
+    >
+  >;
   readonly nearest: number;
 }
 
@@ -95,5 +110,65 @@ describe.each(['netcdf4', 'h5netcdf'] as const)('xarray opens a run file by name
     // x = 3 mm lies between cells 14 and 15 of 30 over 6 mm; either is nearest.
     const density = (snapshots[2] as (typeof snapshots)[0]).electronDensity;
     expect([density[14], density[15]].map((value) => Math.fround(value as number))).toContain(opened.nearest);
+  });
+
+  test.skipIf(skipped)(`a scan has its axes as dimensions and its headlines on their grid${name}`, async () => {
+    const path = join(folder(), 'scan.h5');
+    const axes = [axis('gas.pressure', 'Pa', [100, 200, 300, 400]), axis('supply.voltage.step', 'V', [1, 2, 3])];
+    const what = about(axes, { find: 'hold-off' });
+    const points = Array.from({ length: 12 }, (_, index) => point(index, 'hold-off'));
+    await writePoints(path, what, points);
+    const { status, stdout, stderr } = run(script, engine, path);
+    expect({ status, stderr }).toEqual({ status: 0, stderr: '' });
+    const opened = JSON.parse(stdout) as Opened;
+    expect(opened.sizes).toEqual({ gas_pressure: 4, supply_voltage_step: 3 });
+    expect(opened.coords).toEqual(['gas_pressure', 'supply_voltage_step']);
+    expect(opened.attrs).toEqual({ format: 'gapwake.scan/1', title: 'Made up', program: 'gapwake', version: '1.2.3' });
+    expect(opened.variables.gas_pressure).toMatchObject({ units: 'Pa', long_name: 'gas.pressure', value: [100, 200, 300, 400] });
+    for (const headline of headlinesOf('hold-off')) {
+      const variable = opened.variables[headline.name] as Opened['variables'][string];
+      expect(variable, headline.name).toMatchObject({
+        dims: ['gas_pressure', 'supply_voltage_step'],
+        units: 'units' in headline ? headline.units : '1',
+        long_name: headline.longName,
+        flag_meanings: 'meanings' in headline ? headline.meanings.join(' ') : null,
+      });
+      if (headline.kind === 'number') {
+        expect((variable.value as (number | null)[][]).flat(), headline.name).toEqual(points.map((each) => headline.of(each)));
+      }
+      if (headline.kind === 'flag') {
+        // decoded as the CF conventions say: the meaning at the place of the value
+        const [values = []] = variable.flags;
+        const words = (variable.value as number[][]).flat().map((value) => headline.meanings[values.indexOf(value)]);
+        expect(words, headline.name).toEqual(points.map((each) => headline.of(each)));
+      }
+      if (headline.kind === 'mask') {
+        const [masks = []] = variable.flags;
+        const words = (variable.value as number[][])
+          .flat()
+          .map((value) => headline.meanings.filter((_, i) => value & (masks[i] as number)));
+        expect(words.map((each) => each.toSorted())).toEqual(points.map((each) => headline.of(each).toSorted()));
+      }
+    }
+    // 210 Pa is nearest to the second pressure, 2 V is the second voltage: point 4
+    expect(opened.nearest).toBe(200.5);
+  });
+
+  test.skipIf(skipped)(`points in a list have the axes as coordinates${name}`, async () => {
+    const path = join(folder(), 'list.h5');
+    const values = [Float64Array.from([5, 6, 5])];
+    const layout = { kind: 'list', indices: Int32Array.from([2, 3, 9]), values } as const;
+    await writePoints(
+      path,
+      about([axis('gap.area', 'm^2', [5, 6])], { layout, total: 10 }),
+      [2, 3, 9].map((index) => point(index)),
+    );
+    const { status, stdout, stderr } = run(script, engine, path);
+    expect({ status, stderr }).toEqual({ status: 0, stderr: '' });
+    const opened = JSON.parse(stdout) as Opened;
+    expect(opened.sizes).toEqual({ point: 3 });
+    expect(opened.coords).toEqual(['gap_area', 'point']);
+    expect(opened.variables.point?.value).toEqual([2, 3, 9]);
+    expect(opened.variables.gap_area).toMatchObject({ dims: ['point'], units: 'm^2', value: [5, 6, 5] });
   });
 });
