@@ -89,7 +89,8 @@ describe.skipIf(skipped)(`the page of a run in a browser${skipped ? ' (skipped: 
   let page = '';
   beforeAll(async () => {
     browser = await launch();
-    page = join(program.folder(), 'plain.html');
+    page = join(program.folder(), 'page.html');
+    expect((await program.run(['report', 'plain.h5', '-o', 'page.html', '--quiet'])).code).toBe(0);
   });
   afterAll(() => browser?.close());
 

@@ -56,14 +56,3 @@ export interface RunEvent {
   /** [s] */
   readonly time: number;
 }
-
-/** The snapshot nearest to a time. */
-export function nearest(time: Float64Array, t: number): number {
-  let [low, high] = [0, time.length - 1];
-  while (high - low > 1) {
-    const middle = (low + high) >> 1;
-    if (time[middle] <= t) low = middle;
-    else high = middle;
-  }
-  return high >= 0 && time[high] - t < t - time[low] ? high : Math.max(0, low);
-}

@@ -3,7 +3,8 @@ import { type Box, type Figure, type Mark, round } from '../figure/frame.ts';
 import { type Curve, KEY_WIDTH, lineFigure, pathOf } from '../figure/lines.ts';
 import { mapFigure, type Picture } from '../figure/map.ts';
 import { linear, logarithmic, type Scale } from '../figure/scale.ts';
-import { nearest, type Profiles, type RunField, type RunSeries } from './data.ts';
+import { nearest } from '../nearest.ts';
+import type { Profiles, RunField, RunSeries } from './data.ts';
 import type { TimeScale } from './time-axis.ts';
 
 /** The figures of a run. Each is a pure function of the run and of how it is laid out, so that the page and the SVG files show the same. */

@@ -1,8 +1,9 @@
 import { el, markup } from '../element.ts';
 import type { Figure } from '../figure/frame.ts';
 import { figureStyle, LIGHT } from '../figure/style.ts';
+import { nearest } from '../nearest.ts';
 import { pngAddress } from '../png.ts';
-import { FIELDS, nearest, type RunSeries, SCALARS } from './data.ts';
+import { FIELDS, type RunSeries, SCALARS } from './data.ts';
 import { eventsOf } from './events.ts';
 import { PROFILES, pathFigure, profileFigure, timeFigure, timeFigureNames } from './figures.ts';
 import { settingOf } from './page.ts';

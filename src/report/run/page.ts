@@ -1,6 +1,7 @@
 import type { State } from '../../onset/outcome.ts';
 import { html } from '../document.ts';
 import { type Element, el } from '../element.ts';
+import { linkedSection } from '../linked-section.ts';
 import { packEven, packExact, packLog } from '../pack.ts';
 import type { Packed } from '../packed.ts';
 import { cautionSection, footer, provenance, type TableFile, together } from '../sections.ts';
@@ -125,50 +126,12 @@ function cellOf(cell: Cell): (Element | string)[] {
 
 /** Empty places that the script fills. */
 function figures(run: RunReport): Element {
-  const last = Math.max(0, run.time.length - 1);
-  return el(
-    'section',
-    { id: 'figures', 'aria-labelledby': 'figures-heading' },
-    el('h2', { id: 'figures-heading' }, 'What happened, moment by moment'),
-    el(
-      'p',
-      { class: 'faint no-print' },
-      'All figures are linked: point at any figure over time, or use the slider and the arrow keys, to choose the moment that the profiles and the current–voltage path show. ',
-      'A click or tap holds it; [ and ] step from event to event.',
-    ),
-    el(
-      'noscript',
-      {},
-      el(
-        'p',
-        {},
-        'The figures are drawn by the script inside of this page, which is switched off here. gapwake report FILE.h5 --figures DIR writes them as files.',
-      ),
-    ),
-    el(
-      'div',
-      { class: 'rail', role: 'group', 'aria-label': 'Linked time' },
-      el('output', { class: 'where', id: 'where', for: 'moment' }, ''),
-      el('input', { type: 'range', id: 'moment', min: 0, max: last, value: 0, step: 1, 'aria-label': 'Moment, by snapshot' }),
-      el('button', { type: 'button', id: 'hold', 'aria-pressed': 'false' }, 'Hold'),
-      el('span', { class: 'choices', id: 'events', role: 'group', 'aria-label': 'Events' }),
-    ),
-    el(
-      'fieldset',
-      { class: 'choices no-print' },
-      el('legend', {}, 'Time axis'),
-      TIME_AXES.map(({ kind, name, explanation }) =>
-        el(
-          'label',
-          { title: explanation },
-          el('input', { type: 'radio', name: 'axis', value: kind, checked: kind === 'activity' }),
-          ` ${name}`,
-        ),
-      ),
-      el('span', { class: 'faint', id: 'axis-explanation' }, TIME_AXES[0].explanation),
-    ),
-    el('div', { class: 'bench' }, el('div', { class: 'time-column', id: 'over-time' }), el('div', { class: 'now-column', id: 'now' })),
-  );
+  return linkedSection({
+    heading: 'What happened, moment by moment',
+    shows: 'the profiles and the current–voltage path show',
+    moments: run.time.length,
+    axes: TIME_AXES,
+  });
 }
 
 function assumptions(run: RunReport): Element {
