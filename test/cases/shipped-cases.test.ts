@@ -53,6 +53,15 @@ const story: Readonly<Record<string, (o: Outcome) => void>> = {
     near(o.final.current_A / 1e-15, 14.65); // the amplification
     expect(o.final.stop).toBe('steady');
   },
+  'balloon-bay-ascent': (o) => {
+    near(o.onset.formative_lag_s, 61.4e-6);
+    near(o.theory.overvoltage, 0.163);
+    expect(codes(o)).toContain('yield-spread');
+  },
+  'chamber-pump-down': (o) => {
+    near(o.theory.static_breakdown_voltage_V, 276);
+    near(o.final.gap_voltage_V, 316);
+  },
   'charged-cable-fires-once': (o) => {
     near(o.onset.formative_lag_s, 22.5e-6);
     expect(o.verdict.self_sustaining).toBe(false);
@@ -84,10 +93,22 @@ const story: Readonly<Record<string, (o: Outcome) => void>> = {
     expect(Math.abs((o.onset.gap_voltage_V ?? 0) - (o.theory.static_breakdown_voltage_V ?? 0))).toBeLessThan(1);
     expect(o.onset.formative_lag_s).toBeGreaterThan(0.1);
   },
+  'lag-map': (o) => {
+    near(o.onset.formative_lag_s, 38.8e-6);
+    near(o.theory.overvoltage, 0.435);
+  },
+  'leak-into-tube': (o) => {
+    near(o.theory.static_breakdown_voltage_V, 296);
+    near(o.final.gap_voltage_V, 307);
+  },
   'nitrogen-purge': (o) => {
     near(o.theory.static_breakdown_voltage_V, 317);
     near(o.final.gap_voltage_V, 353);
     expect(codes(o)).toContain('yield-spread');
+  },
+  'outgassing-after-launch': (o) => {
+    near(o.theory.static_breakdown_voltage_V, 349);
+    near(o.onset.formative_lag_s, 183e-6);
   },
   'own-gas-data': (o) => {
     // two independent codes, transient and steady; errors below 1e-4. The bars: crossing times 0.5 %, peak 2 %, final values 1 %.
