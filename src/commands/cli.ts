@@ -2,6 +2,7 @@ import { Command, CommanderError, InvalidArgumentError, Option } from 'commander
 import { VERSION } from '../version.ts';
 import { EXIT } from './exit-codes.ts';
 import { Failure, problemWithoutPlace } from './failure.ts';
+import type { GasOptions } from './gas.ts';
 import { wrap } from './layout.ts';
 import { printable, printableJson } from './printable.ts';
 import type { ReportOptions } from './report.ts';
@@ -169,7 +170,7 @@ function programOf(terminal: Terminal, done: (exitCode: number) => void): Comman
 
   program
     .command('report')
-    .argument('<file.h5>', 'result of a run')
+    .argument('<file.h5>', 'result of a run or a window')
     .description('one self-contained page with figures from a result file; needs no network')
     .option('-o, --output <file.html>', 'the page (default: beside the result); replaces an older page, nothing else')
     .option('--figures <folder>', 'also write every figure as SVG, and as PNG where rsvg-convert is installed')
@@ -178,6 +179,21 @@ function programOf(terminal: Terminal, done: (exitCode: number) => void): Comman
     .action(async (path: string, options: ReportOptions) => {
       const { report } = await import('./report.ts');
       await report(path, options, terminal);
+      done(EXIT.done);
+    });
+
+  program
+    .command('gas')
+    .argument('[name...]', 'a built-in gas or cathode material')
+    .description('the built-in data of gases and cathode materials: source, range, uncertainty')
+    .option('--data <set>', 'another set of data of the gas')
+    .addOption(new Option('--at <fields>', 'values at reduced fields, as in "10 Td, 100 Td"').conflicts(['csv']))
+    .addOption(new Option('--csv', 'the curves as a table that gas.coefficients of a case reads').conflicts(['json']))
+    .option('--json', 'one JSON object on stdout')
+    .helpOption('-h, --help', 'print this help')
+    .action(async (words: string[], options: GasOptions) => {
+      const { gas } = await import('./gas.ts');
+      gas(words, options, terminal);
       done(EXIT.done);
     });
 
@@ -263,6 +279,7 @@ Examples:
   gapwake scan gap.yaml --plan            how many points, and how long it would take
   gapwake scan gap.yaml --csv gap.csv     all of them; after Ctrl-C it goes on there
   gapwake window bay.yaml                 when it breaks down while the bay vents
+  gapwake gas argon                       where the numbers for argon come from
 
 Exit codes: 0 done, 1 --expect not met, 2 wrong input, 3 a simulation could not
 be completed, 4 a file could not be read or written, 70 internal fault,

@@ -27,8 +27,13 @@ const NAMES: readonly (readonly [keyof GasCoefficients, string, string, string])
 
 /** The coefficients that occur in the gas of a case, in a fixed order. */
 export function coefficientsOf(settings: Case): NamedCoefficient[] {
+  return namedCoefficients(settings.gas.coefficients);
+}
+
+/** Those of a set of data that are there, in the same order. */
+export function namedCoefficients(coefficients: Partial<GasCoefficients>): NamedCoefficient[] {
   return NAMES.flatMap(([key, name, label, unit]) => {
-    const coefficient = settings.gas.coefficients[key];
+    const coefficient = coefficients[key] ?? null;
     return coefficient === null ? [] : [{ name, label, unit, coefficient }];
   });
 }
