@@ -276,8 +276,8 @@ Examples:
   gapwake check gap.yaml                  what it means and what theory expects
   gapwake run gap.yaml -o gap.h5          whether it holds, and what if not
   gapwake run gap.yaml --set supply.voltage.step="500 V" --expect holds
-  gapwake scan gap.yaml --plan            how many points, and how long it would take
-  gapwake scan gap.yaml --csv gap.csv     all of them; after Ctrl-C it goes on there
+  gapwake scan gap.yaml --plan            how many points, how much time
+  gapwake scan gap.yaml --csv gap.csv     all points; goes on after Ctrl-C
   gapwake window bay.yaml                 when it breaks down while the bay vents
   gapwake gas argon                       where the numbers for argon come from
 

@@ -17,7 +17,18 @@ describe('help and version', () => {
   });
 
   test('every way to ask for help answers on stdout, within 80 columns', async () => {
-    for (const args of [['--help'], ['-h'], ['help'], ['help', 'run'], ['run', '--help'], ['check', '-h']]) {
+    for (const args of [
+      ['--help'],
+      ['-h'],
+      ['help'],
+      ['help', 'run'],
+      ['run', '--help'],
+      ['check', '-h'],
+      ['scan', '-h'],
+      ['window', '-h'],
+      ['report', '-h'],
+      ['gas', '-h'],
+    ]) {
       const { code, out, err } = await program.run(args);
       expect({ args, code, err }).toEqual({ args, code: 0, err: '' });
       for (const line of out.split('\n')) expect(line.length, line).toBeLessThanOrEqual(80);
@@ -27,7 +38,7 @@ describe('help and version', () => {
   test('help lists only commands that exist', async () => {
     const { out } = await program.run(['--help']);
     const listed = [...out.matchAll(/^ {2}([a-z]+) .*?\b/gm)].map(([, name]) => name).filter((name) => name !== 'gapwake');
-    expect(listed).toEqual(['check', 'run', 'help']);
+    expect(listed).toEqual(['check', 'run', 'scan', 'window', 'report', 'gas', 'help']);
   });
 
   test('the version is that of package.json', async () => {
