@@ -278,7 +278,7 @@ Examples:
   gapwake run gap.yaml --set supply.voltage.step="500 V" --expect holds
   gapwake scan gap.yaml --plan            how many points, how much time
   gapwake scan gap.yaml --csv gap.csv     all points; goes on after Ctrl-C
-  gapwake window bay.yaml                 when it breaks down while the bay vents
+  gapwake window bay.yaml                 when it breaks down as the bay vents
   gapwake gas argon                       where the numbers for argon come from
 
 Exit codes: 0 done, 1 --expect not met, 2 wrong input, 3 a simulation could not

@@ -2,7 +2,7 @@ import { mkdirSync, readFileSync, renameSync, rmSync, statSync, writeFileSync } 
 import { join } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { GENERATOR } from '../report/document.ts';
-import type { FigureFile } from '../report/run/files.ts';
+import type { FigureFile } from '../report/svg-file.ts';
 import { ResultFileError, resultFileError } from '../results/errors.ts';
 import { readResultFormat } from '../results/read.ts';
 import { EXIT } from './exit-codes.ts';
@@ -27,6 +27,7 @@ export interface Report {
 /** What kinds of result there are pages for, and the script of each. */
 const KINDS: Readonly<Record<string, (path: string) => Promise<Report>>> = {
   run: async (path) => (await import('./report-run.ts')).runReport(path),
+  window: async (path) => (await import('./report-window.ts')).windowReport(path),
 };
 
 /** Makes one self-contained page of a result file, and its figures as files if asked for.

@@ -20,7 +20,7 @@ type Stretch = WindowOfYield['windows'][number];
 
 const LABELS = 28;
 /** columns of the windows: time, state, hold-off voltage, lag */
-const WINDOWS = [28, 16, 16];
+const WINDOWS = [28, 16, 18];
 /** columns of the history: time, pressure, supply, hold-off, state */
 const HISTORY = [14, 14, 14, 14];
 const MOST_ROWS = 14;
@@ -63,13 +63,14 @@ function verdictLines(outcome: WindowOutcome, { style, width }: Terminal): strin
   const { word, text } = verdictOf(outcome);
   const spread = spreadText(outcome);
   const paint = word === 'Breaks down' ? style.alarm : word === 'Holds' ? style.strong : style.doubt;
-  if (spread !== null)
-    return [...wrap(spread, width).map(style.doubt), ...wrap(`At the typical yield: ${word.toLowerCase()}, ${text}`, width)];
-  const [first, ...rest] = wrap(text, width, `${word}: `, '');
-  return [paint(`${word}:`) + [...first].slice(lengthOf(word) + 1).join(''), ...rest];
+  const opening = `${word}${spread === null ? '' : ' at the typical yield'}:`;
+  const [first, ...rest] = wrap(text, width, `${opening} `, '');
+  // the opening holds no part that wrapping could have broken
+  const verdict = [paint(opening) + [...first].slice(lengthOf(opening)).join(''), ...rest];
+  return spread === null ? verdict : [...wrap(spread, width).map(style.doubt), ...verdict];
 }
 
-function verdictOf(outcome: WindowOutcome): { readonly word: string; readonly text: string } {
+export function verdictOf(outcome: WindowOutcome): { readonly word: string; readonly text: string } {
   const { windows, margin, duration_s } = outcome;
   const of = (state: State): Stretch[] => windows.filter((w) => w.state === state && !w.below_paschen_minimum);
   const supply = supplyText(outcome);
@@ -89,7 +90,7 @@ function verdictOf(outcome: WindowOutcome): { readonly word: string; readonly te
       word: 'Marginal',
       text: `${supply} the gap holds throughout, but not with the margin of ${margin}, or not at every yield, ${at(marginal)}.`,
     };
-  return { word: 'Holds', text: `${supply} the gap holds with the margin of ${margin} throughout, ${clock(duration_s, duration_s)}.` };
+  return { word: 'Holds', text: `${supply} the gap holds with the margin of ${margin} throughout, ${clock(duration_s)}.` };
 }
 
 function supplyText({ history }: WindowOutcome): string {
@@ -99,7 +100,7 @@ function supplyText({ history }: WindowOutcome): string {
 }
 
 /** The verdict at either end of the yields, if it is not the same everywhere. */
-function spreadText(outcome: WindowOutcome): string | null {
+export function spreadText(outcome: WindowOutcome): string | null {
   const { yield_spread: spread, duration_s } = outcome;
   if (spread === null) return null;
   const broken = ({ windows }: WindowOfYield): Stretch[] => windows.filter(({ state }) => state === 'breaks-down');
@@ -111,11 +112,11 @@ function spreadText(outcome: WindowOutcome): string | null {
   return `Depends on the ion yield, known only between ${low.ion_yield} and ${high.ion_yield}: at ${high.ion_yield} ${say(high)}, at ${low.ion_yield} ${say(low)}.`;
 }
 
-function turnOnText({ earliest_turn_on_s: earliest, latest_turn_on_s: latest, duration_s, margin }: WindowOutcome): string {
+export function turnOnText({ earliest_turn_on_s: earliest, latest_turn_on_s: latest, margin }: WindowOutcome): string {
   const start = `Turn-on holds with the margin of ${margin}`;
   if (earliest === 0) return `${start} at any time.`;
-  const from = earliest === null ? null : `from ${clock(earliest, duration_s, 'up')} on`;
-  const until = latest === null ? null : `until ${clock(latest, duration_s, 'down')}, if switched off by then`;
+  const from = earliest === null ? null : `from ${clock(earliest, 'up')} on`;
+  const until = latest === null ? null : `until ${clock(latest, 'down')}, if switched off by then`;
   if (from !== null) return until === null ? `${start} ${from}, not from the start.` : `${start} ${from}, and from the start ${until}.`;
   return until === null
     ? `Turn-on holds with the margin of ${margin} neither from the start nor from any later time to the end.`
@@ -129,18 +130,17 @@ function stretchesText(stretches: readonly Stretch[], duration: number): string 
 }
 
 function stretchText({ from_s, to_s }: Stretch, duration: number): string {
-  const [from, to] = [clock(from_s, duration, 'down'), clock(to_s, duration, 'up')];
+  const [from, to] = [clock(from_s, 'down'), clock(to_s, 'up')];
   if (from_s === 0 && to_s === duration) return 'throughout';
   if (from_s === 0) return `from the start to ${to}`;
   return to_s === duration ? `from ${from} to the end` : `from ${from} to ${to}`;
 }
 
-function windowLines(outcome: WindowOutcome, { style, width }: Terminal): string[] {
-  const { windows, duration_s } = outcome;
+function windowLines({ windows }: WindowOutcome, { style, width }: Terminal): string[] {
   if (windows.length === 0) return [];
   const rows = windows.slice(0, MOST_WINDOWS).map((w) => {
     const word = w.below_paschen_minimum ? 'below minimum' : WORDS[w.state];
-    const times = `${clock(w.from_s, duration_s, 'down')} to ${clock(w.to_s, duration_s, 'up')}`.replaceAll(' ', NO_BREAK);
+    const times = `${clock(w.from_s, 'down')} to ${clock(w.to_s, 'up')}`.replaceAll(' ', NO_BREAK);
     return [`  ${times}`, word, quantity(w.lowest_hold_off_V, 'V'), quantity(w.shortest_lag_s, 's')];
   });
   const more = windows.length - rows.length;
@@ -153,21 +153,20 @@ function windowLines(outcome: WindowOutcome, { style, width }: Terminal): string
 
 function factLines(outcome: WindowOutcome, width: number): string[] {
   const { duration_s, lowest_hold_off: lowest, worst, yield_spread: spread } = outcome;
-  const when = (seconds: number): string => clock(seconds, duration_s);
   const rows: (readonly [string, string])[] = [
-    ['earliest turn-on', turnOn(outcome.earliest_turn_on_s, duration_s, 'up', 'none that holds to the end')],
-    ['latest turn-on', turnOn(outcome.latest_turn_on_s, duration_s, 'down', 'none: it does not hold from the start')],
+    ['earliest turn-on', earliestText(outcome, 'none that holds to the end')],
+    ['latest turn-on', latestText(outcome, 'none: it does not hold from the start')],
     [
       'lowest hold-off voltage',
       lowest === null
         ? 'none inside the model'
-        : `${quantity(lowest.voltage_V, 'V')} at ${when(lowest.time_s)}, ${pressure(lowest.pressure_Pa)}`,
+        : `${quantity(lowest.voltage_V, 'V')} at ${clock(lowest.time_s)}, ${pressure(lowest.pressure_Pa)}`,
     ],
   ];
   if (worst !== null) {
     const lag = worst.lag_s === null ? '' : `, breaks down in ${quantity(worst.lag_s, 's')}`;
     const share = quantity(Math.abs(worst.supply_V) / worst.hold_off_V, '');
-    rows.push(['worst instant', `${when(worst.time_s)}: ${quantity(worst.supply_V, 'V')}, ${share} of the hold-off voltage${lag}`]);
+    rows.push(['worst instant', `${clock(worst.time_s)}: ${quantity(worst.supply_V, 'V')}, ${share} of the hold-off voltage${lag}`]);
   }
   if (spread !== null) {
     for (const end of [spread.low, spread.high]) rows.push([`at an ion yield of ${end.ion_yield}`, endText(end, duration_s)]);
@@ -179,21 +178,25 @@ function factLines(outcome: WindowOutcome, width: number): string[] {
   );
 }
 
-function turnOn(seconds: number | null, duration: number, rounding: 'up' | 'down', none: string): string {
-  return seconds === null ? none : clock(seconds, duration, rounding);
+function earliestText({ earliest_turn_on_s: seconds }: WindowOfYield, none: string): string {
+  if (seconds === null) return none;
+  return seconds === 0 ? 'from the start on' : clock(seconds, 'up');
+}
+
+function latestText({ earliest_turn_on_s: earliest, latest_turn_on_s: seconds }: WindowOfYield, none: string): string {
+  if (seconds === null) return none;
+  return earliest === 0 ? 'the end' : clock(seconds, 'down');
 }
 
 function endText(end: WindowOfYield, duration: number): string {
   const broken = end.windows.filter(({ state }) => state === 'breaks-down');
   const lowest = end.lowest_hold_off === null ? '' : `, holds ${quantity(end.lowest_hold_off.voltage_V, 'V')} at worst`;
   const what = broken.length > 0 ? `breaks down ${stretchesText(broken, duration)}` : 'no breakdown';
-  const earliest = turnOn(end.earliest_turn_on_s, duration, 'up', 'none');
-  const latest = turnOn(end.latest_turn_on_s, duration, 'down', 'none');
-  return `${what}${lowest}; earliest turn-on ${earliest}, latest ${latest}`;
+  return `${what}${lowest}; earliest turn-on ${earliestText(end, 'none')}, latest ${latestText(end, 'none')}`;
 }
 
 /** A table of the history: its ends, where the state changes, the lowest hold-off voltage, the worst instant, and some in between. */
-function historyLines({ history, lowest_hold_off, worst, duration_s }: WindowOutcome, { style, width }: Terminal): string[] {
+function historyLines({ history, lowest_hold_off, worst }: WindowOutcome, { style, width }: Terminal): string[] {
   const last = history.length - 1;
   const at = (seconds: number | undefined): number[] => {
     const index = history.findIndex(({ time_s }) => time_s === seconds);
@@ -207,13 +210,7 @@ function historyLines({ history, lowest_hold_off, worst, duration_s }: WindowOut
     .sort((a, b) => a - b)
     .map((i) => {
       const { time_s, pressure_Pa, supply_V, hold_off_V, state } = history[i];
-      return [
-        `  ${clock(time_s, duration_s)}`,
-        quantity(pressure_Pa, 'Pa'),
-        quantity(supply_V, 'V'),
-        quantity(hold_off_V, 'V'),
-        WORDS[state],
-      ];
+      return [`  ${clock(time_s)}`, quantity(pressure_Pa, 'Pa'), quantity(supply_V, 'V'), quantity(hold_off_V, 'V'), WORDS[state]];
     });
   return [
     ...columns([['History', 'pressure', 'supply', 'hold-off', 'state']], HISTORY, width).map(style.strong),

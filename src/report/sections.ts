@@ -46,6 +46,38 @@ export function cautionSection(cautions: readonly Caution[]): Element {
   );
 }
 
+/** Every value of the case, and the model that it was given to. */
+export function assumptionSection(
+  assumptions: readonly (readonly [label: string, value: string])[],
+  remarks: readonly string[],
+  also = '',
+): Element {
+  const rows = assumptions.map(([label, value]) => el('tr', {}, el('th', { scope: 'row' }, label), el('td', {}, value)));
+  return el(
+    'section',
+    { id: 'assumptions' },
+    el('h2', {}, 'What was assumed'),
+    also === '' ? null : el('p', {}, also),
+    rows.length === 0
+      ? el('p', {}, 'This version of the program cannot resolve the case of this file; its text is below.')
+      : el('table', { class: 'narrow' }, el('tbody', {}, rows)),
+    remarks.length === 0
+      ? null
+      : el(
+          'ul',
+          {},
+          remarks.map((note) => el('li', {}, note)),
+        ),
+    el(
+      'p',
+      {},
+      'The model: one dimension between bare, parallel electrodes; electrons, positive ions and, in attaching gases, negative ions drift, diffuse and ',
+      'multiply with coefficients of the local field; space charge and the supply act back through Gauss’s law and the circuit. Insulators, edges, ',
+      'photons, metastables and the heating of the gas are outside it unless a row above says otherwise.',
+    ),
+  );
+}
+
 export interface TableFile {
   readonly file: string;
   readonly text: string;

@@ -5,6 +5,9 @@ export interface Theme {
   readonly faint: string;
   readonly grid: string;
   readonly mark: string;
+  /** areas: what breaks down, what is marginal */
+  readonly alarm: string;
+  readonly doubt: string;
   /** colours of curves; dashes tell them apart as well */
   readonly series: readonly [string, string, string, string];
 }
@@ -15,6 +18,8 @@ export const LIGHT: Theme = {
   faint: '#566273',
   grid: '#dfe3e8',
   mark: '#7d3a52',
+  alarm: '#c0392b',
+  doubt: '#d9a406',
   series: ['#0a5a8c', '#b3500c', '#3f4a57', '#8e2f74'],
 };
 
@@ -24,6 +29,8 @@ export const DARK: Theme = {
   faint: '#a5b1bf',
   grid: '#2b3643',
   mark: '#f0a3bb',
+  alarm: '#ff7b6b',
+  doubt: '#f2c53d',
   series: ['#74c4f0', '#f3a95f', '#c6ced8', '#e59bd2'],
 };
 
@@ -52,7 +59,16 @@ export function figureStyle(theme: Theme, within = ''): string {
     ...theme.series.map((colour, i) =>
       rule(`.figure .s${i + 1}`, `stroke:${colour};stroke-width:${WIDTHS[i]}${DASHES[i] === '' ? '' : `;stroke-dasharray:${DASHES[i]}`}`),
     ),
+    rule('.figure .rings', 'fill:none;stroke-width:1.6;stroke-dasharray:none'),
     rule('.figure .band', `fill:${theme.series[0]};opacity:0.18`),
+    rule('.figure .fill-alarm', `fill:${theme.alarm};opacity:0.28`),
+    rule('.figure .fill-doubt', `fill:${theme.doubt};opacity:0.28`),
+    rule('.figure .hatch', `stroke:${theme.faint};stroke-width:1.2;fill:none;opacity:0.8`),
+    rule('.figure .fill-beyond', `fill:none;stroke:${theme.faint};stroke-dasharray:2 2`),
+    rule('.figure .dot', `fill:${theme.series[0]};stroke:${theme.ground};stroke-width:1`),
+    rule('.figure .dot-alarm', `fill:${theme.alarm}`),
+    rule('.figure .dot-doubt', `fill:${theme.doubt}`),
+    rule('.figure .dot-beyond', `fill:${theme.ground};stroke:${theme.faint};stroke-width:1.5`),
     rule('.figure .now', `stroke:${theme.ink};stroke-width:1.5;fill:none`),
     rule('.figure .point', `fill:${theme.ground};stroke:${theme.mark};stroke-width:1.8`),
   ].join('\n');

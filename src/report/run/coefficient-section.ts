@@ -2,13 +2,12 @@ import { TOWNSEND } from '../../units/constants.ts';
 import { formatQuantity } from '../../units/index.ts';
 import { type Element, el } from '../element.ts';
 import { percent } from './key-numbers.ts';
-import type { CoefficientUsed, RunReport } from './report.ts';
+import type { CoefficientsUsed, CoefficientUsed, RunReport } from './report.ts';
 import { type Visited, visited } from './visited.ts';
 
 /** The table of coefficients: what, from where, where it holds, where the run used it. */
-export function coefficientSection(run: RunReport): Element {
-  const { coefficients } = run;
-  const rows = coefficients.entries.map((entry) => row(entry, visited(entry.name, entry.range, run)));
+export function coefficientSection(coefficients: CoefficientsUsed, run: RunReport | null): Element {
+  const rows = coefficients.entries.map((entry) => row(entry, run === null ? undefined : visited(entry.name, entry.range, run)));
   return el(
     'section',
     { id: 'coefficients' },
@@ -27,19 +26,23 @@ export function coefficientSection(run: RunReport): Element {
       el(
         'table',
         { class: 'stack' },
-        el(
-          'caption',
-          {},
-          'Use is weighed by ionisation for ionisation and by moving particles for the rest. In the strips, from 0.1 Td to 100 kTd on a logarithmic scale, the pale bar is the range ',
-          'of the data and the dark one the fields at which the run used them.',
-        ),
+        run === null
+          ? null
+          : el(
+              'caption',
+              {},
+              'Use is weighed by ionisation for ionisation and by moving particles for the rest. In the strips, from 0.1 Td to 100 kTd on a logarithmic scale, the pale bar is the range ',
+              'of the data and the dark one the fields at which the run used them.',
+            ),
         el(
           'thead',
           {},
           el(
             'tr',
             {},
-            ['Coefficient', 'Value', 'Source', 'Range of the data', 'Used by this run'].map((name) => el('th', { scope: 'col' }, name)),
+            ['Coefficient', 'Value', 'Source', 'Range of the data', ...(run === null ? [] : ['Used by this run'])].map((name) =>
+              el('th', { scope: 'col' }, name),
+            ),
           ),
         ),
         el('tbody', {}, rows),
@@ -58,7 +61,8 @@ export function coefficientSection(run: RunReport): Element {
   );
 }
 
-function row(entry: CoefficientUsed, use: Visited | null): Element {
+/** @param use  null: not used or not known; undefined: not asked for */
+function row(entry: CoefficientUsed, use: Visited | null | undefined): Element {
   const uncertainty = entry.uncertainty === null ? 'uncertainty not stated' : `± ${percent(entry.uncertainty, false)}`;
   return el(
     'tr',
@@ -73,7 +77,7 @@ function row(entry: CoefficientUsed, use: Visited | null): Element {
       entry.note === null ? null : el('div', { class: 'faint' }, entry.note),
     ),
     el('td', { 'data-label': 'range' }, entry.range === null ? 'none stated' : rangeText(entry.range)),
-    el('td', { 'data-label': 'used' }, use === null ? '–' : [strip(entry, use), usedText(entry, use)]),
+    use === undefined ? null : el('td', { 'data-label': 'used' }, use === null ? '–' : [strip(entry, use), usedText(entry, use)]),
   );
 }
 

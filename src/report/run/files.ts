@@ -1,30 +1,12 @@
-import { el, markup } from '../element.ts';
-import type { Figure } from '../figure/frame.ts';
-import { figureStyle, LIGHT } from '../figure/style.ts';
 import { nearest } from '../nearest.ts';
 import { pngAddress } from '../png.ts';
+import { type FigureFile, svgFile } from '../svg-file.ts';
 import { FIELDS, type RunSeries, SCALARS } from './data.ts';
 import { eventsOf } from './events.ts';
 import { PROFILES, pathFigure, profileFigure, timeFigure, timeFigureNames } from './figures.ts';
 import { settingOf } from './page.ts';
 import type { RunReport } from './report.ts';
 import { timeScale } from './time-axis.ts';
-
-/** A figure as the text of an SVG file. */
-export interface FigureFile {
-  /** without ending */
-  readonly name: string;
-  readonly svg: string;
-}
-
-/** One figure as a file of its own: light, on paper, in a font that converters have. */
-export function svgFile({ root }: Figure): string {
-  const style = `.figure text{font-family:'DejaVu Sans',sans-serif}\n${figureStyle(LIGHT)}`;
-  const paper = el('rect', { width: '100%', height: '100%', fill: '#ffffff' });
-  const [title, description, ...rest] = root.children;
-  const children = [title, description, el('style', {}, style), paper, ...rest];
-  return `<?xml version="1.0" encoding="UTF-8"?>\n${markup({ ...root, children })}\n`;
-}
 
 /** [px] */
 const WIDTH = { time: 900, now: 520 };

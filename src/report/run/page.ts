@@ -4,7 +4,7 @@ import { type Element, el } from '../element.ts';
 import { linkedSection } from '../linked-section.ts';
 import { packEven, packExact, packLog } from '../pack.ts';
 import type { Packed } from '../packed.ts';
-import { cautionSection, footer, provenance, type TableFile, together } from '../sections.ts';
+import { assumptionSection, cautionSection, footer, provenance, type TableFile, together } from '../sections.ts';
 import { coefficientSection } from './coefficient-section.ts';
 import { FIELDS, type RunEvent, type RunField, type RunScalar, type RunSetting, SCALARS } from './data.ts';
 import { eventsOf } from './events.ts';
@@ -33,7 +33,15 @@ export function runPage(run: RunReport, script: string): string {
     body: [
       el('a', { class: 'skip', href: '#figures' }, 'Skip to the figures'),
       header(run),
-      el('main', {}, summary(run), figures(run), assumptions(run), coefficientSection(run), evidence(run)),
+      el(
+        'main',
+        {},
+        summary(run),
+        figures(run),
+        assumptionSection(run.assumptions, run.remarks),
+        coefficientSection(run.coefficients, run),
+        evidence(run),
+      ),
       footer(run.reportVersion),
     ],
     data: pageData(run),
@@ -132,34 +140,6 @@ function figures(run: RunReport): Element {
     moments: run.time.length,
     axes: TIME_AXES,
   });
-}
-
-function assumptions(run: RunReport): Element {
-  const rows = run.assumptions.map(([label, value]) => el('tr', {}, el('th', { scope: 'row' }, label), el('td', {}, value)));
-  return el(
-    'section',
-    { id: 'assumptions' },
-    el('h2', {}, 'What was assumed'),
-    rows.length === 0
-      ? el('p', {}, 'This version of the program cannot resolve the case of this file; its text is below.')
-      : el('table', { class: 'narrow' }, el('tbody', {}, rows)),
-    ...(run.remarks.length === 0
-      ? []
-      : [
-          el(
-            'ul',
-            {},
-            run.remarks.map((note) => el('li', {}, note)),
-          ),
-        ]),
-    el(
-      'p',
-      {},
-      'The model: one dimension between bare, parallel electrodes; electrons, positive ions and, in attaching gases, negative ions drift, diffuse and multiply with ',
-      'coefficients of the local field; space charge and the supply act back through Gauss’s law and the circuit. Insulators, edges, photons, ',
-      'metastables and the heating of the gas are outside it unless a row above says otherwise.',
-    ),
-  );
 }
 
 function evidence(run: RunReport): Element {

@@ -1,5 +1,6 @@
 import { formatQuantity } from '../../units/index.ts';
-import { logarithmic, type Scale, type Tick } from '../figure/scale.ts';
+import type { Scale, Tick } from '../figure/scale.ts';
+import { logTime } from '../log-time.ts';
 import type { RunSeries } from './data.ts';
 
 /** The ways to lay out time, which runs over six and more decades in one run. */
@@ -68,28 +69,8 @@ function activityScale({ time, scalars }: RunSeries): TimeScale {
 /** A little room for what comes before the threshold, and decades of time after it. */
 function logScale({ time, events }: RunSeries): TimeScale {
   const threshold = events.find(({ name }) => name === 'threshold')?.time ?? null;
-  const origin = threshold ?? time[0];
-  const last = time[time.length - 1];
-  const span = last - origin;
-  const first = time.find((t) => t > origin) ?? last;
-  const least = 10 ** Math.ceil(Math.log10(Math.max(first - origin, span * 1e-7, 1e-15)) - 1e-9);
-  const start = Math.min(least, span / 10);
-  const before = origin > time[0] ? 0.14 : 0.04;
-  const decades = Math.log10(span / start);
-  const at = (t: number): number => {
-    const since = t - origin;
-    if (since > start) return before + (1 - before) * (Math.log10(since / start) / decades);
-    return before * ((t - time[0]) / (origin + start - time[0]));
-  };
-  const from = (share: number): number =>
-    share > before
-      ? origin + start * 10 ** (((share - before) / (1 - before)) * decades)
-      : time[0] + (share / before) * (origin + start - time[0]);
-  const title = threshold === null ? 'Time after turn-on [s], log' : `Time after the threshold at ${formatQuantity(threshold, 's')}, log`;
-  return (length) => {
-    const after = logarithmic('', 's', start, span, { length: length * (1 - before), apart: 60 });
-    return { at, from, ticks: after.ticks.map((tick) => ({ ...tick, at: before + (1 - before) * tick.at })), title };
-  };
+  const title = threshold === null ? 'Time after turn-on, log' : `Time after the threshold at ${formatQuantity(threshold, 's')}, log`;
+  return logTime(time, threshold ?? time[0], title);
 }
 
 function evenScale({ time }: RunSeries): TimeScale {
