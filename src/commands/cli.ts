@@ -141,7 +141,7 @@ function programOf(terminal: Terminal, done: (exitCode: number) => void): Comman
     )
     .addOption(shardOption().conflicts(['gather']))
     .addOption(new Option('--gather <files.h5...>', 'join the files of all shards into the result').conflicts(['plan']))
-    .option('--restart', 'delete what is unfinished or finished, and start anew')
+    .option('--restart', 'forget what was computed, finished or not, and start anew')
     .helpOption('-h, --help', 'print this help')
     .action(async (path: string, options: ScanOptions) => {
       const { scan } = await import('./scan.ts');
@@ -161,7 +161,7 @@ function programOf(terminal: Terminal, done: (exitCode: number) => void): Comman
       new Option('--expect <verdict>', 'exit with 1 unless there is no window of breakdown, or is one').choices(['holds', 'breaks-down']),
     )
     .addOption(workersOption())
-    .option('--restart', 'delete what is unfinished or finished, and start anew')
+    .option('--restart', 'forget what was computed, finished or not, and start anew')
     .helpOption('-h, --help', 'print this help')
     .action(async (path: string, options: WindowOptions) => {
       const { window } = await import('./window.ts');
