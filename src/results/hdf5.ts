@@ -26,7 +26,7 @@ export interface Hdf5Writer {
   append(name: string, rows: Float64Array | Float32Array): void;
   /** Text of any length. Ends at a NUL, which the format cannot hold. */
   text(name: string, text: string): void;
-  /** Bytes, compressed as one chunk: `group/name`, at most 2^22 of them. */
+  /** Bytes as they are, in one piece; `group/name` makes the group. */
   bytes(name: string, bytes: Uint8Array): void;
   /** Hands everything to the operating system. */
   flush(): void;
@@ -173,7 +173,7 @@ function writerOn(file: File): Hdf5Writer {
           file.create_group(group);
           groups.add(group);
         }
-        file.create_dataset({ name, data: bytes, chunks: [bytes.length], compression: 'gzip', compression_opts: 4 });
+        file.create_dataset({ name, data: bytes });
       }),
 
     flush: () => guarded(() => file.flush()),

@@ -1,3 +1,4 @@
+import { gunzipSync } from 'node:zlib';
 import { ResultFileError } from './errors.ts';
 import type { GridValues } from './hdf5.ts';
 import { type Hdf5Reader, openHdf5 } from './hdf5-reader.ts';
@@ -47,8 +48,7 @@ export function readScanFile(path: string): ScanFile {
 
   const lines = function* (): Generator<string> {
     for (const page of file.members(pointsGroup)) {
-      const text = Buffer.from(file.bytes(`${pointsGroup}/${page}`)).toString();
-      for (const line of text.split('\n')) if (line !== '') yield line;
+      for (const line of pageOf(path, file, page).split('\n')) if (line !== '') yield line;
     }
   };
   return {
@@ -80,6 +80,19 @@ export function readScanFile(path: string): ScanFile {
 export function columnOf(file: Hdf5Reader, { kind, name }: Headline, shape: readonly number[]): GridValues {
   if (kind === 'number') return file.float64(name, shape);
   return kind === 'flag' ? file.int8(name, shape) : file.int32(name, shape);
+}
+
+/** longest text of a page, whatever its compressed bytes declare */
+const longestPage = 2 ** 26;
+
+/** Lines of JSON, a point each. @throws ResultFileError */
+export function pageOf(path: string, file: Hdf5Reader, page: string): string {
+  const bytes = file.bytes(`${pointsGroup}/${page}`);
+  try {
+    return gunzipSync(bytes, { maxOutputLength: longestPage }).toString();
+  } catch {
+    throw new ResultFileError('damaged', path, `the file is damaged: the points ${page} cannot be decompressed`);
+  }
 }
 
 type Damaged = (what: string) => ResultFileError;

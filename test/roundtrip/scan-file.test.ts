@@ -118,6 +118,11 @@ describe('a scan file', () => {
       truncateSync(path, length);
       expect(() => readScanFile(path), `${length} bytes`).toThrow(expect.objectContaining({ name: 'ResultFileError' }) as Error);
     }
+    const page = bytes.indexOf(Buffer.from([0x1f, 0x8b, 0x08]));
+    const flipped = Buffer.from(bytes);
+    flipped[page + 40] = (flipped[page + 40] as number) ^ 1;
+    writeFileSync(path, flipped);
+    expect(() => [...readScanFile(path).lines()]).toThrow(error('damaged', /the points 000000 cannot be decompressed/));
     const plan = bytes.indexOf('"layout":"grid"');
     for (const text of ['"layout":"gridd', '"layout":7     ']) {
       const changed = Buffer.from(bytes);
