@@ -29,9 +29,21 @@ export function windowCautions(settings: Case, answer: WindowAnswer, defaults: r
   return withDefaults(list, settings, defaults);
 }
 
-function cautionsAt(settings: Case, { pressure, temperature, supply }: FollowedInstant): Caution[] {
-  const there = atSurroundings(settings, pressure, temperature);
-  return cautionsOf(there, supply, predict(there, supply), prospects(there, supply), null);
+/** What is said of the gas belongs to the path that breaks down, what is said of the hardware to the gap itself. */
+const OF_PATH: ReadonlySet<CautionCode> = new Set([
+  'yield-spread',
+  'few-electrons',
+  'outside-range',
+  'collisionless',
+  'double-valued',
+  'streamer',
+]);
+
+function cautionsAt(settings: Case, { pressure, temperature, supply, path }: FollowedInstant): Caution[] {
+  const gap = atSurroundings(settings, pressure, temperature);
+  const along = path === null ? gap : { ...gap, gap: { ...gap.gap, spacing: path, longestPath: path } };
+  const of = (each: Case): Caution[] => cautionsOf(each, supply, predict(each, supply), prospects(each, supply), null);
+  return [...of(gap).filter(({ code }) => !OF_PATH.has(code)), ...of(along).filter(({ code }) => OF_PATH.has(code))];
 }
 
 function isClearance({ code }: Caution): boolean {

@@ -16,6 +16,8 @@ import { earliestTurnOn, type JudgedInstant, latestTurnOn, lowestHoldOff, type W
 export interface FollowedInstant extends JudgedInstant {
   /** at the high end of the yields [V]: simulated where it decides, else expected; null where the model says nothing or nothing is spread */
   readonly holdOffAtHighYield: number | null;
+  /** the path of the lowest breakdown voltage [m]; null where none breaks down */
+  readonly path: number | null;
   /** why the model says nothing or a simulation gave no answer; null where neither is so */
   readonly note: string | null;
 }
@@ -280,6 +282,7 @@ class Search {
         supply: voltage,
         holdOff: this.#holdOff(end, instant),
         holdOffAtHighYield: end === 'typical' && this.#spread ? this.#holdOff('high', instant) : null,
+        path: curve.theory.at(instant.density)?.path ?? null,
         judgement: this.#judge(end, instant),
         lag: end === 'typical' ? (this.#lags.get(time) ?? null) : null,
         note: curve.failureAt(instant.density) ?? curve.beyond(instant.density),

@@ -45,25 +45,35 @@ function holdOffOf(gap: Case, request: HoldOffRequest, simulate: Simulate): Hold
     runs += made;
     return unsettled(outcome) ? { ...outcome, verdict: { ...outcome.verdict, state: 'breaks-down' } } : outcome;
   };
-  const near = walk(request, (voltage) => decided(scaled(gap, voltage)).verdict.state === 'holds');
+  let silent: string | null = null;
+  const near = walk(request, (voltage) => {
+    const { verdict, final } = decided(scaled(gap, voltage));
+    // where even a run just below the threshold ends by itself without an answer, the solver is at its end: searching on would take long and tell nothing
+    if (verdict.state === 'undecided' && final.stop !== 'until' && voltage < expected) silent = verdict.reason;
+    return silent === null ? verdict.state === 'holds' : null;
+  });
   if (near !== null) return { kind: 'hold-off', ...near, note: null, runs };
+  if (silent !== null) return { kind: 'hold-off', lower: null, upper: null, note: silent, runs };
   const until = timeFor(gap, polarity * expected);
   const range = { from: RANGE.from * expected, to: RANGE.to * expected, tolerance: HOLD_OFF_TOLERANCE };
   const { lower, upper, note } = holdOff({ ...gap, observe: { ...gap.observe, until } }, range, decided);
   return { kind: 'hold-off', lower, upper, note, runs };
 }
 
-/** Walks outwards from the expected stretch until its lower end holds and its upper end does not, then halves it; null when that is too far. */
+/** Walks outwards from the expected stretch until its lower end holds and its upper end does not, then halves it; null when that is too far or
+ *  below the expectation nothing is answered. */
 function walk(
   { expected, spread }: HoldOffRequest,
-  holds: (voltage: number) => boolean,
+  holds: (voltage: number) => boolean | null,
 ): { readonly lower: number; readonly upper: number } | null {
   const at = (log: number): number => expected * Math.exp(log);
   let lower = -spread / 2;
   let upper = spread / 2;
   let reached = false;
-  for (let step = spread; !holds(at(lower)); lower -= step, step *= 2) {
-    if (lower < -FURTHEST_WALK) return null;
+  for (let step = spread; ; lower -= step, step *= 2) {
+    const there = holds(at(lower));
+    if (there === true) break;
+    if (there === null || lower < -FURTHEST_WALK) return null;
     upper = lower;
     reached = true;
   }
@@ -90,7 +100,8 @@ function inTime(
   let until = timeFor(gap, voltage);
   for (let runs = 1; ; runs++, until *= 5) {
     const outcome = simulate({ ...settings, observe: { ...settings.observe, until } });
-    if (enough(outcome) || runs > EXTENSIONS) return { outcome, runs };
+    // a run that ended by itself ends the same way however long it is given
+    if (enough(outcome) || outcome.final.stop !== 'until' || runs > EXTENSIONS) return { outcome, runs };
   }
 }
 
