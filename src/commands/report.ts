@@ -27,6 +27,7 @@ export interface Report {
 /** What kinds of result there are pages for, and the script of each. */
 const KINDS: Readonly<Record<string, (path: string) => Promise<Report>>> = {
   run: async (path) => (await import('./report-run.ts')).runReport(path),
+  scan: async (path) => (await import('./report-scan.ts')).scanReport(path),
   window: async (path) => (await import('./report-window.ts')).windowReport(path),
 };
 

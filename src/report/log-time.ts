@@ -5,8 +5,7 @@ export function logTime(time: Float64Array, origin: number, title: string): (len
   const last = time[time.length - 1];
   const span = last - origin > 0 ? last - origin : 1;
   const first = time.find((t) => t > origin) ?? last;
-  const least = 10 ** Math.ceil(Math.log10(Math.max(first - origin, span * 1e-7, 1e-15)) - 1e-9);
-  const start = Math.min(least, span / 10);
+  const start = Math.min(Math.max(first - origin, span * 1e-7, 1e-15), span / 10);
   const before = origin > time[0] ? 0.14 : 0.04;
   const decades = Math.log10(span / start);
   const at = (t: number): number => {

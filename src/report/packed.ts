@@ -3,10 +3,16 @@
 export type Packed =
   /** every digit kept */
   | { readonly kind: 'exact'; readonly length: number; readonly data: string }
+  /** seven digits kept */
+  | { readonly kind: 'single'; readonly length: number; readonly data: string }
+  /** texts, as JSON */
+  | { readonly kind: 'texts'; readonly data: string }
   /** quantised in `levels` even steps from `low` to `high` */
   | QuantisedHead<'even'>
   /** the same for the logarithm; level 0: at or below zero, or too small to matter */
   | QuantisedHead<'log'>;
+
+export type Quantised = QuantisedHead<'even'> | QuantisedHead<'log'>;
 
 interface QuantisedHead<Kind extends string> {
   readonly kind: Kind;
@@ -18,19 +24,28 @@ interface QuantisedHead<Kind extends string> {
   readonly data: string;
 }
 
-/** Doubles as bytes, first bytes first: those of neighbours are alike. */
-export function shuffled(values: Float64Array): Uint8Array {
+/** Numbers as bytes, first bytes first: those of neighbours are alike. */
+export function shuffled(values: Float64Array | Float32Array): Uint8Array {
+  const size = values.BYTES_PER_ELEMENT;
   const bytes = new Uint8Array(values.buffer, values.byteOffset, values.byteLength);
   const out = new Uint8Array(bytes.length);
-  for (let i = 0; i < values.length; i++) for (let b = 0; b < 8; b++) out[b * values.length + i] = bytes[8 * i + b];
+  for (let i = 0; i < values.length; i++) for (let b = 0; b < size; b++) out[b * values.length + i] = bytes[size * i + b];
   return out;
 }
 
 export function unshuffled(bytes: Uint8Array): Float64Array {
-  const n = bytes.length / 8;
+  return new Float64Array(inOrder(bytes, 8));
+}
+
+export function unshuffledSingle(bytes: Uint8Array): Float64Array {
+  return Float64Array.from(new Float32Array(inOrder(bytes, 4)));
+}
+
+function inOrder(bytes: Uint8Array, size: number): ArrayBuffer {
+  const n = bytes.length / size;
   const out = new Uint8Array(bytes.length);
-  for (let i = 0; i < n; i++) for (let b = 0; b < 8; b++) out[8 * i + b] = bytes[b * n + i];
-  return new Float64Array(out.buffer);
+  for (let i = 0; i < n; i++) for (let b = 0; b < size; b++) out[size * i + b] = bytes[b * n + i];
+  return out.buffer;
 }
 
 /** Differences of levels from the plane through the neighbours above and before, small numbers first, low bytes before high ones. */
@@ -66,7 +81,7 @@ function guess(levels: Uint16Array, i: number, columns: number): number {
 }
 
 /** The values that levels stand for. */
-export function valuesOf(packed: Exclude<Packed, { readonly kind: 'exact' }>, levels: Uint16Array): Float32Array {
+export function valuesOf(packed: Quantised, levels: Uint16Array): Float32Array {
   const { kind, low, high, levels: count } = packed;
   const out = new Float32Array(levels.length);
   if (kind === 'even') {

@@ -58,7 +58,7 @@ button[aria-pressed=true]{background:var(--accent);border-color:var(--accent);co
 .strip .visited{fill:var(--accent)}
 .strip .outside{fill:var(--alarm)}
 .badge{white-space:nowrap}
-.empty{min-height:210px}
+.points svg{cursor:pointer}.point{padding:8px 12px}.point h3{margin-top:0}label select{max-width:16em}
 footer{padding-top:1em;padding-bottom:3em;color:var(--faint);font-size:.88rem}
 .number{white-space:nowrap}
 @media (max-width:1050px){.bench{grid-template-columns:minmax(0,1fr)}.now-column{position:static;grid-template-columns:repeat(auto-fit,minmax(min(100%,340px),1fr))}}

@@ -5,7 +5,7 @@ import { type Rgb, SCALE } from '../../src/report/colour.ts';
 import { el, inlineJson, markup, visible } from '../../src/report/element.ts';
 import { linear, logarithmic, powerLabel } from '../../src/report/figure/scale.ts';
 import { packEven, packExact, packLog } from '../../src/report/pack.ts';
-import { type Packed, unpredicted, unshuffled, valuesOf } from '../../src/report/packed.ts';
+import { type Packed, type Quantised, unpredicted, unshuffled, valuesOf } from '../../src/report/packed.ts';
 import { pngAddress } from '../../src/report/png.ts';
 import type { RunSeries } from '../../src/report/run/data.ts';
 import { roundest, TIME_AXES, timeScale } from '../../src/report/run/time-axis.ts';
@@ -91,7 +91,7 @@ describe('texts from a file', () => {
 });
 
 describe('arrays in a page', () => {
-  const levelsOf = (packed: Exclude<Packed, { kind: 'exact' }>): Float32Array =>
+  const levelsOf = (packed: Quantised): Float32Array =>
     valuesOf(packed, unpredicted(inflateRawSync(Buffer.from(packed.data, 'base64')), packed.columns));
 
   test('numbers over time keep every digit', () => {

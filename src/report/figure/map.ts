@@ -1,6 +1,6 @@
 import { hex, type Rgb, SCALE } from '../colour.ts';
 import { type Element, el } from '../element.ts';
-import { boxOf, type Figure, type FrameSpec, frame } from './frame.ts';
+import { type Box, boxOf, type Figure, type FrameSpec, frame } from './frame.ts';
 import type { Scale } from './scale.ts';
 
 /** A picture of colour numbers, row by row from the top. */
@@ -19,28 +19,24 @@ export interface MapSpec extends FrameSpec {
   /** name and unit of what the colours mean */
   readonly heading: string;
   readonly yName: string;
-  /** value at a share of both axes; NaN: below the scale */
-  readonly valueAt: (x: number, y: number) => number;
+  /** number of the colour at a share of both axes */
+  readonly paint: (x: number, y: number) => number;
+  readonly palette: readonly Rgb[];
+  /** what stands at the right: the meaning of the colours */
+  readonly beside: (box: Box) => readonly (Element | null)[];
+  /** drawn over the picture, in the plot's pixels, clipped to it */
+  readonly over?: (box: Box, x: Scale, y: Scale) => readonly (Element | null)[];
 }
 
-/** A figure of a quantity over two axes, as colours, with its colour bar at the right. */
-export function mapFigure(
-  spec: MapSpec,
-  xScale: (length: number) => Scale,
-  yScale: (length: number) => Scale,
-  colourScale: (length: number) => Scale,
-  picture: Picture,
-): Figure {
+/** A figure of a quantity over two axes, as colours. */
+export function mapFigure(spec: MapSpec, xScale: (length: number) => Scale, yScale: (length: number) => Scale, picture: Picture): Figure {
   const box = boxOf(spec);
-  const [x, y, colour] = [xScale(box.width), yScale(box.height), colourScale(box.height)];
+  const [x, y] = [xScale(box.width), yScale(box.height)];
   const { width, height } = { width: Math.round(box.width), height: Math.round(box.height) };
   const pixels = new Uint8Array(width * height);
   for (let j = 0; j < height; j++)
-    for (let i = 0; i < width; i++) {
-      const share = colour.at(spec.valueAt((i + 0.5) / width, 1 - (j + 0.5) / height));
-      pixels[j * width + i] = share > 0 ? Math.min(255, Math.round(share * 255)) : 0;
-    }
-  const href = picture({ width, height, pixels, palette: SCALE });
+    for (let i = 0; i < width; i++) pixels[j * width + i] = spec.paint((i + 0.5) / width, 1 - (j + 0.5) / height);
+  const href = picture({ width, height, pixels, palette: spec.palette });
   const image = el('image', {
     x: box.left,
     y: box.top,
@@ -54,15 +50,14 @@ export function mapFigure(
     { class: 'name', transform: `translate(12 ${box.top + box.height / 2}) rotate(-90)`, 'text-anchor': 'middle' },
     spec.yName,
   );
-  return frame(
-    spec,
-    box,
-    x,
-    y,
-    spec.heading,
-    [image],
-    [yName, ...colourBar(spec.id, box.left + box.width + 10, box.top, box.height, colour)],
-  );
+  const over = spec.over?.(box, x, y) ?? [];
+  return frame(spec, box, x, y, spec.heading, [image, ...over], [yName, ...spec.beside(box)]);
+}
+
+/** The number of the colour of a value on a colour axis; 0 below it and for what is no number. */
+export function colourNumber(colour: Scale, value: number): number {
+  const share = colour.at(value);
+  return share > 0 ? Math.min(255, Math.round(share * 255)) : 0;
 }
 
 /** Colours with the values they stand for. */

@@ -35,7 +35,7 @@ const STEPS: readonly (readonly [prefix: string, factor: number])[] = [
   ['M', 1e6],
   ['G', 1e9],
 ];
-const WITH_PREFIX = new Set(['V', 'A', 'J', 's', 'm', 'V/cm', 'Pa', 'Td']);
+const WITH_PREFIX = new Set(['V', 'A', 'J', 's', 'm', 'V/cm', 'Pa', 'Td', 'ohm', 'F']);
 /** nobody writes kilo- or megaseconds, or megametres */
 const LARGEST: Readonly<Record<string, number>> = { s: 1, m: 1e3, Td: 1 };
 

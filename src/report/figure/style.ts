@@ -69,6 +69,7 @@ export function figureStyle(theme: Theme, within = ''): string {
     rule('.figure .dot-alarm', `fill:${theme.alarm}`),
     rule('.figure .dot-doubt', `fill:${theme.doubt}`),
     rule('.figure .dot-beyond', `fill:${theme.ground};stroke:${theme.faint};stroke-width:1.5`),
+    rule('.figure .level', `stroke:${theme.ink};stroke-width:1.3;fill:none`),
     rule('.figure .now', `stroke:${theme.ink};stroke-width:1.5;fill:none`),
     rule('.figure .point', `fill:${theme.ground};stroke:${theme.mark};stroke-width:1.8`),
   ].join('\n');

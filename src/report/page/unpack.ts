@@ -1,12 +1,17 @@
-import { type Packed, unpredicted, unshuffled, valuesOf } from '../packed.ts';
+import { type Packed, unpredicted, unshuffled, unshuffledSingle, valuesOf } from '../packed.ts';
 
 /** Arrays out of the page, in the browser. */
 export async function exact(packed: Packed): Promise<Float64Array> {
-  return unshuffled(await inflated(packed.data));
+  const bytes = await inflated(packed.data);
+  return packed.kind === 'single' ? unshuffledSingle(bytes) : unshuffled(bytes);
+}
+
+export async function texts(packed: Packed): Promise<string[]> {
+  return JSON.parse(new TextDecoder().decode(await inflated(packed.data))) as string[];
 }
 
 export async function field(packed: Packed): Promise<Float32Array> {
-  if (packed.kind === 'exact') return Float32Array.from(await exact(packed));
+  if (packed.kind !== 'even' && packed.kind !== 'log') return Float32Array.from(await exact(packed));
   return valuesOf(packed, unpredicted(await inflated(packed.data), packed.columns));
 }
 

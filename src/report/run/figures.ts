@@ -1,7 +1,8 @@
+import { SCALE } from '../colour.ts';
 import { el } from '../element.ts';
 import { type Box, type Figure, type Mark, round } from '../figure/frame.ts';
 import { type Curve, KEY_WIDTH, lineFigure, pathOf } from '../figure/lines.ts';
-import { mapFigure, type Picture } from '../figure/map.ts';
+import { colourBar, colourNumber, mapFigure, type Picture } from '../figure/map.ts';
 import { linear, logarithmic, type Scale } from '../figure/scale.ts';
 import { nearest } from '../nearest.ts';
 import type { Profiles, RunField, RunSeries } from './data.ts';
@@ -152,11 +153,20 @@ function map(name: MapName, run: RunSeries, layout: TimeLayout, picture: Picture
     const mean = (1 - i.share) * before + i.share * after;
     return factor * (signed ? Math.abs(mean) : Math.exp(mean));
   };
+  const colour = (length: number): Scale => logarithmic(label, unit, from, to, { length, apart: 20 }, false);
+  const colours = colour(HEIGHT.map);
   return mapFigure(
-    { ...spec, height: HEIGHT.map, heading: `${label} [${unit}]`, yName: 'Position [mm]', valueAt },
+    {
+      ...spec,
+      height: HEIGHT.map,
+      heading: `${label} [${unit}]`,
+      yName: 'Position [mm]',
+      paint: (sx, sy) => colourNumber(colours, valueAt(sx, sy)),
+      palette: SCALE,
+      beside: (box) => colourBar(name, box.left + box.width + 10, box.top, box.height, colour(box.height)),
+    },
     layout.scale,
     (length) => positionScale(setting.spacing, length, 22),
-    (length) => logarithmic(label, unit, from, to, { length, apart: 20 }, false),
     picture,
   );
 }
