@@ -70,7 +70,7 @@ export class Random {
     const layer = word & 255;
     const place = word >>> 8;
     const x = place * exponentialWidth[layer];
-    return place < exponentialInside[layer] ? x : this.#exponentialRest(layer, x);
+    return place < exponentialInside[layer] ? x : this.exponentialRest(layer, x);
   }
 
   /** Normally distributed with mean 0 and variance 1. Source as for {@link Random.exponential}. */
@@ -79,11 +79,12 @@ export class Random {
     const layer = word & 127;
     const place = word >> 8; // with its sign
     const x = place * normalWidth[layer];
-    return Math.abs(place) < normalInside[layer] ? x : this.#normalRest(layer, x);
+    return Math.abs(place) < normalInside[layer] ? x : this.normalRest(layer, x);
   }
 
-  /** one number in 90: what does not lie under the curve for certain; apart from the rest, which is short and fast */
-  #exponentialRest(layer: number, x: number): number {
+  /** What {@link Random.exponential} does with the one number in 90 that does not lie under the curve for certain. For inner loops that do the rest
+   *  themselves: a call that returns a number which is not whole allocates it. */
+  exponentialRest(layer: number, x: number): number {
     // beyond the last edge the distribution is the same again
     if (layer === 0) return exponentialLayers.edge + this.exponential();
     const { height } = exponentialLayers;
@@ -91,7 +92,8 @@ export class Random {
     return under ? x : this.exponential();
   }
 
-  #normalRest(layer: number, x: number): number {
+  /** As {@link Random.exponentialRest}, of {@link Random.normal}. */
+  normalRest(layer: number, x: number): number {
     if (layer === 0) return x < 0 ? -this.#normalTail() : this.#normalTail();
     const { height } = normalLayers;
     const under = height[layer] + this.uniform() * (height[layer - 1] - height[layer]) < Math.exp(-0.5 * x * x);
