@@ -8,7 +8,7 @@ const layers = [
   ['simulate'],
   ['onset'],
   ['march', 'observables', 'theory'],
-  ['laws', 'supply'],
+  ['laws', 'supply', 'kinetics'],
   ['gap'],
   ['gases', 'surfaces', 'surroundings'],
   ['numerics', 'units'],

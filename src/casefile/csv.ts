@@ -3,7 +3,8 @@ import { clip, DIMENSIONS, type DimensionName, expectation, nearestSpelling, sam
 const MAX_ROWS = 1_000_000;
 /** more mistakes than this in one table are one mistake made many times */
 const MAX_PROBLEMS = 20;
-const NUMBER = /^[+-]?(?:\d+\.?\d*|\.\d+)(?:[eE][+-]?\d+)?$/;
+/** a number as a table may hold it */
+export const NUMBER: RegExp = /^[+-]?(?:\d+\.?\d*|\.\d+)(?:[eE][+-]?\d+)?$/;
 
 /** A column that a case asks for: its name in the case, its header in the file, and what it may hold. */
 export interface ColumnRequest {
@@ -142,14 +143,14 @@ export function readCsv(text: string, requests: readonly ColumnRequest[]): CsvRe
   return problems.length > 0 ? fail() : { ok: true, columns: columns.map(({ values, dimension }) => ({ values, dimension })) };
 }
 
-interface Field {
+export interface Field {
   readonly text: string;
   /** 1-based */
   readonly column: number;
 }
 
 /** The lines that carry data, with their numbers; comments and blank lines left out. */
-function* dataLines(text: string): Generator<{ readonly line: number; readonly text: string }, undefined> {
+export function* dataLines(text: string): Generator<{ readonly line: number; readonly text: string }, undefined> {
   let start = 0;
   for (let line = 1; start < text.length; line++) {
     const newline = text.indexOf('\n', start);
@@ -173,7 +174,7 @@ function withoutComment(line: string): string {
 }
 
 /** Fields between commas, trimmed; a field in double quotes may hold commas, and "" for a quote. */
-function splitFields(line: string): Field[] {
+export function splitFields(line: string): Field[] {
   const fields: Field[] = [];
   let start = 0;
   let quoted = false;
@@ -190,7 +191,7 @@ function splitFields(line: string): Field[] {
   return fields;
 }
 
-function readHeader(text: string): { name: string; unit: string | null } {
+export function readHeader(text: string): { name: string; unit: string | null } {
   const match = /^(.*?)\s*\[([^[\]]*)\]$/.exec(text);
   return match ? { name: match[1], unit: match[2] } : { name: text, unit: null };
 }
