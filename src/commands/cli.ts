@@ -170,7 +170,7 @@ function programOf(terminal: Terminal, done: (exitCode: number) => void): Comman
 
   program
     .command('report')
-    .argument('<file.h5>', 'result of a run or a window')
+    .argument('<file.h5>', 'result of a run, a scan or a window')
     .description('one self-contained page with figures from a result file; needs no network')
     .option('-o, --output <file.html>', 'the page (default: beside the result); replaces an older page, nothing else')
     .option('--figures <folder>', 'also write every figure as SVG, and as PNG where rsvg-convert is installed')

@@ -19,6 +19,8 @@ export interface LineSpec extends FrameSpec {
   readonly curves: readonly Curve[];
   /** areas named in the key: the class that fills them */
   readonly areas?: readonly { readonly name: string; readonly fill: string }[];
+  /** dots named in the key, by their classes */
+  readonly dots?: readonly { readonly name: string; readonly dot: string }[];
   /** drawn under the curves, in the plot's pixels */
   readonly under?: (box: Box, x: Scale, y: Scale) => readonly (Element | null)[];
   /** drawn over the curves, in the plot's pixels */
@@ -30,7 +32,7 @@ export function lineFigure(spec: LineSpec, xScale: (length: number) => Scale, yS
   const above = spec.right < KEY_WIDTH;
   // one curve that the heading names needs no key
   const curvesNamed = spec.curves.length === 1 && spec.curves[0].reading === undefined ? [] : spec.curves;
-  const named: readonly Keyed[] = [...curvesNamed, ...(spec.areas ?? [])];
+  const named: readonly Keyed[] = [...curvesNamed, ...(spec.areas ?? []), ...(spec.dots ?? [])];
   const keyRows = above ? keyRowsAbove(named, spec.width - spec.left).length : 0;
   const box = boxOf(spec, keyRows);
   const [x, y] = [xScale(box.width), yScale(box.height)];
@@ -55,17 +57,21 @@ export function lineFigure(spec: LineSpec, xScale: (length: number) => Scale, yS
 export const KEY_WIDTH = 100;
 
 /** What a key names: a curve, or an area by what fills it. */
-type Keyed = Pick<Curve, 'name' | 'style' | 'reading' | 'points'> | { readonly name: string; readonly fill: string };
+type Keyed =
+  | Pick<Curve, 'name' | 'style' | 'reading' | 'points'>
+  | { readonly name: string; readonly fill: string }
+  | { readonly name: string; readonly dot: string };
 
 /** What stands for it in the key, 22 px wide. */
 function sample(entry: Keyed, left: number, y: number): Element {
   if ('fill' in entry) return el('rect', { class: `area ${entry.fill}`, x: left, y: y - 5, width: 22, height: 10 });
+  if ('dot' in entry) return el('circle', { class: entry.dot, cx: left + 11, cy: y, r: 4 });
   if (entry.points) return el('path', { class: `rings ${entry.style}`, d: ring(left + 11, y) });
   return el('path', { class: `curve ${entry.style}`, d: `M${left} ${y}h22` });
 }
 
 function readingOf(entry: Keyed): string | undefined {
-  return 'fill' in entry ? undefined : entry.reading;
+  return 'reading' in entry ? entry.reading : undefined;
 }
 
 function keyBeside(entries: readonly Keyed[], box: Box): Element[] {

@@ -12,7 +12,7 @@ import {
   type ScanTable,
   type ScanView,
 } from '../scan/data.ts';
-import { curveFigure, pointAt, quantityMap, scanAxis, verdictMap } from '../scan/figures.ts';
+import { curveAxis, curveFigure, pointAt, quantityMap, verdictMap } from '../scan/figures.ts';
 import type { ScanPageData } from '../scan/page.ts';
 import { canvasAddress, toNode } from './dom.ts';
 import { begin, byId, innerWidth, openForPrint, plot } from './linked.ts';
@@ -187,7 +187,7 @@ class ScanViewer {
     const sx = ((event.clientX - left) * scale - box.left) / box.width;
     const sy = 1 - ((event.clientY - top) * scale - box.top) / box.height;
     if (this.#view.y !== null) return pointAt(this.#table, this.#view, sx, sy);
-    const axis = scanAxis(this.#table.axes[this.#view.x], 70)(box.width);
+    const axis = curveAxis(this.#table.axes[this.#view.x])(box.width);
     const distance = (place: number): number => Math.abs(axis.at(axisValue(this.#table, place, this.#view.x)) - sx);
     return pointsAlong(this.#table, this.#view).reduce((best, place) => (distance(place) < distance(best) ? place : best));
   }
@@ -196,7 +196,9 @@ class ScanViewer {
   #describe(): void {
     const table = this.#table;
     const place = this.#selected;
-    const rows = table.columns.flatMap((column) => {
+    // what was searched for comes first
+    const columns = [...table.columns].sort((a, b) => Number(b.name.startsWith('found_')) - Number(a.name.startsWith('found_')));
+    const rows = columns.flatMap((column) => {
       const value = meaningAt(column, place);
       if (value === null) return [];
       const shown =

@@ -28,10 +28,18 @@ const VERDICTS: Readonly<Record<string, { readonly colour: Rgb; readonly word: s
   undecided: { colour: [222, 170, 40], word: 'undecided', dot: 'dot dot-doubt' },
   failed: { colour: [120, 120, 120], word: 'no answer', dot: 'dot dot-beyond' },
 };
+/** what a search says of a point, as dots */
+const FOUND: Readonly<Record<string, { readonly word: string; readonly dot: string }>> = {
+  found: { word: 'found', dot: 'dot' },
+  'none-breaks-down': { word: 'all holds', dot: 'dot dot-beyond' },
+  'none-holds': { word: 'none holds', dot: 'dot dot-alarm' },
+  undecided: { word: 'undecided', dot: 'dot dot-doubt' },
+  failed: { word: 'no answer', dot: 'dot dot-beyond' },
+};
 const UNKNOWN: Rgb = [160, 160, 160];
 
 /** An axis over the values of a varied entry: logarithmic where they are spaced that way. */
-export function scanAxis({ path, unit, values }: ScanAxisValues, margin: number): (length: number) => Scale {
+function scanAxis({ path, unit, values }: ScanAxisValues, margin: number): (length: number) => Scale {
   const [low, high] = [Math.min(...values), Math.max(...values)];
   const shown = unit === '1' ? '' : unit;
   const room = (length: number): Room => ({ length, apart: margin });
@@ -41,6 +49,20 @@ export function scanAxis({ path, unit, values }: ScanAxisValues, margin: number)
   }
   if (isLogarithmic(values)) return (length) => logarithmic(path, shown, low, high, room(length));
   return (length) => linear(path, shown, low, high, room(length), false);
+}
+
+/** The axis under curves: a little wider than the values, so that the outermost points are whole. */
+export function curveAxis(axis: ScanAxisValues): (length: number) => Scale {
+  const [low, high] = [Math.min(...axis.values), Math.max(...axis.values)];
+  if (!(high > low)) return scanAxis(axis, 70);
+  const wide = isLogarithmic(axis.values)
+    ? [low * (low / high) ** 0.02, high * (high / low) ** 0.02]
+    : [low - 0.02 * (high - low), high + 0.02 * (high - low)];
+  const unit = axis.unit === '1' ? '' : axis.unit;
+  return (length) =>
+    isLogarithmic(axis.values)
+      ? logarithmic(axis.path, unit, wide[0], wide[1], { length, apart: 70 })
+      : linear(axis.path, unit, wide[0], wide[1], { length, apart: 70 }, false);
 }
 
 /** Whether steps are more even in the logarithm. */
@@ -56,7 +78,7 @@ function isLogarithmic(values: readonly number[]): boolean {
 }
 
 /** Whether a quantity is shown on a logarithmic axis: where it is positive and spans a factor of ten. */
-function valueScale({ longName, units, values }: ScanColumn, also: readonly number[], apart: number): (length: number) => Scale {
+function valueScale({ longName: plainName, units, values }: ScanColumn, also: readonly number[], apart: number): (length: number) => Scale {
   let [low, high, positive] = [Number.POSITIVE_INFINITY, Number.NEGATIVE_INFINITY, true];
   for (const list of [values, also])
     for (let i = 0; i < list.length; i++) {
@@ -66,6 +88,7 @@ function valueScale({ longName, units, values }: ScanColumn, also: readonly numb
       high = Math.max(high, v);
       if (v <= 0) positive = false;
     }
+  const longName = capital(plainName);
   const unit = units === '1' ? '' : units;
   if (!(low <= high)) return (length) => linear(longName, unit, 0, 1, { length, apart });
   if (positive && high > 10 * low) return (length) => logarithmic(longName, unit, low, high, { length, apart });
@@ -88,7 +111,11 @@ export function curveFigure(table: ScanTable, view: ScanView, name: string, sele
     ...(typical === null ? [] : [{ name: 'theory', style: 's2', x: xs, y: typical }]),
     { name: 'simulated', style: 's1', x: xs, y: ys },
   ];
-  const verdict = columnOf(table, 'verdict');
+  const ofSearch = name.startsWith('found_');
+  const state = columnOf(table, ofSearch ? 'found_state' : 'verdict');
+  const words = places.map((place) => (state === null ? '' : (state.meanings[state.values[place]] ?? '')));
+  const dotOf = (word: string): { readonly word: string; readonly dot: string } =>
+    (ofSearch ? FOUND : VERDICTS)[word] ?? { word: 'no answer', dot: 'dot dot-beyond' };
   const also = [...(typical ?? []), ...bandCurves.flat()];
   return lineFigure(
     {
@@ -100,11 +127,11 @@ export function curveFigure(table: ScanTable, view: ScanView, name: string, sele
       left: LEFT,
       right: width < 480 ? 18 : KEY_WIDTH + 30,
       curves,
+      dots: [...new Set(words)].map((word) => ({ name: dotOf(word).word, dot: dotOf(word).dot })),
       areas: beside === null ? [] : [{ name: 'yield’s spread', fill: 'band' }],
       under: (box, x, y) => (beside === null ? [] : [bandArea(xs, bandCurves[0], bandCurves[1], box, x, y)]),
       over: (box, x, y) =>
         places.map((place, i) => {
-          const word = verdict === null ? 'holds' : (verdict.meanings[verdict.values[place]] ?? 'failed');
           const [px, sy] = [box.left + x.at(xs[i]) * box.width, y.at(ys[i])];
           // where there is no value the verdict stands at the bottom
           const py = Number.isFinite(sy) ? box.top + (1 - sy) * box.height : box.top + box.height - 6;
@@ -112,12 +139,12 @@ export function curveFigure(table: ScanTable, view: ScanView, name: string, sele
           return el(
             'g',
             {},
-            el('circle', { class: VERDICTS[word]?.dot ?? 'dot', cx: round(px), cy: round(py), r: 4, 'data-point': place }),
+            el('circle', { class: dotOf(words[i]).dot, cx: round(px), cy: round(py), r: 4, 'data-point': place }),
             place === selected ? el('circle', { class: 'now', cx: round(px), cy: round(py), r: 8 }) : null,
           );
         }),
     },
-    scanAxis(table.axes[view.x], 70),
+    curveAxis(table.axes[view.x]),
     valueScale({ ...column, values: Float64Array.from(ys) }, also, 24),
   );
 }
@@ -202,7 +229,7 @@ export function quantityMap(
   return mapFigure(
     {
       ...base('quantity-map', column.longName, width),
-      heading: `${column.longName[0].toUpperCase()}${column.longName.slice(1)}${column.units === '1' ? '' : ` [${column.units}]`}`,
+      heading: `${capital(column.longName)}${column.units === '1' ? '' : ` [${column.units}]`}`,
       yName: grid.yTitle,
       paint: grid.paint((place) => {
         const value = column.values[place];
@@ -307,10 +334,10 @@ class GridView {
     return (sx, sy) => number(this.#place(nearestShare(xs, sx), nearestShare(ys, sy)));
   }
 
-  contours(value: (place: number) => number, levels: readonly number[], box: Box, labels: readonly string[] | null): Element[] {
+  contours(value: (place: number) => number, levels: readonly number[], box: Box, labels: readonly string[] | null): (Element | null)[] {
     const [xs, ys] = [this.#shares('x'), this.#shares('y')];
     const taken: (readonly [number, number])[] = [];
-    return levels.flatMap((level, k) => {
+    return levels.flatMap((level, k): (Element | null)[] => {
       const pieces = contour(xs, ys, (i, j) => value(this.#place(i, j)), level);
       if (pieces.length === 0) return [];
       const px = (s: number): number => round(box.left + s * box.width);
@@ -341,6 +368,12 @@ class GridView {
     };
     return el('g', {}, el('circle', { class: 'halo', ...place }), el('circle', { class: 'now', ...place }));
   }
+}
+
+/** The name of a column as a heading: without what explains it after a colon or semicolon. */
+function capital(text: string): string {
+  const [name] = text.split(/[:;]/);
+  return `${name.slice(0, 1).toUpperCase()}${name.slice(1)}`;
 }
 
 /** Which point of a map is meant at a share of both axes. */
