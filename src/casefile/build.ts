@@ -1,21 +1,31 @@
 import type { Case } from '../case.ts';
 import type { PlanarGap } from '../gap/geometry.ts';
-import type { Gas, GasData } from '../gases/gas.ts';
+import type { Gas, GasData, MixturePart } from '../gases/gas.ts';
+import { mixtureOf } from '../gases/mixture.ts';
 import type { Programme, SupplySettings } from '../supply/settings.ts';
-import type { Surface } from '../surfaces/surface.ts';
+import type { IonYield, Surface } from '../surfaces/surface.ts';
+import type { YieldLaw } from '../surfaces/yield-law.ts';
 import { BOLTZMANN } from '../units/constants.ts';
 import { coefficientsOf } from './coefficients.ts';
 import type { Defaults } from './defaults.ts';
 import { deepFreeze } from './freeze.ts';
 import { hashCase } from './hash.ts';
-import type { CaseInput, ElectrodeInput } from './schema.ts';
+import type { CaseInput, ElectrodeInput, YieldInput } from './schema.ts';
 
 /** The built-in data that a case may name. */
 export interface BuiltIns {
   readonly gases: Readonly<Record<string, GasData>>;
+  /** names of the sets of data of a gas, the default first */
+  readonly dataSets: (gas: string) => readonly string[];
+  /** a gas with one of its sets of data; null where there is no such set */
+  readonly gasData: (gas: string, set?: string) => GasData | null;
   readonly materials: readonly string[];
   /** the surface of a material in a gas (null: the case's own coefficients), or null where its yield is unknown */
   readonly surfaceFor: (material: string, gas: string | null) => Surface | null;
+  /** the same in a mixture of gases */
+  readonly surfaceInMixture: (material: string, gases: readonly string[]) => Surface | null;
+  /** the same in a stated condition */
+  readonly surfaceIn: (material: string, gas: string, condition: 'clean' | 'technical') => Surface | null;
 }
 
 /** relative uncertainty of a breakdown voltage where nothing better is known */
@@ -24,14 +34,16 @@ const BREAKDOWN_UNCERTAINTY = 0.2;
 /** A validated case with every default filled in, frozen. */
 export function buildCase(input: CaseInput, fileTitle: string, builtIns: BuiltIns, defaults: Defaults): Case {
   const title = defaults.or(input.title, 'title', fileTitle, fileTitle);
-  const left = surfaceOf(input.electrodes.left, input.gas.name ?? null, builtIns);
+  const parts = partsOf(input.gas.mixture);
+  const gasNames = parts?.map(({ gas }) => gas) ?? (input.gas.name === undefined ? [] : [input.gas.name]);
+  const left = surfaceOf(input.electrodes.left, gasNames, builtIns);
   if (!input.electrodes.right) defaults.add('electrodes.right', 'same as left');
-  const right = input.electrodes.right ? surfaceOf(input.electrodes.right, input.gas.name ?? null, builtIns) : left;
+  const right = input.electrodes.right ? surfaceOf(input.electrodes.right, gasNames, builtIns) : left;
   defaults.or(input.electrons?.closure, 'electrons.closure', 'local-field', 'local-field');
   const withoutHash: Omit<Case, 'sha256'> = {
     title,
     gap: gapOf(input.gap, defaults),
-    gas: gasOf(input.gas, builtIns, defaults),
+    gas: gasOf(input.gas, parts, builtIns, defaults),
     electrodes: { left, right },
     seed: {
       cathodeCurrent: input.seed.cathode_current,
@@ -60,8 +72,32 @@ function gapOf(input: CaseInput['gap'], defaults: Defaults): PlanarGap {
   };
 }
 
-function gasOf(input: CaseInput['gas'], builtIns: BuiltIns, defaults: Defaults): Gas {
-  const builtIn = input.name === undefined ? null : builtIns.gases[input.name];
+/** The gases of a mixture, by name so that their order in the file does not matter; null where there is none. */
+function partsOf(mixture: CaseInput['gas']['mixture']): readonly MixturePart[] | null {
+  if (mixture === undefined) return null;
+  return Object.entries(mixture)
+    .flatMap(([gas, fraction]) => (fraction === undefined ? [] : [{ gas, fraction }]))
+    .sort((a, b) => (a.gas < b.gas ? -1 : 1));
+}
+
+/** The data of a built-in gas or mixture; null where the case brings all of its own. A mixture of one gas is that gas. */
+function dataOf(input: CaseInput['gas'], parts: readonly MixturePart[] | null, builtIns: BuiltIns, defaults: Defaults): GasData | null {
+  const known = (gas: string, set?: string): GasData => {
+    const data = builtIns.gasData(gas, set);
+    if (data === null) throw new Error('gas passed validation without data');
+    return data;
+  };
+  if (parts !== null && parts.length > 1) return mixtureOf(parts.map(({ gas, fraction }) => ({ gas: known(gas), fraction })));
+  const name = parts === null ? input.name : parts[0].gas;
+  if (name === undefined) return null;
+  if (parts !== null) defaults.note(`gas.mixture: ${name} alone, read as gas.name: ${name}`);
+  const [standard] = builtIns.dataSets(name);
+  return known(name, defaults.or(input.data, 'gas.data', standard, standard));
+}
+
+function gasOf(input: CaseInput['gas'], parts: readonly MixturePart[] | null, builtIns: BuiltIns, defaults: Defaults): Gas {
+  const builtIn = dataOf(input, parts, builtIns, defaults);
+  const isMixture = parts !== null && parts.length > 1;
   const temperature = defaults.or(input.temperature, 'gas.temperature', 293.15, '293.15 K');
   const own = input.coefficients;
   const coefficients =
@@ -69,7 +105,9 @@ function gasOf(input: CaseInput['gas'], builtIns: BuiltIns, defaults: Defaults):
   // what was known about a breakdown voltage no longer holds once its ionisation coefficient is replaced
   const uncertainty = builtIn && !own?.ionisation && !own?.attachment ? builtIn.breakdownUncertainty : BREAKDOWN_UNCERTAINTY;
   return {
-    name: input.name ?? null,
+    name: builtIn?.name ?? null,
+    ...(builtIn === null || isMixture ? {} : { dataSet: builtIn.set }),
+    ...(isMixture ? { mixture: parts } : {}),
     pressure: input.pressure,
     temperature,
     density: input.pressure / (BOLTZMANN * temperature),
@@ -79,18 +117,56 @@ function gasOf(input: CaseInput['gas'], builtIns: BuiltIns, defaults: Defaults):
   };
 }
 
-function surfaceOf(input: ElectrodeInput, gas: string | null, builtIns: BuiltIns): Surface {
-  const known = input.material === undefined ? null : builtIns.surfaceFor(input.material, gas);
-  if (input.ion_yield === undefined) {
+/** @param gases  built-in ones, none where the case brings all its coefficients */
+function surfaceOf({ material, surface, ion_yield }: ElectrodeInput, gases: readonly string[], builtIns: BuiltIns): Surface {
+  if (ion_yield === undefined) {
+    const known = material === undefined ? null : knownSurface(material, surface, gases, builtIns);
     if (known === null) throw new Error('an electrode passed validation without a yield');
     return known;
   }
-  const value = input.ion_yield;
   return {
-    material: input.material ?? null,
-    ionYield: { typical: value, low: value, high: value, source: 'case file', status: 'given', uncertainty: null },
-    workFunction: known?.workFunction ?? null,
+    material: material ?? null,
+    ionYield: yieldOf(ion_yield),
+    workFunction: material === undefined ? null : (builtIns.surfaceFor(material, null)?.workFunction ?? null),
   };
+}
+
+/** A built-in surface, null where its yield is unknown. */
+export function knownSurface(
+  material: string,
+  condition: ElectrodeInput['surface'],
+  gases: readonly string[],
+  builtIns: BuiltIns,
+): Surface | null {
+  if (gases.length > 1) return condition === undefined ? builtIns.surfaceInMixture(material, gases) : null;
+  const gas = gases.length === 0 ? null : gases[0];
+  if (condition === undefined) return builtIns.surfaceFor(material, gas);
+  return gas === null ? null : builtIns.surfaceIn(material, gas, condition);
+}
+
+const GIVEN = { source: 'case file', status: 'given', uncertainty: null } as const;
+
+function yieldOf(input: number | YieldInput): IonYield {
+  if (typeof input === 'number') return { typical: input, low: input, high: input, ...GIVEN };
+  const { low, high, table } = input;
+  if (table === undefined) {
+    if (input.typical === undefined) throw new Error('ion_yield passed validation without a value');
+    const { typical } = input;
+    return { typical, low: low ?? typical, high: high ?? typical, ...GIVEN };
+  }
+  const [x, y] = table.columns.map(({ values }) => values);
+  return { typical: 1, low: low ?? 1, high: high ?? 1, ...GIVEN, law: tableLaw(x, y) };
+}
+
+const LAWS = new WeakMap<readonly number[], YieldLaw>();
+
+/** The law of a table; the same one each time, so that the points of a scan and both walls share it. */
+function tableLaw(x: readonly number[], y: readonly number[]): YieldLaw {
+  const known = LAWS.get(y);
+  if (known !== undefined) return known;
+  const law: YieldLaw = { kind: 'reduced-field', form: { kind: 'table', law: 'plain', x, y } };
+  LAWS.set(y, law);
+  return law;
 }
 
 function supplyOf(input: CaseInput['supply'], defaults: Defaults): SupplySettings {

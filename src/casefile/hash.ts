@@ -3,7 +3,7 @@ import type { Case } from '../case.ts';
 import type { ScanSettings, WindowSettings } from '../study.ts';
 
 /** Words about a number, not the number: they may be corrected without changing what a case computes. */
-const WORDS = new Set(['title', 'sha256', 'source', 'status', 'note']);
+const WORDS = new Set(['title', 'sha256', 'source', 'status', 'note', 'dataSet']);
 /** longer lists (tables) enter by their own hash */
 const LONG_LIST = 64;
 

@@ -16,10 +16,10 @@
  *  No file is opened here: tables and data sets are read through the functions passed in. */
 import * as z from 'zod';
 import type { Case } from '../case.ts';
-import { gases } from '../gases/index.ts';
+import { dataSets, gasData, gases } from '../gases/index.ts';
 import type { ScanSettings, WindowSettings } from '../study.ts';
-import { surfaces, yieldFor } from '../surfaces/index.ts';
-import { type BuiltIns, buildCase } from './build.ts';
+import { surfaceIn, surfaces, yieldFor, yieldInMixture } from '../surfaces/index.ts';
+import { type BuiltIns, buildCase, knownSurface } from './build.ts';
 import { buildScan, buildWindow, highestVoltage } from './build-study.ts';
 import type { DatasetReader } from './dataset.ts';
 import { Defaults, type DefaultUsed } from './defaults.ts';
@@ -28,7 +28,7 @@ import type { LoadedTable, TableReader } from './fields.ts';
 import { deepFreeze } from './freeze.ts';
 import { problemsOf } from './issues.ts';
 import { applyOverrides } from './overrides.ts';
-import type { Plain } from './plain.ts';
+import { getPlain, type Plain } from './plain.ts';
 import { type PointReader, pointReader, scanProblems } from './points.ts';
 import { inOrder, type Place, type Problem } from './problem.ts';
 import { resolvedOf } from './resolved.ts';
@@ -73,7 +73,15 @@ export type ReadResult =
     }
   | { readonly ok: false; readonly problems: readonly Problem[] };
 
-export const BUILT_INS: BuiltIns = { gases, materials: Object.keys(surfaces), surfaceFor: yieldFor };
+export const BUILT_INS: BuiltIns = {
+  gases,
+  dataSets,
+  gasData,
+  materials: Object.keys(surfaces),
+  surfaceFor: yieldFor,
+  surfaceInMixture: yieldInMixture,
+  surfaceIn,
+};
 
 /** Reads a case.
  *
@@ -100,7 +108,13 @@ export function readCase(
   if (plain.problems.some((p) => p.code === 'aliases' || p.code === 'too-deep')) return { ok: false, problems };
 
   const { file, run } = caseSchemas(
-    { reader: onceEach(reader), datasets, gasNames: Object.keys(builtIns.gases), materialNames: builtIns.materials },
+    {
+      reader: onceEach(reader),
+      datasets,
+      gasNames: Object.keys(builtIns.gases),
+      dataSets: builtIns.dataSets,
+      materialNames: builtIns.materials,
+    },
     Object.keys(plain.value as Plain),
   );
   const validated = file.safeParse(plain.value, { reportInput: false, jitless: true });
@@ -164,6 +178,7 @@ export function caseJsonSchema(builtIns: BuiltIns = BUILT_INS): Record<string, u
     reader: () => ({ ok: false, reason: 'no files are read for a schema' }),
     datasets: () => ({ ok: false, reason: 'no files are read for a schema' }),
     gasNames: Object.keys(builtIns.gases),
+    dataSets: builtIns.dataSets,
     materialNames: builtIns.materials,
   });
   return { title: 'gapwake case', ...z.toJSONSchema(file, { io: 'input', target: 'draft-7' }) };
@@ -181,22 +196,28 @@ function onceEach(reader: TableReader): TableReader {
   };
 }
 
-/** Electrodes whose material has no yield in this gas: two sections decide, so it is checked on the data as given. */
+/** Electrodes whose material has no yield in this gas, or not in the condition asked for: two sections decide, so it is checked on the data as given. */
 function missingYields(raw: unknown, builtIns: BuiltIns, document: SourceDocument): Problem[] {
-  const at = (value: unknown, key: string): unknown =>
-    typeof value === 'object' && value !== null ? (value as Record<string, unknown>)[key] : undefined;
-  const name = at(at(raw, 'gas'), 'name');
-  const gas = typeof name === 'string' && Object.hasOwn(builtIns.gases, name) ? name : null;
+  const name = getPlain(raw, ['gas', 'name']);
+  const mixture = getPlain(raw, ['gas', 'mixture']);
+  const named = typeof name === 'string' ? [name] : typeof mixture === 'object' && mixture !== null ? Object.keys(mixture) : [];
+  // an unknown gas has its own problem
+  if (!named.every((gas) => Object.hasOwn(builtIns.gases, gas))) return [];
+  const where = named.length === 0 ? 'this gas' : named.length === 1 ? named[0] : 'a mixture';
   return ['left', 'right'].flatMap((side) => {
-    const electrode = at(at(raw, 'electrodes'), side);
-    const material = at(electrode, 'material');
-    if (typeof material !== 'string' || !builtIns.materials.includes(material) || at(electrode, 'ion_yield') !== undefined) return [];
-    if (builtIns.surfaceFor(material, gas) !== null) return [];
-    const path = ['electrodes', side, 'material'];
-    const expected = `a material with a known yield in ${gas ?? 'this gas'}, or an ion_yield beside it`;
-    return [
-      { code: 'inconsistent', ...locate(document, path), path: path.join('.'), expected, found: material, nearest: null } satisfies Problem,
-    ];
+    const electrode = (key: string): unknown => getPlain(raw, ['electrodes', side, key]);
+    const [material, surface] = [electrode('material'), electrode('surface')];
+    if (typeof material !== 'string' || !builtIns.materials.includes(material) || electrode('ion_yield') !== undefined) return [];
+    const condition = surface === 'clean' || surface === 'technical' ? surface : undefined;
+    if (surface !== undefined && condition === undefined) return [];
+    if (knownSurface(material, condition, named, builtIns) !== null) return [];
+    const path = ['electrodes', side, condition === undefined ? 'material' : 'surface'];
+    const expected =
+      condition === undefined
+        ? `a material with a known yield in ${where}, or an ion_yield beside it`
+        : `a surface whose yield is known (that of ${condition} ${material} in ${where} is not), or none for the built-in yield`;
+    const found = condition ?? material;
+    return [{ code: 'inconsistent', ...locate(document, path), path: path.join('.'), expected, found, nearest: null } satisfies Problem];
   });
 }
 
@@ -208,6 +229,10 @@ function tablesOf(input: CaseInput): TableUsed[] {
   add('supply.voltage.table', input.supply.voltage.table);
   for (const [key, value] of Object.entries(input.gas.coefficients ?? {})) {
     if (typeof value === 'object' && 'table' in value) add(`gas.coefficients.${key}.table`, value.table);
+  }
+  for (const side of ['left', 'right'] as const) {
+    const given = input.electrodes[side]?.ion_yield;
+    if (typeof given === 'object') add(`electrodes.${side}.ion_yield.table`, given.table);
   }
   const { pressure, temperature, voltage } = input.history ?? {};
   add('history.pressure.table', pressure?.table);

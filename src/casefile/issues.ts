@@ -50,7 +50,7 @@ function convert(issue: z.core.$ZodIssue, base: Path, context: Context): Problem
   }
   if (issue.code === 'invalid_union') {
     // the arm that accepts this type of value knows best what is wrong inside it
-    const arms = issue.errors.filter((arm) => !arm.some((inner) => inner.path.length === 0 && inner.code === 'invalid_type'));
+    const arms = issue.errors.filter((arm) => !isOfAnotherType(arm));
     if (arms.length === 1) return arms[0].flatMap((inner) => convert(inner, path, context));
   }
   const place = locate(document, path);
@@ -67,6 +67,15 @@ function convert(issue: z.core.$ZodIssue, base: Path, context: Context): Problem
     return [make('unknown-name', place, path, issue.message, clip(value) || 'nothing', nearestSpelling(value, names))];
   }
   return [make(codeOf(value, issue.message), place, path, issue.message, describe(value, issue.message), null)];
+}
+
+/** Whether an arm of a union refuses a value for its type: it may be a union itself. */
+function isOfAnotherType(arm: readonly z.core.$ZodIssue[]): boolean {
+  return arm.some(
+    (issue) =>
+      issue.path.length === 0 &&
+      (issue.code === 'invalid_type' || (issue.code === 'invalid_union' && issue.errors.length > 0 && issue.errors.every(isOfAnotherType))),
+  );
 }
 
 /** The code for a value of the wrong type. */

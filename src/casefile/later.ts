@@ -3,7 +3,6 @@ import { pathText } from './document.ts';
 /** Keys that a case may hold one day, by the mapping they belong to: refused by name, never ignored. */
 const KEYS: Readonly<Record<string, readonly string[]>> = {
   gap: ['inner_radius', 'outer_radius', 'length'],
-  gas: ['mixture', 'data'],
   electrodes: ['inner', 'outer'],
   'electrodes.left': ['photon_yield', 'metastable_yield', 'field_emission'],
   'electrodes.right': ['photon_yield', 'metastable_yield', 'field_emission'],

@@ -25,7 +25,16 @@ const EITHER_OR: readonly { readonly pattern: readonly string[]; readonly arms: 
   { at: 'scan.vary.*', arms: [['values'], ['from', 'to', 'points', 'spacing']] },
   { at: 'history.pressure', arms: [['table'], ['dataset'], ['ascent'], ['bay']] },
   { at: 'history.pressure.bay.outside', arms: [['pressure'], ['table'], ['ascent']] },
-  { at: 'electrodes.*', arms: [['material'], ['ion_yield']] },
+  { at: 'gas', arms: [['name', 'data'], ['mixture']] },
+  { at: 'electrodes.*', arms: [['material', 'surface'], ['ion_yield']] },
+  // low and high are yields beside one, factors beside the other: they go with either
+  {
+    at: 'electrodes.*.ion_yield',
+    arms: [
+      ['typical', 'low', 'high'],
+      ['table', 'low', 'high'],
+    ],
+  },
   { at: 'gas.coefficients.*', arms: [['value'], ['K0'], ['table']] },
 ].map(({ at, arms }) => ({ pattern: at.split('.'), arms }));
 

@@ -19,7 +19,7 @@ export function resolvedOf(c: Case, scan: ScanSettings | null, window: WindowSet
     'gap.spacing': gap.spacing,
     'gap.area': gap.area,
     'gap.longest_path': gap.longestPath,
-    'gas.name': gas.name,
+    ...gasEntries(c),
     'gas.pressure': gas.pressure,
     'gas.temperature': gas.temperature,
     ...coefficientEntries(c),
@@ -54,8 +54,22 @@ export function resolvedOf(c: Case, scan: ScanSettings | null, window: WindowSet
   };
 }
 
-function surfaceEntries(path: string, surface: Surface): Record<string, ResolvedValue> {
-  return { [`${path}.material`]: surface.material, [`${path}.ion_yield`]: surface.ionYield.typical };
+/** A gas by its name and set of data, or a mixture by its fractions. */
+function gasEntries({ gas }: Case): Record<string, ResolvedValue> {
+  if (gas.mixture) return Object.fromEntries(gas.mixture.map((part) => [`gas.mixture.${part.gas}`, part.fraction]));
+  return { 'gas.name': gas.name, ...(gas.dataSet === undefined ? {} : { 'gas.data': gas.dataSet }) };
+}
+
+/** One number where the yield is one, or the material's own; else with the ends of its spread. */
+function surfaceEntries(path: string, { material, ionYield, condition }: Surface): Record<string, ResolvedValue> {
+  const { typical, low, high, law, status } = ionYield;
+  const entries: Record<string, ResolvedValue> = { [`${path}.material`]: material };
+  if (condition !== undefined) entries[`${path}.surface`] = condition;
+  if (law === undefined && (status !== 'given' || low === high)) return { ...entries, [`${path}.ion_yield`]: typical };
+  if (law === undefined) entries[`${path}.ion_yield.typical`] = typical;
+  else if (law.kind === 'reduced-field' && law.form.kind === 'table')
+    entries[`${path}.ion_yield.table`] = `sha256:${hashColumns([law.form.x, law.form.y])}`;
+  return { ...entries, [`${path}.ion_yield.low`]: low, [`${path}.ion_yield.high`]: high };
 }
 
 function coefficientEntries(c: Case): Record<string, ResolvedValue> {

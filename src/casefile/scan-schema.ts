@@ -49,6 +49,8 @@ const SEARCHED: Readonly<Record<string, string>> = {
 
 const MOST_AXES = 20;
 
+const MIXTURE = 'gas.mixture.';
+
 /** @param run  the schema of the entries that may be varied: a case without scan and history */
 export function scanSchema(run: z.ZodType): z.ZodType<ScanInput> {
   return section(
@@ -173,6 +175,13 @@ function checkTogether({ vary, zip, find }: Entries, report: Report): void {
       report(['vary', k, 'path'], 'every path once', { code: 'inconsistent', found: `${clip(path)} again` });
     if (path !== null && path === searched)
       report(['vary', k, 'path'], 'an entry that find does not search for', { code: 'inconsistent', found: path });
+  }
+  const fractions = paths.flatMap((path, k) => (path?.startsWith(MIXTURE) ? [k] : []));
+  if (fractions.length > 0 && (fractions.length === 1 || zip !== true)) {
+    const found = fractions.length === 1 ? `${clip(paths[fractions[0]] ?? '')} alone` : 'fractions in a grid';
+    const expected =
+      'the other fractions of gas.mixture varied with it, as entries of their own with zip: true, so that they sum to 1 at every point';
+    report(['vary', fractions[0], 'path'], expected, { code: 'inconsistent', found });
   }
   const lengths = axes.map((axis) =>
     Array.isArray(axis?.values) ? axis.values.length : typeof axis?.points === 'number' ? axis.points : 1,

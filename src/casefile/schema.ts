@@ -1,4 +1,5 @@
 import * as z from 'zod';
+import { clip, nearestSpelling } from '../units/index.ts';
 import type { DatasetReader } from './dataset.ts';
 import {
   across,
@@ -18,6 +19,7 @@ import {
   table,
 } from './fields.ts';
 import { type HistoryInput, historySchema } from './history-schema.ts';
+import { getPlain } from './plain.ts';
 import { type ScanInput, scanSchema } from './scan-schema.ts';
 
 /** A case as validated: SI values, entries as they were given, no defaults filled in. */
@@ -31,6 +33,8 @@ export interface CaseInput {
   };
   readonly gas: {
     readonly name?: string | undefined;
+    readonly data?: string | undefined;
+    readonly mixture?: Readonly<Record<string, number | undefined>> | undefined;
     readonly pressure: number;
     readonly temperature?: number | undefined;
     readonly coefficients?: CoefficientsInput | undefined;
@@ -66,7 +70,16 @@ export interface CaseInput {
 
 export interface ElectrodeInput {
   readonly material?: string | undefined;
-  readonly ion_yield?: number | undefined;
+  readonly surface?: 'clean' | 'technical' | undefined;
+  readonly ion_yield?: number | YieldInput | undefined;
+}
+
+/** A yield with its spread: numbers, or a table and factors on it. */
+export interface YieldInput {
+  readonly typical?: number | undefined;
+  readonly table?: LoadedTable | undefined;
+  readonly low?: number | undefined;
+  readonly high?: number | undefined;
 }
 
 export interface GrowthInput extends Validity {
@@ -107,6 +120,8 @@ export interface SchemaContext {
   readonly reader: TableReader;
   readonly datasets: DatasetReader;
   readonly gasNames: readonly string[];
+  /** names of the sets of data of a gas, the default first */
+  readonly dataSets: (gas: string) => readonly string[];
   readonly materialNames: readonly string[];
 }
 
@@ -178,6 +193,7 @@ function runShape(context: SchemaContext): Readonly<Record<string, z.ZodType>> {
 
 /** What a scan or a history asks of the rest of the case. */
 function checkStudies({ supply, scan, history }: Partial<CaseInput>, report: Report, given: Readonly<Record<string, unknown>>): void {
+  checkVariedYields(given, report);
   const what = scan?.find?.what;
   const supplyGiven = given.supply as Readonly<Record<string, unknown>> | null | undefined;
   if (what === 'trip-delay' && typeof supplyGiven === 'object' && supplyGiven?.trip === undefined)
@@ -188,6 +204,24 @@ function checkStudies({ supply, scan, history }: Partial<CaseInput>, report: Rep
     report(['scan', 'find', 'what'], 'a supply.voltage that differs from 0 V at some time, to be scaled', { code: 'inconsistent', found });
   if (history !== undefined && (given.history as Partial<HistoryInput> | null)?.voltage === undefined)
     report(['history', 'voltage'], 'voltage, required where supply.voltage gives none', { code: 'missing-key', found });
+}
+
+/** A varied yield replaces what stands there: a number takes the place of a number, `typical` that of `typical`. Anything else would drop a spread or a table unseen. */
+function checkVariedYields({ scan, electrodes }: Readonly<Record<string, unknown>>, report: Report): void {
+  const vary = getPlain(scan, ['vary']);
+  for (const [k, axis] of (Array.isArray(vary) ? vary : []).entries()) {
+    const path = getPlain(axis, ['path']);
+    const [section, side, key, part, ...rest] = typeof path === 'string' ? path.trim().split('.') : [];
+    if (section !== 'electrodes' || key !== 'ion_yield' || rest.length > 0) continue;
+    const there = getPlain(electrodes, [side, 'ion_yield']);
+    if (typeof there !== 'object' || there === null) continue;
+    const typical = `electrodes.${side}.ion_yield.typical`;
+    const refuse = (expected: string, found: string, nearest: string | null): void =>
+      report(['scan', 'vary', k, 'path'], expected, { code: 'inconsistent', found, nearest });
+    if ('table' in there) {
+      if (part === undefined || part === 'typical') refuse('an entry that leaves the table of the yield in place', clip(`${path}`), null);
+    } else if (part === undefined) refuse('the typical yield, as ion_yield is a mapping', clip(`${path}`), typical);
+  }
 }
 
 /** Whether a programme stays at 0 V; false where it is not known. */
@@ -220,22 +254,76 @@ function gasSchema(context: SchemaContext): z.ZodType<CaseInput['gas']> {
   return section(
     {
       name: choice(context.gasNames as [string, ...string[]]).optional(),
+      data: dataSchema(context).optional(),
+      mixture: mixtureSchema(context).optional(),
       pressure: quantity('pressure', { min: 1e-3, max: 1e6, text: 'from 1e-3 Pa to 1e6 Pa' }),
       temperature: quantity('temperature', TEMPERATURE).optional(),
       coefficients: coefficientsSchema(context).optional(),
     },
-    'name: built-in data; coefficients: your own, alone or in place of single built-in ones',
+    'name: built-in data, data: which set of them; mixture: built-in gases by their fractions; coefficients: your own, alone or in place of single built-in ones',
   ).check(
-    across((_, report, { name, coefficients }) => {
-      if (name === undefined && coefficients === undefined)
-        report([], 'a name, coefficients, or both', { code: 'missing-key', found: 'neither' });
-      if (name !== undefined || typeof coefficients !== 'object' || coefficients === null || Array.isArray(coefficients)) return;
+    across((sound, report, { name, data, mixture, coefficients }) => {
+      if (name !== undefined && mixture !== undefined)
+        report(['mixture'], 'either name or mixture', { code: 'either-or', found: 'name and mixture' });
+      else if (name === undefined && mixture === undefined && coefficients === undefined)
+        report([], 'a name or a mixture, coefficients, or both', { code: 'missing-key', found: 'neither' });
+      if (data !== undefined && name === undefined)
+        report(['data'], 'data only beside gas.name, whose sets it chooses from', {
+          code: 'either-or',
+          found: mixture === undefined ? 'data without name' : 'data beside mixture',
+        });
+      else if (typeof sound.data === 'string' && typeof sound.name === 'string') checkDataSet(context, sound.name, sound.data, report);
+      if (
+        name !== undefined ||
+        mixture !== undefined ||
+        typeof coefficients !== 'object' ||
+        coefficients === null ||
+        Array.isArray(coefficients)
+      )
+        return;
       for (const key of ['ionisation', 'electron_mobility', 'ion_mobility']) {
         if (!(key in coefficients))
-          report(['coefficients', key], `${key}, required without gas.name`, { code: 'missing-key', found: 'nothing' });
+          report(['coefficients', key], `${key}, required without gas.name or gas.mixture`, { code: 'missing-key', found: 'nothing' });
       }
     }),
   ) as unknown as z.ZodType<CaseInput['gas']>;
+}
+
+function dataSchema({ gasNames, dataSets }: SchemaContext): z.ZodType<string> {
+  const several = gasNames.filter((gas) => dataSets(gas).length > 1);
+  return z.string({ error: () => 'the name of a set of data of the gas, as `gapwake gas NAME` lists them' }).meta({
+    description: `which set of a gas's data: ${several.map((gas) => `${gas}: ${dataSets(gas).join(', ')}`).join('; ')}; default the first`,
+  });
+}
+
+function checkDataSet({ dataSets }: SchemaContext, gas: string, set: string, report: Report): void {
+  const sets = dataSets(gas);
+  if (sets.includes(set)) return;
+  const expected = sets.length === 1 ? `${sets[0]}, the only set of data of ${gas}` : `a set of data of ${gas} (${sets.join(', ')})`;
+  report(['data'], expected, { code: 'unknown-name', found: clip(set) || 'nothing', nearest: nearestSpelling(set, sets) });
+}
+
+/** how far the fractions of a mixture may be from 1 in all */
+const FRACTION_TOLERANCE = 1e-6;
+
+function mixtureSchema({ gasNames }: SchemaContext): z.ZodType<Readonly<Record<string, number | undefined>>> {
+  const fraction = pureNumber('a fraction', { above: 0, max: 1, text: 'above 0 and up to 1' }, 0.9);
+  return section(
+    Object.fromEntries(gasNames.map((gas) => [gas, fraction.optional()])),
+    'built-in gases by their fractions of the density (or pressure), which sum to 1; several are varied together in a scan with zip: true',
+  ).check(
+    across((sound, report, given) => {
+      const keys = Object.keys(given).filter((key) => given[key] !== undefined);
+      if (keys.length === 0)
+        report([], 'gases with their fractions, e.g. { argon: 0.9, nitrogen: 0.1 }', { code: 'missing-key', found: 'none' });
+      const fractions = keys.map((key) => (gasNames.includes(key) ? sound[key] : undefined));
+      if (keys.length === 0 || !fractions.every((value) => typeof value === 'number')) return;
+      const sum = fractions.reduce((total, value) => total + value, 0);
+      // a fraction may be off by rounding where the sum just meets the tolerance
+      if (Math.abs(sum - 1) > FRACTION_TOLERANCE * (1 + 1e-9))
+        report([], 'fractions that sum to 1', { code: 'inconsistent', found: `a sum of ${Number(sum.toPrecision(9))}` });
+    }),
+  ) as unknown as z.ZodType<Readonly<Record<string, number | undefined>>>;
 }
 
 function coefficientsSchema({ reader }: SchemaContext): z.ZodType<CoefficientsInput> {
@@ -374,19 +462,73 @@ function energySchema(reader: TableReader): z.ZodType<PlainInput> {
   return z.union([value, parts], { error: () => 'a voltage (D/mu), e.g. 1 V, or { table: … }' }) as unknown as z.ZodType<PlainInput>;
 }
 
-function electrodeSchema({ materialNames }: SchemaContext): z.ZodType<ElectrodeInput> {
+const YIELD = { min: 0, max: 10, text: 'from 0 to 10' };
+const YIELD_FORMS = '{ low: 0.01, typical: 0.02, high: 0.05 }, or { table: … }';
+
+function electrodeSchema(context: SchemaContext): z.ZodType<ElectrodeInput> {
+  const number = pureNumber('electrons per ion', YIELD, 0.02);
   return section(
     {
-      material: choice(materialNames as [string, ...string[]]).optional(),
-      ion_yield: pureNumber('electrons per ion', { min: 0, max: 10, text: 'from 0 to 10' }, 0.02).optional(),
+      material: choice(context.materialNames as [string, ...string[]]).optional(),
+      surface: choice(['clean', 'technical']).optional(),
+      ion_yield: z
+        .union([number, yieldSchema(context)], { error: () => `electrons per ion ${YIELD.text}, e.g. 0.02, or ${YIELD_FORMS}` })
+        .optional(),
     },
-    'material: its built-in yield; ion_yield: electrons per arriving ion, wins over it',
+    'material: its built-in yield, surface: that of its clean or technical surface, where known; ion_yield: electrons per arriving ion, wins over the material',
   ).check(
-    across((_, report, { material, ion_yield }) => {
+    across((_, report, { material, surface, ion_yield }) => {
       if (material === undefined && ion_yield === undefined)
         report([], 'a material or an ion_yield', { code: 'missing-key', found: 'neither' });
+      if (surface === undefined) return;
+      if (ion_yield !== undefined)
+        report(['surface'], 'either surface or ion_yield', { code: 'either-or', found: 'surface and ion_yield' });
+      else if (material === undefined) report(['surface'], 'surface only beside material', { code: 'either-or', found: 'surface' });
     }),
   ) as unknown as z.ZodType<ElectrodeInput>;
+}
+
+/** A yield with its spread, or one that depends on the field. */
+function yieldSchema({ reader }: SchemaContext): z.ZodType<YieldInput> {
+  const bound = pureNumber('electrons per ion, or a factor beside table,', { min: 0, max: 1000, text: 'from 0 to 1000' }, 0.01);
+  return section(
+    {
+      low: bound.optional(),
+      typical: pureNumber('electrons per ion', YIELD, 0.02).optional(),
+      high: bound.optional(),
+      table: table(reader, [
+        { key: 'reduced_field', dimensions: ['reducedField'], bounds: NOT_NEGATIVE },
+        { key: 'yield', dimensions: ['number'], bounds: YIELD },
+      ]).optional(),
+    },
+    'typical, with the ends of its spread; or a table against E/N at the cathode, with factors for the ends. low and high default: no spread',
+  )
+    .check(
+      across((_, report, { typical, table }) => {
+        if (typical !== undefined && table !== undefined)
+          report(['table'], 'either typical or table', { code: 'either-or', found: 'typical and table' });
+        if (typical === undefined && table === undefined)
+          report(['typical'], 'typical, required without table', { code: 'missing-key', found: 'nothing' });
+      }),
+    )
+    .check(across(checkYieldSpread)) as unknown as z.ZodType<YieldInput>;
+}
+
+/** low ≤ typical ≤ high; beside a table low ≤ 1 ≤ high. */
+function checkYieldSpread({ low, typical, high }: Partial<YieldInput>, report: Report, given: Readonly<Record<string, unknown>>): void {
+  if (given.table !== undefined && given.typical === undefined) {
+    if (low !== undefined && low > 1) report(['low'], 'a factor on the table, not above 1', { code: 'inconsistent' });
+    if (high !== undefined && high < 1) report(['high'], 'a factor on the table, not below 1', { code: 'inconsistent' });
+    return;
+  }
+  if (given.table !== undefined) return;
+  if (high !== undefined && high > YIELD.max) report(['high'], `electrons per ion ${YIELD.text}`, { code: 'out-of-range' });
+  if (low !== undefined && typical !== undefined && low > typical)
+    report(['low'], 'a yield not above typical', { code: 'inconsistent', found: `${low} beside typical ${typical}` });
+  if (high !== undefined && typical !== undefined && high < typical)
+    report(['high'], 'a yield not below typical', { code: 'inconsistent', found: `${high} beside typical ${typical}` });
+  if (given.typical === undefined && low !== undefined && high !== undefined && low > high)
+    report(['low'], 'a yield not above high', { code: 'inconsistent', found: `${low} beside high ${high}` });
 }
 
 function seedSchema(): z.ZodType<CaseInput['seed']> {

@@ -16,6 +16,8 @@ gap:
 
 gas:
   name: argon                   # built-in data; \`gapwake gas\` lists them
+  # data: phelps-petrovic       # which set of it, where sources disagree; \`check\` says what the others give
+  # mixture: { argon: 0.9, nitrogen: 0.1 }      # instead of name: fractions that sum to 1
   pressure: 2 mbar
   temperature: 20 °C            # default 293.15 K
   # coefficients:               # your own, alone or in place of single built-in ones
@@ -26,6 +28,9 @@ gas:
 
 electrodes:                     # left is at x = 0, right at x = spacing
   left: { ion_yield: 0.02 }     # electrons per arriving ion; or { material: NAME } for a built-in yield
+  # left: { ion_yield: { low: 0.005, typical: 0.02, high: 0.08 } }    # with its spread
+  # left: { ion_yield: { table: { file: yield.csv, reduced_field: EN, yield: gamma }, low: 0.5, high: 2 } }   # against E/N at the cathode; low, high: factors
+  # left: { material: nickel, surface: technical }    # in argon, by the energy of its ions; or clean, also in other gases
   # right: { ion_yield: 0.02 }  # default: same as left
 
 seed:

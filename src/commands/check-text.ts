@@ -1,13 +1,16 @@
 import type { Case } from '../case.ts';
 import type { Coefficient, Provenance } from '../gases/gas.ts';
 import { gases } from '../gases/index.ts';
+import { mixtureNotes } from '../gases/mixture.ts';
+import type { YieldEnd } from '../onset/cautions/yield-ends.ts';
 import type { Caution } from '../onset/outcome.ts';
 import type { Surface } from '../surfaces/surface.ts';
-import { type Prospects, predict, type Theory } from '../theory/predict.ts';
+import type { Prospects, Theory } from '../theory/predict.ts';
 import { TOWNSEND, VACUUM_PERMITTIVITY } from '../units/constants.ts';
 import { VERSION } from '../version.ts';
 import type { LoadedCase } from './case-source.ts';
 import { cautionLines, lastLines } from './cautions-text.ts';
+import { gasUsed, type SetVoltage, yieldConsequences } from './check-spread.ts';
 import { coefficientsOf } from './coefficients.ts';
 import { columns, NO_BREAK, wrap } from './layout.ts';
 import { printable } from './printable.ts';
@@ -51,7 +54,7 @@ export function checkText(answer: CheckAnswer, terminal: Terminal): string {
     ...section(theoryTitle(voltage), theoryRows(answer)),
     '',
     style.strong('Where the numbers come from'),
-    ...sourceLines(settings, width),
+    ...sourceLines(settings, voltage, width),
   ];
   const cautions = cautionLines(answer.cautions, terminal);
   if (cautions.length > 0) lines.push('', style.strong('Cautions'), ...cautions);
@@ -68,7 +71,8 @@ export function caseRows({ case: settings, defaults }: LoadedCase): Row[] {
   };
   row('gap', 'gap.geometry', `planar, ${quantity(gap.spacing, 'm')} wide, ${quantity(gap.area, 'm^2')}`);
   row('longest path', 'gap.longest_path', quantity(gap.longestPath, 'm'));
-  row('gas', 'gas.name', gas.name === null ? "the case's own coefficients" : gas.name);
+  row('gas', 'gas.name', gas.name === null ? "the case's own coefficients" : gas.mixture ? `mixture: ${gas.name}` : gas.name);
+  if (gas.dataSet !== undefined) row('set of data', 'gas.data', gas.dataSet);
   row('pressure', 'gas.pressure', pressure(gas.pressure));
   row('temperature', 'gas.temperature', `${quantity(gas.temperature, 'K', 5)} (${quantity(gas.temperature - 273.15, '°C')})`);
   row('density', 'gas.density', `${quantity(gas.density, '1/m^3')}, computed`);
@@ -102,10 +106,16 @@ export function caseRows({ case: settings, defaults }: LoadedCase): Row[] {
   return rows;
 }
 
-function surface({ material, ionYield }: Surface): string {
-  const { typical, low, high } = ionYield;
-  const spread = low === high ? '' : ` (published: ${quantity(low, '')} to ${quantity(high, '')})`;
-  return `${material === null ? '' : `${material}, `}ion yield ${quantity(typical, '')}${spread}`;
+function surface({ material, condition, ionYield }: Surface): string {
+  const { typical, low, high, law, status } = ionYield;
+  const what = [material, condition === undefined ? null : `${condition} surface`].filter((word) => word !== null);
+  const ends = `${quantity(low, '')} to ${quantity(high, '')}`;
+  const spread = low === high ? '' : ` (${status === 'given' ? 'given' : 'published'}: ${ends})`;
+  const value =
+    law === undefined
+      ? `${quantity(typical, '')}${spread}`
+      : `${law.kind === 'ion-energy' ? 'by the energy of the ions at the wall' : 'by the field at the wall'}${low === high ? '' : `, times ${ends}`}`;
+  return [...what, `ion yield ${value}`].join(', ');
 }
 
 function programmeRows({ supply: { programme } }: Case, used: ReadonlySet<string>): Row[] {
@@ -153,8 +163,7 @@ function theoryRows({ loaded, voltage, theory, prospects }: CheckAnswer): Row[] 
         : `${quantity(threshold, 'V')}, known to ${percent(gas.breakdownUncertainty)}; E/N there ${reducedField(prospects.breakdownReducedField)}`,
     ],
   ];
-  const spread = spreadOverYield(settings, voltage);
-  if (spread !== null) rows.push(['V_s over the yields', spread]);
+  rows.push(...setRows(settings, voltage), ...yieldRows(settings, voltage));
   if (theory.upper_breakdown_voltage_V !== null)
     rows.push(['upper V_s', `${quantity(theory.upper_breakdown_voltage_V, 'V')}: above it the gap no longer sustains itself`]);
   if (settings.gap.longestPathGiven)
@@ -204,23 +213,39 @@ function sideOfMinimum({ pd_Pa_m, paschen_minimum_pd_Pa_m }: Theory): string {
   return pd_Pa_m < paschen_minimum_pd_Pa_m ? ', left of the minimum' : ', right of the minimum';
 }
 
-/** V_s at the ends of the cathode's published yields, null where there is no spread. */
-function spreadOverYield(settings: Case, voltage: number): string | null {
-  const side = voltage < 0 ? 'right' : 'left';
-  const { ionYield } = settings.electrodes[side];
-  if (ionYield.low === ionYield.high) return null;
-  const at = (typical: number): string => {
-    const surfaceThere = { ...settings.electrodes[side], ionYield: { ...ionYield, typical } };
-    const there = { ...settings, electrodes: { ...settings.electrodes, [side]: surfaceThere } };
-    const { static_breakdown_voltage_V } = predict(there, voltage);
-    return static_breakdown_voltage_V === null ? 'none' : quantity(static_breakdown_voltage_V, 'V');
-  };
-  return `${at(ionYield.high)} to ${at(ionYield.low)} (yield ${quantity(ionYield.high, '')} to ${quantity(ionYield.low, '')})`;
+/** V_s with the other sets of data of the gas, the lowest first; none where there is no choice. */
+function setRows(settings: Case, voltage: number): Row[] {
+  const sets = gasUsed(settings, voltage)?.sets ?? [];
+  if (sets.length < 2) return [];
+  const mixed = settings.gas.mixture !== undefined;
+  const known = sets.flatMap((one) => (one.breakdown === null ? [] : [one.breakdown]));
+  const text = ({ gas, set, used, breakdown }: SetVoltage): string =>
+    `${mixed ? `${gas} ` : ''}${set} ${breakdown === null ? 'none' : quantity(breakdown, 'V')}${used && !mixed ? ' (used)' : ''}`;
+  const ends = known.length === 0 ? 'none' : `${quantity(Math.min(...known), 'V')} to ${quantity(Math.max(...known), 'V')}`;
+  const order = sets.toSorted((a, b) => (a.breakdown ?? Number.POSITIVE_INFINITY) - (b.breakdown ?? Number.POSITIVE_INFINITY));
+  return [['V_s over the data sets', `${ends}: ${order.map(text).join(', ')}`]];
+}
+
+/** What the spread of the cathode's yield does to V_s and to the time to space charge; none where the yield is one number. */
+function yieldRows(settings: Case, voltage: number): Row[] {
+  const spread = yieldConsequences(settings, voltage);
+  if (spread === null) return [];
+  const { low, typical, high, byLaw, decides, timeAtLow, timeAtHigh } = spread;
+  const at = ({ breakdown }: YieldEnd): string => (breakdown === null ? 'none' : quantity(breakdown, 'V'));
+  const ends = `${quantity(high.given, '')} to ${quantity(low.given, '')}`;
+  const law = typical.atBreakdown === null ? 'its law' : `its law, ${quantity(typical.atBreakdown, '')} at V_s`;
+  const rows: Row[] = [['V_s over the yields', `${at(high)} to ${at(low)} (yield ${byLaw ? `${ends} times ${law}` : ends})`]];
+  const time = (seconds: number | null): string => (seconds === null ? 'never' : quantity(seconds, 's'));
+  if (timeAtHigh !== null) rows.push(['space charge, by yield', `${time(timeAtHigh)} to ${time(timeAtLow)}`]);
+  if (decides) rows.push(['the yield decides', `whether the gap holds ${quantity(Math.abs(voltage), 'V')}: they lie between`]);
+  return rows;
 }
 
 /** Every coefficient and yield: how well it is known, where it holds, who says so. */
-function sourceLines(settings: Case, width: number): string[] {
+function sourceLines(settings: Case, voltage: number, width: number): string[] {
   const lines: string[] = [];
+  const used = gasUsed(settings, voltage);
+  if (used !== null) lines.push(...wrap(`Set ${used.set}: ${used.reason}`, width, '  ', '    '));
   const entry = (label: string, provenance: Provenance, holds: string): void => {
     const uncertainty = provenance.uncertainty === null ? 'uncertainty not stated' : `± ${percent(provenance.uncertainty)}`;
     lines.push(...wrap(`${label}: ${provenance.status}, ${uncertainty}${holds}`, width, '  ', '    '));
@@ -233,9 +258,14 @@ function sourceLines(settings: Case, width: number): string[] {
   if (!same) entry('ion yield, right', right.ionYield, '');
   if (lines.some((line) => line.includes('from memory (')))
     lines.push(...wrap('From memory: nobody here has read the text; confidence H high, M medium, L low.', width, '  '));
-  const notes = settings.gas.name === null ? [] : (gases[settings.gas.name]?.notes ?? []);
-  for (const note of notes) lines.push(...wrap(note, width, '  - ', '    '));
+  for (const note of notesOf(settings.gas)) lines.push(...wrap(note, width, '  - ', '    '));
   return lines;
+}
+
+/** What a reader must know of the gas, of a mixture of its rules. */
+function notesOf({ name, mixture }: Case['gas']): readonly string[] {
+  if (mixture !== undefined) return mixtureNotes(mixture.map((part) => part.gas));
+  return name === null ? [] : (gases[name]?.notes ?? []);
 }
 
 function rangeText({ range }: Coefficient): string {

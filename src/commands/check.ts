@@ -4,6 +4,7 @@ import { prognosisCautions } from '../onset/prognosis.ts';
 import { predict, prospects } from '../theory/predict.ts';
 import { VERSION } from '../version.ts';
 import { loadCase } from './case-source.ts';
+import { gasJson, yieldJson } from './check-spread.ts';
 import { checkText } from './check-text.ts';
 import type { CheckOptions } from './cli.ts';
 import { printableJson } from './printable.ts';
@@ -21,7 +22,17 @@ export function check(path: string, options: CheckOptions, terminal: Terminal): 
   );
   if (options.json) {
     const { title, sha256 } = settings;
-    const answer = { format: 'gapwake.check/1', title, version: VERSION, case_sha256: sha256, case: loaded.resolved, theory, cautions };
+    const spreads = { gas: gasJson(settings, voltage), ion_yield: yieldJson(settings, voltage) };
+    const answer = {
+      format: 'gapwake.check/1',
+      title,
+      version: VERSION,
+      case_sha256: sha256,
+      case: loaded.resolved,
+      theory,
+      ...spreads,
+      cautions,
+    };
     terminal.out(printableJson(answer));
   } else if (!options.quiet) {
     terminal.out(checkText({ loaded, path, voltage, theory, prospects: prospects(settings, voltage), cautions }, terminal));

@@ -1,7 +1,9 @@
 import type { Case } from '../case.ts';
+import { type YieldEnd, type YieldSpread, yieldSpread } from '../onset/cautions/yield-ends.ts';
 import type { Outcome, State, Stop } from '../onset/outcome.ts';
 import type { Prospects } from '../theory/predict.ts';
 import { cautionLines, lastLines } from './cautions-text.ts';
+import { yieldConsequences } from './check-spread.ts';
 import { columns, lengthOf, wrap } from './layout.ts';
 import { printable } from './printable.ts';
 import { currentDensity, field, percent, quantity } from './quantities.ts';
@@ -45,7 +47,7 @@ export function runText(answer: RunAnswer, terminal: Terminal): string {
     return [`first ${quantity(level_A, 'A')}`, '', when];
   });
   const lines = [
-    ...verdictLines(outcome, terminal),
+    ...verdictLines(answer, terminal),
     '',
     ...wrap(printable(settings.title), width).map(style.faint),
     ...columns([['', `theory at ${quantity(voltage, 'V')}`, 'simulated']], [LABELS, THEORY], width).map(style.strong),
@@ -60,17 +62,28 @@ export function runText(answer: RunAnswer, terminal: Terminal): string {
 
 const STATES: Readonly<Record<State, string>> = { holds: 'Holds', 'breaks-down': 'Breaks down', undecided: 'Undecided' };
 
-/** The word that counts stands out; "holds" is no colour of safety, because it is no clearance. */
-function verdictLines({ verdict }: Outcome, { style, width }: Terminal): string[] {
-  const { state, regime, reason } = verdict;
-  const word = `${STATES[state]}${state === 'breaks-down' ? ` (${regime})` : ''}:`;
+/** The word that counts stands out; "holds" is no colour of safety, because it is no clearance. Where the yield decides, the first sentence says that the verdict is that of the typical
+ *  one, and a second one what the ends make of it. */
+function verdictLines({ settings, outcome, voltage }: RunAnswer, { style, width }: Terminal): string[] {
+  const { state, regime, reason } = outcome.verdict;
+  const spread = yieldSpread(settings, voltage);
+  const typical = spread?.decides ? ' with the typical ion yield' : '';
+  const word = `${STATES[state]}${state === 'breaks-down' ? ` (${regime})` : ''}${typical}:`;
   const paint = { holds: style.strong, 'breaks-down': style.alarm, undecided: style.doubt }[state];
   const [first, ...rest] = wrap(printable(reason), width, `${word} `, '');
   // the word holds no part that wrapping could have broken
-  return [paint(word) + [...first].slice(lengthOf(word)).join(''), ...rest];
+  const lines = [paint(word) + [...first].slice(lengthOf(word)).join(''), ...rest];
+  return spread?.decides ? [...lines, ...wrap(whatYieldDecides(spread, voltage), width).map(style.doubt)] : lines;
 }
 
-function onsetRows({ settings, outcome, prospects }: RunAnswer): Row[] {
+function whatYieldDecides({ low, high, byLaw }: YieldSpread, voltage: number): string {
+  const known = byLaw ? `the law of the ion yield times ${quantity(high.given, '')}` : `an ion yield of ${quantity(high.given, '')}`;
+  const at = byLaw ? `times ${quantity(low.given, '')}` : `with ${quantity(low.given, '')}`;
+  const never = low.breakdown === null ? 'nowhere' : `at ${quantity(low.breakdown, 'V')}`;
+  return `The yield decides: with ${known} the gap breaks down at ${quantity(high.breakdown, 'V')}, ${at} ${never}; the ${quantity(Math.abs(voltage), 'V')} lie between (closed form, not simulated).`;
+}
+
+function onsetRows({ settings, outcome, voltage, prospects }: RunAnswer): Row[] {
   const { theory, onset } = outcome;
   const { threshold_time_s: threshold, space_charge_time_s: spaceCharge } = onset;
   const rows: Row[] = [
@@ -80,12 +93,22 @@ function onsetRows({ settings, outcome, prospects }: RunAnswer): Row[] {
       threshold === null ? 'not passed' : `passed at ${quantity(threshold, 's')}`,
     ],
   ];
+  const spread = yieldConsequences(settings, voltage);
+  if (spread !== null) {
+    const at = ({ breakdown }: YieldEnd): string => (breakdown === null ? 'none' : quantity(breakdown, 'V'));
+    rows.push(['  over the ion yields', `${at(spread.high)} to ${at(spread.low)}`, '']);
+  }
   if (theory.overvoltage !== null) rows.push(['overvoltage', percent(theory.overvoltage, true), '']);
   rows.push(['growth rate', quantity(theory.growth_rate_per_s, '1/s'), quantity(onset.growth_rate_per_s, '1/s')]);
   if (spaceCharge !== null) {
     const sinceThreshold =
       threshold === null ? `at ${quantity(spaceCharge, 's')}` : `${quantity(spaceCharge - threshold, 's')} after the threshold`;
-    rows.push(['space charge', sudden(settings, threshold, spaceCharge) ? quantity(prospects.timeToSpaceCharge, 's') : '', sinceThreshold]);
+    const isSudden = sudden(settings, threshold, spaceCharge);
+    rows.push(['space charge', isSudden ? quantity(prospects.timeToSpaceCharge, 's') : '', sinceThreshold]);
+    if (isSudden && spread !== null) {
+      const time = (seconds: number | null): string => (seconds === null ? 'never' : quantity(seconds, 's'));
+      rows.push(['  over the ion yields', `${time(spread.timeAtHigh)} to ${time(spread.timeAtLow)}`, '']);
+    }
   }
   if (onset.formative_lag_s !== null) {
     const end = onset.lag_ends_at === 'collapse' ? 'the collapse' : 'space charge';

@@ -48,6 +48,18 @@ export function curveOf(form: Form): Curve {
           form.blend,
         ),
       );
+    case 'mixed':
+      return form.mean === 'sum'
+        ? new WeightedSum(form.parts.map(({ fraction, form: part }) => ({ weight: fraction, curve: curveOf(part) })))
+        : new Pointwise(
+            harmonicMean(
+              form.parts.map(({ fraction, form: part, beside }) => ({
+                weight: fraction,
+                curve: curveOf(part),
+                beside: curveOf(beside ?? { kind: 'constant', value: 1 }),
+              })),
+            ),
+          );
   }
 }
 
@@ -162,6 +174,53 @@ class ExponentialSum implements Curve {
   }
 }
 
+/** Σ wₖ yₖ. */
+class WeightedSum implements Curve {
+  readonly constant: boolean;
+  readonly #parts: readonly { readonly weight: number; readonly curve: Curve }[];
+  #value = new Float64Array(0);
+  #slope = new Float64Array(0);
+  constructor(parts: readonly { readonly weight: number; readonly curve: Curve }[]) {
+    this.#parts = parts;
+    this.constant = parts.every(({ curve }) => curve.constant);
+  }
+  valueAt(x: number): number {
+    let y = 0;
+    for (const { weight, curve } of this.#parts) y += weight * curve.valueAt(x);
+    return y;
+  }
+  slopeAt(x: number): number {
+    let y = 0;
+    for (const { weight, curve } of this.#parts) y += weight * curve.slopeAt(x);
+    return y;
+  }
+  fill(x: Float64Array, n: number, factor: number, value: Float64Array): void {
+    this.#makeRoom(n);
+    value.fill(0, 0, n);
+    for (const { weight, curve } of this.#parts) {
+      curve.fill(x, n, factor * weight, this.#value);
+      for (let i = 0; i < n; i++) value[i] += this.#value[i];
+    }
+  }
+  fillWithSlope(x: Float64Array, n: number, factor: number, value: Float64Array, slope: Float64Array): void {
+    this.#makeRoom(n);
+    value.fill(0, 0, n);
+    slope.fill(0, 0, n);
+    for (const { weight, curve } of this.#parts) {
+      curve.fillWithSlope(x, n, factor * weight, this.#value, this.#slope);
+      for (let i = 0; i < n; i++) {
+        value[i] += this.#value[i];
+        slope[i] += weight * this.#slope[i];
+      }
+    }
+  }
+  #makeRoom(n: number): void {
+    if (this.#value.length >= n) return;
+    this.#value = new Float64Array(n);
+    this.#slope = new Float64Array(n);
+  }
+}
+
 interface Pair {
   readonly y: (x: number) => number;
   readonly dy: (x: number) => number;
@@ -215,6 +274,30 @@ function fallingForm(low: number, scale: number, power: number, fall: number): P
       return (-low * fall * (1 + u) ** (-fall - 1) * power * u) / x;
     },
   };
+}
+
+/** Σ (w/b) / Σ (w/(b y)); 0 where a part is 0. */
+function harmonicMean(parts: readonly { readonly weight: number; readonly curve: Curve; readonly beside: Curve }[]): Pair {
+  const at = (x: number): { y: number; dy: number } => {
+    let above = 0;
+    let below = 0;
+    let dAbove = 0;
+    let dBelow = 0;
+    for (const { weight, curve, beside } of parts) {
+      const y = curve.valueAt(x);
+      if (!(y > 0)) return { y: 0, dy: 0 };
+      const b = beside.valueAt(x);
+      const share = weight / b;
+      const dShare = (-share * beside.slopeAt(x)) / b;
+      above += share;
+      dAbove += dShare;
+      below += share / y;
+      dBelow += dShare / y - (share * curve.slopeAt(x)) / (y * y);
+    }
+    const y = above / below;
+    return { y, dy: (dAbove - y * dBelow) / below };
+  };
+  return { y: (x) => at(x).y, dy: (x) => at(x).dy };
 }
 
 /** ln y against 1/x, monotone cubic; K exp(−B/x) of the first two rows below them, the last value above. */

@@ -23,4 +23,12 @@ export type Form =
    *  interpolated as y against ln x and keep their end values */
   | { readonly kind: 'table'; readonly law: 'growth' | 'plain'; readonly x: readonly number[]; readonly y: readonly number[] }
   /** pieces in rising order of `from` (the first from 0); joined over `blend` (relative width of x) around each joint */
-  | { readonly kind: 'joined'; readonly pieces: readonly { readonly from: number; readonly form: Form }[]; readonly blend: number };
+  | { readonly kind: 'joined'; readonly pieces: readonly { readonly from: number; readonly form: Form }[]; readonly blend: number }
+  /** a mean over gases mixed by their fractions, each at the same x.
+   *  `sum`: Σ fₖ yₖ; `harmonic`: Σ (fₖ/bₖ) / Σ (fₖ/(bₖ yₖ)), with b from `beside` (1 where left out): Blanc's law, 1/y = Σ fₖ/yₖ for Σ fₖ = 1 without it.
+   *  0 where a harmonic mean meets a part that is 0 */
+  | {
+      readonly kind: 'mixed';
+      readonly mean: 'sum' | 'harmonic';
+      readonly parts: readonly { readonly fraction: number; readonly form: Form; readonly beside?: Form }[];
+    };

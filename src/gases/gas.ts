@@ -73,10 +73,22 @@ export interface GasData {
   readonly kineticCrossSection: number;
 }
 
+/** One gas of a mixture. */
+export interface MixturePart {
+  /** built-in name */
+  readonly gas: string;
+  /** share of the density, 0 < fraction < 1; all of them sum to 1 */
+  readonly fraction: number;
+}
+
 /** The gas of one case. */
 export interface Gas {
-  /** built-in name, or null when every coefficient is the user's own */
+  /** built-in name, of a mixture the words for it, or null when every coefficient is the user's own */
   readonly name: string | null;
+  /** the set of data of a built-in gas that was taken; a name only, the data are in `coefficients` */
+  readonly dataSet?: string;
+  /** the gases of a mixture, by name; absent where there is none */
+  readonly mixture?: readonly MixturePart[];
   /** [Pa] */
   readonly pressure: number;
   /** [K] */

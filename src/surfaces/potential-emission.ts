@@ -1,15 +1,16 @@
+import { levelsOf } from '../gases/levels.ts';
 import type { IonYield } from './surface.ts';
 
-/** Energy set free when the ion that carries the current takes up an electron [eV]: ionisation energies, NIST standard tables (from memory, H). */
-const ENERGIES: Readonly<Record<string, { readonly ion: string; readonly energy: number }>> = {
-  helium: { ion: 'He+', energy: 24.59 },
-  neon: { ion: 'Ne+', energy: 21.56 },
-  argon: { ion: 'Ar+', energy: 15.76 },
-  krypton: { ion: 'Kr+', energy: 14.0 },
-  xenon: { ion: 'Xe+', energy: 12.13 },
-  nitrogen: { ion: 'N2+', energy: 15.58 },
-  oxygen: { ion: 'O2+', energy: 12.07 },
-  'carbon dioxide': { ion: 'CO2+', energy: 13.77 },
+/** The ion that carries the current, where it reaches the wall as it was made; the energy set free when it takes up an electron is the gas's ionisation energy. */
+const IONS: Readonly<Record<string, string>> = {
+  helium: 'He+',
+  neon: 'Ne+',
+  argon: 'Ar+',
+  krypton: 'Kr+',
+  xenon: 'Xe+',
+  nitrogen: 'N2+',
+  oxygen: 'O2+',
+  'carbon dioxide': 'CO2+',
 };
 
 /** Slow ions on atomically clean metal, measured: Hagstrum, Phys. Rev. 96, 325, 1954 and 104, 317, 1956. */
@@ -44,20 +45,20 @@ export function cleanYield(material: string, workFunction: number | null, gas: s
       typical,
       low: typical / 1.3,
       high: typical * 1.3,
-      source: `${ENERGIES[gas].ion} on clean ${material}: Hagstrum, Phys. Rev. 96, 325, 1954 and 104, 317, 1956`,
+      source: `${IONS[gas]} on clean ${material}: Hagstrum, Phys. Rev. 96, 325, 1954 and 104, 317, 1956`,
       status: measured.status,
       uncertainty: 0.3,
     };
   }
-  if (workFunction === null || !Object.hasOwn(ENERGIES, gas)) return null;
-  const { ion, energy } = ENERGIES[gas];
+  const energy = levelsOf(gas)?.ionisation;
+  if (workFunction === null || energy === undefined || !Object.hasOwn(IONS, gas)) return null;
   const typical = potentialEmission(energy, workFunction);
   if (typical < LEAST) return null;
   return {
     typical,
     low: typical / 2,
     high: typical * 2,
-    source: `${ion} on clean ${material} by potential emission, 0.032 (0.78 E_i − 2 φ) (form of Kishinevsky and of Baragiola et al., from memory, H), E_i ${energy} eV, φ ${workFunction} eV`,
+    source: `${IONS[gas]} on clean ${material} by potential emission, 0.032 (0.78 E_i − 2 φ) (form of Kishinevsky and of Baragiola et al., from memory, H), E_i ${energy} eV, φ ${workFunction} eV`,
     status: 'computed',
     uncertainty: 0.5,
   };

@@ -18,4 +18,6 @@ export interface Surface {
   readonly ionYield: IonYield;
   /** [eV], null where unknown */
   readonly workFunction: number | null;
+  /** the condition that a case asked for; absent where it took the material's own row or gave a yield */
+  readonly condition?: 'clean' | 'technical';
 }

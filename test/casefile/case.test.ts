@@ -63,6 +63,7 @@ numerics:   { cells: 150, tolerance: 1e-3 }
     expect(Object.fromEntries(defaults.map((d) => [d.path, d.value]))).toEqual({
       title: 'case.yaml',
       'gap.longest_path': 'gap.spacing',
+      'gas.data': 'phelps-petrovic',
       'gas.temperature': '293.15 K',
       'electrodes.right': 'same as left',
       'electrons.closure': 'local-field',
@@ -316,16 +317,23 @@ describe('what ships with the reader', () => {
     expect(good(caseTemplate()).case.gas.name).toBe('argon');
     // every optional entry that fits beside the others, uncommented
     const full = caseTemplate().replace(
-      /^( *)# ((?: {2})*(?:coefficients|ionisation|electron_mobility|ion_mobility|reference_temperature|right|electrons|current_limit|trip|initial_gap_voltage|numerics):)/gm,
+      /^( *)# ((?: {2})*(?:data|coefficients|ionisation|electron_mobility|ion_mobility|reference_temperature|right|electrons|current_limit|trip|initial_gap_voltage|numerics):)/gm,
       '$1$2',
     );
-    // two lines of introduction, the ramp and the table; scan and history
+    // two lines of introduction, a mixture, three other yields, the ramp and the table; scan and history
     const [gap, studies] = full.split(/(?=^# scan:)/m);
-    expect(gap.match(/^ *# /gm)?.length).toBe(4);
+    expect(gap.match(/^ *# /gm)?.length).toBe(8);
     const { case: c, defaults } = good(gap);
     expect(c.supply.trip).not.toBeNull();
     expect(c.gas.coefficients.ionisation.status).toBe('given');
     expect(defaults).toEqual([]);
+    const mixture = gap.replace(/^ {2}(name|data): .*\n/gm, '').replace('# mixture:', 'mixture:');
+    expect(good(mixture).case.gas.mixture?.map((part) => part.gas)).toEqual(['argon', 'nitrogen']);
+    for (const [, left] of gap.matchAll(/^ {2}# left: (.*?) *(?:#.*)?$/gm)) {
+      const other = gap.replace(/^ {2}left: .*$/m, `  left: ${left}`).replace(/^ {2}right: .*$/m, '');
+      const { ionYield } = good(other, [], { 'yield.csv': 'EN [Td],gamma\n100,0.01\n500,0.02\n' }).case.electrodes.left;
+      expect(ionYield.high).toBeGreaterThan(ionYield.low);
+    }
     const all = good(gap + studies.replace(/^# /gm, ''));
     expect(all.scan?.find?.what).toBe('hold-off');
     expect(all.window?.history.pressure.kind).toBe('bay');

@@ -176,7 +176,7 @@ const AXES: Row[] = [
     15,
     'wrong-type',
     'the path of a quantity',
-    'gas, a mapping with the keys name, pressure',
+    'gas, a mapping with the keys name, data, mixture, pressure',
     null,
   ],
   [

@@ -91,7 +91,8 @@ describe('--set PATH=VALUE', () => {
     );
     expect(problem(GOOD, ['gap.sizee=5 V'])).toMatchObject({ file: '--set gap.sizee', code: 'unknown-key' });
     expect(problem(GOOD, ['gap.spacing='])).toMatchObject({ file: '--set gap.spacing', code: 'missing-key' });
-    expect(problem(GOOD, ['gas.mixture=[]'])).toMatchObject({ file: '--set gas.mixture', code: 'not-supported-yet' });
+    expect(problem(GOOD, ['gas.mixture=[]'])).toMatchObject({ file: '--set gas.mixture', code: 'wrong-type' });
+    expect(problem(GOOD, ['seed.gas_ionisation=[]'])).toMatchObject({ file: '--set seed.gas_ionisation', code: 'not-supported-yet' });
     // a mistake of the file beside one of an argument keeps its own place
     expect(problems(GOOD.replace('12 cm^2', '12'), ['gap.spacing=5']).map((p) => `${p.file}:${p.line}`)).toEqual([
       'case.yaml:5',

@@ -104,7 +104,7 @@ describe('check --json', () => {
     const { code, out, err } = await program.run(['check', '--json', program.write('open.yaml', openCase())]);
     expect({ code, err }).toEqual({ code: 0, err: '' });
     const answer = JSON.parse(out);
-    expect(Object.keys(answer)).toEqual(['format', 'title', 'version', 'case_sha256', 'case', 'theory', 'cautions']);
+    expect(Object.keys(answer)).toEqual(['format', 'title', 'version', 'case_sha256', 'case', 'theory', 'gas', 'ion_yield', 'cautions']);
     expect(answer.format).toBe('gapwake.check/1');
     expect(answer.case_sha256).toMatch(/^[0-9a-f]{64}$/);
     expect(answer.case['gap.spacing']).toBe(0.01);

@@ -26,6 +26,8 @@ export interface Target {
   readonly momentum: Rows;
   readonly losses: readonly Loss[];
   readonly ionisation: Loss;
+  /** ionisation of the other gases of a mixture */
+  readonly alsoIonised?: readonly Loss[];
   readonly attachment?: Rows;
 }
 
@@ -54,6 +56,24 @@ export function crossSection(rows: Rows, e: number): number {
   return y0 * (y1 / y0) ** (Math.log(e / x0) / Math.log(x1 / x0)) * 1e-20;
 }
 
+/** What electrons meet in gases mixed by fraction: cross-sections add up, each times its fraction. No gas hands on what it was excited with. */
+export function mixed(parts: readonly (readonly [Target, number])[]): Target {
+  const together = (rowsOf: (target: Target) => Rows): Rows => {
+    const energies = [...new Set(parts.flatMap(([target]) => rowsOf(target).map(([e]) => e)))].sort((a, b) => a - b);
+    return energies.map((e) => [e, parts.reduce((sum, [target, f]) => sum + f * crossSection(rowsOf(target), e) * 1e20, 0)]);
+  };
+  const thinned = ({ threshold, rows }: Loss, f: number): Loss => ({ threshold, rows: rows.map(([e, q]) => [e, f * q] as const) });
+  const [ionisation, ...alsoIonised] = parts.map(([target, f]) => thinned(target.ionisation, f));
+  return {
+    mass: 1 / parts.reduce((sum, [target, f]) => sum + f / target.mass, 0),
+    momentum: together((target) => target.momentum),
+    losses: parts.flatMap(([target, f]) => target.losses.map((loss) => thinned(loss, f))),
+    ionisation,
+    alsoIonised,
+    attachment: together((target) => target.attachment ?? [[1, 0]]),
+  };
+}
+
 /** Transport at E/N [Td], on `cells` equal cells up to `top` [eV]. */
 export function swarm(target: Target, td: number, top: number, cells: number): Swarm {
   const EN = td * 1e-21;
@@ -62,7 +82,11 @@ export function swarm(target: Target, td: number, top: number, cells: number): S
   const h = top / cells;
   const centre = Float64Array.from({ length: cells }, (_, i) => (i + 0.5) * h);
   const edge = Float64Array.from({ length: cells }, (_, i) => (i === 0 ? 1 : crossSection(target.momentum, i * h)));
-  const ionise = centre.map((e) => crossSection(target.ionisation.rows, e));
+  const ionisations = [target.ionisation, ...(target.alsoIonised ?? [])].map(({ threshold, rows }) => ({
+    threshold,
+    q: centre.map((e) => crossSection(rows, e)),
+  }));
+  const ionise = centre.map((_, j) => ionisations.reduce((sum, { q }) => sum + q[j], 0));
   const attach = centre.map((e) => (target.attachment ? crossSection(target.attachment, e) : 0));
   const losses = target.losses.map((loss) => ({ threshold: loss.threshold, q: centre.map((e) => crossSection(loss.rows, e)) }));
   let growth = 0;
@@ -90,7 +114,7 @@ export function swarm(target: Target, td: number, top: number, cells: number): S
         A[j][j] += e * loss.q[j];
         deposit(A, j, Math.max(0, (e - loss.threshold) / h - 0.5), e * loss.q[j]);
       }
-      if (ionise[j] > 0) deposit(A, j, Math.max(0, (e - target.ionisation.threshold) / 2 / h - 0.5), 2 * e * ionise[j]);
+      for (const { threshold, q } of ionisations) if (q[j] > 0) deposit(A, j, Math.max(0, (e - threshold) / 2 / h - 0.5), 2 * e * q[j]);
     }
     for (let j = 0; j < cells; j++) A[0][j] = Math.sqrt(centre[j]) * h; // normalisation replaces one balance
     const F = solveHessenberg(A);

@@ -377,7 +377,7 @@ describe('yield-spread', () => {
     const list = beforeRun({ electrodes: both(surface(0.07, 0.02, 0.16)), supply: { programme: step(200) } });
     expect(find(list, 'yield-spread')).toEqual({
       code: 'yield-spread',
-      text: `The ion yield is known only to lie between 0.02 and 0.16 (0.07 taken): the breakdown voltage is ${V(0.16).toPrecision(3)} V to ${V(0.02).toPrecision(3)} V, and the 200 V here lie within.`,
+      text: `The ion yield is known only to lie between 0.02 and 0.16 (0.07 taken): the breakdown voltage is ${V(0.16).toPrecision(3)} V to ${V(0.02).toPrecision(3)} V, and the 200 V here lie within, so the verdict depends on the yield.`,
       value: 8,
     });
     const above = beforeRun({ electrodes: both(surface(0.07, 0.02, 0.16)), supply: { programme: step(400) } });

@@ -1,7 +1,6 @@
-import type { Case } from '../../case.ts';
-import { limitsOf } from '../../theory/predict.ts';
 import { amperes, volts } from '../words.ts';
 import type { Evidence, Raise } from './evidence.ts';
+import { yieldSpread } from './yield-ends.ts';
 
 /** What the cathode does to a discharge beyond the model, and how well its yield is known. */
 export function ofCathode(evidence: Evidence, raise: Raise): void {
@@ -26,29 +25,22 @@ export function ofCathode(evidence: Evidence, raise: Raise): void {
 }
 
 function ofYield({ settings, voltage }: Evidence, raise: Raise): void {
-  const side = voltage < 0 ? 'right' : 'left';
-  const { low, high, typical } = settings.electrodes[side].ionYield;
-  if (!(high > low * 1.001)) return;
-  const highest = thresholdWith(settings, side, low);
-  const lowest = thresholdWith(settings, side, high);
-  const applied = Math.abs(voltage);
-  const within = lowest !== null && applied >= lowest && applied < (highest ?? Infinity);
-  raise(
-    'yield-spread',
-    `The ion yield is known only to lie between ${low} and ${high} (${typical} taken): the breakdown voltage is ${spread(lowest, highest)}${within ? `, and the ${volts(applied)} here lie within` : ''}.`,
-    high / low,
-  );
+  const spread = yieldSpread(settings, voltage);
+  if (spread === null) return;
+  const { low, typical, high, byLaw, decides } = spread;
+  const at = typical.atBreakdown;
+  const known = byLaw
+    ? `The ion yield, a law of the field${at === null ? '' : ` that gives ${Number(at.toPrecision(2))} at breakdown`}, is known only to a factor of ${short(low.given)} to ${short(high.given)}`
+    : `The ion yield is known only to lie between ${low.given} and ${high.given} (${typical.given} taken)`;
+  const within = decides ? `, and the ${volts(Math.abs(voltage))} here lie within, so the verdict depends on the yield` : '';
+  raise('yield-spread', `${known}: the breakdown voltage is ${range(high.breakdown, low.breakdown)}${within}.`, high.given / low.given);
 }
 
-function spread(lowest: number | null, highest: number | null): string {
+function short(factor: number): number {
+  return Number(factor.toPrecision(2));
+}
+
+function range(lowest: number | null, highest: number | null): string {
   if (lowest === null) return 'none even at the high end';
   return highest === null ? `${volts(lowest)} at the high end and none at the low end` : `${volts(lowest)} to ${volts(highest)}`;
-}
-
-/** V_s with another yield of one electrode as cathode. */
-function thresholdWith(settings: Case, side: 'left' | 'right', ionYield: number): number | null {
-  const surface = settings.electrodes[side];
-  const changed = { ...surface, ionYield: { ...surface.ionYield, typical: ionYield } };
-  const there: Case = { ...settings, electrodes: { left: changed, right: changed } };
-  return limitsOf(there, 1).threshold.breakdown;
 }

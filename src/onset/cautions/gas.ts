@@ -1,3 +1,5 @@
+import { penningPairs } from '../../gases/levels.ts';
+import { penningText } from '../../gases/mixture.ts';
 import { TOWNSEND } from '../../units/constants.ts';
 import { metres, percent, volts } from '../words.ts';
 import type { Evidence, Raise } from './evidence.ts';
@@ -19,6 +21,7 @@ const DENSE_GAS = 26.7;
 export function ofGas(evidence: Evidence, raise: Raise): void {
   ofData(evidence, raise);
   ofPaschenCurve(evidence, raise);
+  ofMixture(evidence, raise);
   const { settings, theory, prospects } = evidence;
   const path = 1 / (settings.gas.density * (settings.gas.kineticCrossSection ?? TYPICAL_CROSS_SECTION));
   if (path > COLLISIONLESS * settings.gap.spacing) {
@@ -64,6 +67,34 @@ function ofData({ settings, prospects, found }: Evidence, raise: Raise): void {
     'outside-range',
     `E/N at the breakdown voltage, ${at} Td, lies outside the data of ionisation (${from} to ${to} Td): that voltage is extrapolated.`,
     x / TOWNSEND,
+  );
+}
+
+/** A mixture is built by rules, which no measurement of it stands behind; Penning pairs by name, since they fire below V_s. */
+function ofMixture({ settings: { gas } }: Evidence, raise: Raise): void {
+  if (gas.mixture === undefined) return;
+  const names = gas.mixture.map((part) => part.gas);
+  if (gas.coefficients.ionisation.status === 'given') {
+    raise(
+      'mixture',
+      'The gas is a mixture whose ionisation the case gives; what else is needed follows from its gases by mixing rules.',
+      names.length,
+    );
+    return;
+  }
+  const pairs = penningPairs(names);
+  if (pairs.length > 0) {
+    raise(
+      'mixture',
+      `${penningText(pairs)}. The mixing rule leaves it out: the mixture may break down far below V_s, with a trace of the second gas at half of it; give measured ionisation of the mixture or a wide margin.`,
+      names.length,
+    );
+    return;
+  }
+  raise(
+    'mixture',
+    `The coefficients of the mixture follow from those of its gases by mixing rules at equal E/N, not from measurements: V_s is known to ${percent(gas.breakdownUncertainty)}.`,
+    names.length,
   );
 }
 
