@@ -3,7 +3,7 @@ import type { WindowRequest } from '../../src/scan/window-session.ts';
 import { answerOf, followWindow, type WindowOutcome, windowOutcome } from '../../src/search/window/index.ts';
 import { simulateNow } from '../../src/simulate.ts';
 
-/** A quick case: own coefficients, V_s = 209.274 V at 3 Torr, the Paschen minimum of 111 V at 0.62 Torr; 230 V while a balloon climbs from 20 to 40 km. */
+/** A quick case: own coefficients, V_s = 209.274 V at 3 Torr, the Paschen minimum of 111 V at 0.62 Torr; 230 V while a balloon climbs from 20 to 50 km. */
 export function climbing(more = 'voltage: 230 V', supply = 'step: 230 V'): string {
   return `title: Climbing
 gap: { geometry: planar, spacing: 1 cm, area: 10 cm^2 }
@@ -27,7 +27,7 @@ observe: { until: 2 ms }
 numerics: { cells: 50 }
 history:
   duration: 200 s
-  pressure: { ascent: { from: 20 km, to: 40 km, rate: 100 m/s } }
+  pressure: { ascent: { from: 20 km, to: 50 km, rate: 150 m/s } }
   ${more}
 `;
 }
