@@ -4,7 +4,14 @@ import { pathText, resolve, type SourceDocument } from './document.ts';
 import type { Problem } from './problem.ts';
 
 /** Either-ors of a case: setting a key of one arm removes the keys of the others. The path may hold `*` for any key. */
-const EITHER_OR: readonly { readonly pattern: readonly string[]; readonly arms: readonly (readonly string[])[] }[] = [
+interface EitherOr {
+  readonly pattern: readonly string[];
+  readonly arms: readonly (readonly string[])[];
+  /** keys that go with the arm that is removed: they mean something else beside another one */
+  readonly with: readonly string[];
+}
+
+const EITHER_OR: readonly EitherOr[] = [
   { at: 'supply.voltage', arms: [['step', 'rise_time'], ['ramp'], ['table']] },
   { at: 'gas.coefficients.ionisation', arms: [['form', 'A', 'B', 'C', 'D'], ['table']] },
   { at: 'gas.coefficients.attachment', arms: [['form', 'A', 'B', 'C', 'D'], ['table']] },
@@ -27,16 +34,14 @@ const EITHER_OR: readonly { readonly pattern: readonly string[]; readonly arms: 
   { at: 'history.pressure.bay.outside', arms: [['pressure'], ['table'], ['ascent']] },
   { at: 'gas', arms: [['name', 'data'], ['mixture']] },
   { at: 'electrodes.*', arms: [['material', 'surface'], ['ion_yield']] },
-  // low and high are yields beside one, factors beside the other: they go with either
-  {
-    at: 'electrodes.*.ion_yield',
-    arms: [
-      ['typical', 'low', 'high'],
-      ['table', 'low', 'high'],
-    ],
-  },
+  // low and high are yields beside one, factors beside the other
+  { at: 'electrodes.*.ion_yield', arms: [['typical'], ['table']], with: ['low', 'high'] },
   { at: 'gas.coefficients.*', arms: [['value'], ['K0'], ['table']] },
-].map(({ at, arms }) => ({ pattern: at.split('.'), arms }));
+].map(({ at, arms, with: meaning = [] }: { at: string; arms: string[][]; with?: string[] }) => ({
+  pattern: at.split('.'),
+  arms,
+  with: meaning,
+}));
 
 /** Applies `--set PATH=VALUE` arguments, in order, to a parsed case.
  *
@@ -168,15 +173,17 @@ function remove(document: SourceDocument, keys: readonly string[]): string | nul
 }
 
 function removeOtherArms(map: { items: Pair<unknown, unknown>[] }, here: readonly string[], key: string): void {
-  const others = otherArms(here, key);
+  const others = otherArms(here, key, (other) => map.items.some((p) => isScalar(p.key) && p.key.value === other));
   if (others.length > 0) map.items = map.items.filter((p) => !(isScalar(p.key) && others.includes(String(p.key.value))));
 }
 
-/** The keys that must go when `key` is set in the mapping at a path. */
-export function otherArms(here: readonly string[], key: string): readonly string[] {
-  return EITHER_OR.flatMap(({ pattern, arms }) => {
+/** The keys that must go when `key` is set in the mapping at a path.
+ *  @param has  which keys the mapping holds */
+export function otherArms(here: readonly string[], key: string, has: (key: string) => boolean): readonly string[] {
+  return EITHER_OR.flatMap(({ pattern, arms, with: meaning }) => {
     if (pattern.length !== here.length || !pattern.every((p, i) => p === '*' || p === here[i])) return [];
-    return arms.some((arm) => arm.includes(key)) ? arms.filter((arm) => !arm.includes(key)).flat() : [];
+    const others = arms.some((arm) => arm.includes(key)) ? arms.filter((arm) => !arm.includes(key)).flat() : [];
+    return others.some(has) ? [...others, ...meaning] : others;
   });
 }
 

@@ -24,7 +24,8 @@ export function setPlain(root: Plain, keys: readonly string[], value: unknown): 
     }
     const there = typeof parent === 'object' && parent !== null ? (parent as Plain) : {};
     const copy: Record<string, unknown> = { ...there };
-    for (const other of otherArms(keys.slice(0, depth), key)) if (Object.hasOwn(copy, other)) delete copy[other];
+    const others = otherArms(keys.slice(0, depth), key, (other) => Object.hasOwn(copy, other));
+    for (const other of others) if (Object.hasOwn(copy, other)) delete copy[other];
     copy[key] = into(there[key], depth + 1);
     return copy;
   };

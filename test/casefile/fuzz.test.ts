@@ -3,7 +3,7 @@ import { describe, expect, it } from 'vitest';
 import { caseTemplate, formatProblem } from '../../src/casefile/index.ts';
 import { following, GOOD, OWN_GAS, read, varied } from './help.ts';
 
-const TABLES = { 'bias.csv': 't [s],bias [V]\n0,0\n1,5\n', 'odd.csv': '",[]#\n\u0000,,\n' };
+const TABLES = { 'bias.csv': 't [s],bias [V]\n0,0\n1,5\n', 'yield.csv': 'EN [Td],gamma\n9,0.1\n99,0.2\n', 'odd.csv': '",[]#\n\u0000,,\n' };
 const SETS = {
   'log.h5:/p': { ok: true, values: Float64Array.of(1, 2), units: 'Pa' },
   'log.h5:/t': { ok: true, values: Float64Array.of(1, 2), units: 's' },
@@ -19,7 +19,20 @@ const STUDIES = [
   ),
   following('{ dataset: { file: log.h5, dataset: /p, time: /t } }', ''),
 ];
-const TEXTS = [GOOD, OWN_GAS, caseTemplate(), GOOD.replace('step: 420 V', 'table: { file: bias.csv, time: t, voltage: bias }'), ...STUDIES];
+const CHOICES = [
+  GOOD.replace('name: argon', 'mixture: { argon: 0.9, nitrogen: 10 %, "carbon dioxide": 0 }'),
+  GOOD.replace('name: argon', 'name: helium\n  data: raizer').replace('0.02', '{ low: 0.01, typical: 0.02, high: 0.08 }'),
+  GOOD.replace('{ ion_yield: 0.02 }', '{ material: nickel, surface: clean }'),
+  GOOD.replace('0.02', '{ table: { file: yield.csv, reduced_field: EN, yield: gamma }, low: 0.5, high: 2 }'),
+];
+const TEXTS = [
+  ...CHOICES,
+  GOOD,
+  OWN_GAS,
+  caseTemplate(),
+  GOOD.replace('step: 420 V', 'table: { file: bias.csv, time: t, voltage: bias }'),
+  ...STUDIES,
+];
 
 /** Reads a text and checks what must hold of any answer. */
 function survives(text: string, overrides: string[] = []): void {
@@ -108,6 +121,10 @@ const scrap = fc.oneof(
     'length: 5',
     'K0',
     'form: root',
+    'mixture: {',
+    'argon: 1',
+    'surface: clean',
+    'typical: 0.1',
   ),
   fc.string({ unit: 'binary', maxLength: 6 }),
 );
@@ -141,7 +158,7 @@ describe('no text crashes, hangs or throws', () => {
   });
 
   it('any value anywhere', () => {
-    const places = [GOOD, ...STUDIES].flatMap((text) => [...text.matchAll(/\b(\w+):/g)].map((m) => ({ text, key: m[1] })));
+    const places = [GOOD, ...CHOICES, ...STUDIES].flatMap((text) => [...text.matchAll(/\b(\w+):/g)].map((m) => ({ text, key: m[1] })));
     fc.assert(
       fc.property(fc.constantFrom(...places), fc.json({ maxDepth: 3 }), ({ text, key }, json) =>
         survives(text.replace(new RegExp(`\\b(${key}:)( *[^,{}\\n\\[\\]]*)`), `$1 ${json.replaceAll('$', '$$$$')}`)),
@@ -159,6 +176,12 @@ describe('no text crashes, hangs or throws', () => {
         'observe.currents.0',
         'gas.coefficients.ionisation.C',
         'electrodes.left',
+        'electrodes.left.ion_yield',
+        'electrodes.left.ion_yield.table',
+        'electrodes.left.surface',
+        'gas.mixture',
+        'gas.mixture.argon',
+        'gas.data',
         'scan',
         'scan.vary.0.path',
         'scan.vary.0.values',
