@@ -4,6 +4,7 @@ import type { Case } from '../../src/case.ts';
 import { followWindow, type WindowAnswer } from '../../src/search/window/follow.ts';
 import type { State } from '../../src/search/window/states.ts';
 import type { WindowSettings } from '../../src/study.ts';
+import { FLOW_GASES } from '../../src/surroundings/flow-gas.ts';
 import {
   type Analytic,
   analytic,
@@ -179,7 +180,7 @@ describe('a pressure that passes the minimum twice', () => {
       [4323, 100 * bottom],
       [T, 100 * bottom],
     ] as const;
-    const answer = await follow(paschenCase(one), { history: pressures(points), voltage: 300, margin: 1.2 }, analytic(one));
+    const answer = await follow(paschenCase(one), { history: pressures(points), voltage: 300, margin: 1 }, analytic(one));
     const N = densityAt(300, one.typical, 'right');
     const [[from, to], ...others] = windows(answer, 'breaks-down');
     expect(others).toEqual([]);
@@ -187,6 +188,51 @@ describe('a pressure that passes the minimum twice', () => {
     // to a fifth of its own length
     expect(Math.abs(from - opens)).toBeLessThan(0.2 * (closes - opens));
     expect(Math.abs(to - closes)).toBeLessThan(0.2 * (closes - opens));
+    expect(Math.abs((answer.lowest?.holdOff ?? 0) / minimum(one.typical).voltage - 1)).toBeLessThan(2e-3);
+  });
+});
+
+describe('a short dip below the hold-off voltage', () => {
+  it('has edges known to a fifth of its own length, not of the history', async () => {
+    const N = densityAt(300, one.typical, 'right');
+    const points = [
+      [0, 1.15 * N],
+      [4321, 1.15 * N],
+      [4331, 0.85 * N],
+      [4341, 1.15 * N],
+      [T, 1.15 * N],
+    ] as const;
+    const answer = await follow(paschenCase(one), { history: pressures(points), voltage: 300, margin: 1 }, analytic(one));
+    const [opens, closes] = [passing(N, points[1], points[2]), passing(N, points[2], points[3])];
+    const [[from, to], ...others] = windows(answer, 'breaks-down');
+    expect(others).toEqual([]);
+    expect(Math.abs(from - opens)).toBeLessThan(0.2 * (closes - opens));
+    expect(Math.abs(to - closes)).toBeLessThan(0.2 * (closes - opens));
+  });
+});
+
+describe('a pump that empties a volume in seconds of three hours', () => {
+  it('passes the minimum between two looks at the clock, and is seen to', async () => {
+    const start = 101325;
+    const time = 1; // volume over speed [s]
+    const bay = {
+      volume: 1e-3,
+      start,
+      gas: FLOW_GASES.nitrogen,
+      outside: null,
+      vents: [],
+      pump: { speed: 1e-3 / time, basePressure: 1e-6 },
+      gasLoad: 0,
+      outgassing: [],
+    };
+    const history = { duration: T, pressure: { kind: 'bay' as const, bay }, temperature: TEMPERATURE };
+    const answer = await follow(paschenCase(one), { history, voltage: 300, margin: 1 }, analytic(one));
+    const passed = (branch: 'left' | 'right'): number => time * Math.log(start / pressureOf(densityAt(300, one.typical, branch)));
+    const [[from, to], ...others] = windows(answer, 'breaks-down');
+    expect(others).toEqual([]);
+    const length = passed('left') - passed('right');
+    expect(Math.abs(from - passed('right'))).toBeLessThan(0.2 * length);
+    expect(Math.abs(to - passed('left'))).toBeLessThan(0.2 * length);
     expect(Math.abs((answer.lowest?.holdOff ?? 0) / minimum(one.typical).voltage - 1)).toBeLessThan(2e-3);
   });
 });
