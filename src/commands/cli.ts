@@ -6,6 +6,7 @@ import type { GasOptions } from './gas.ts';
 import { wrap } from './layout.ts';
 import { printable, printableJson } from './printable.ts';
 import type { ReportOptions } from './report.ts';
+import type { SwarmOptions } from './swarm-request.ts';
 import { processTerminal, type Terminal } from './terminal.ts';
 
 /** The command line: arguments -> a command -> an exit code. What a command needs is loaded when it is called, so that `--help` answers at once. */
@@ -197,6 +198,34 @@ function programOf(terminal: Terminal, done: (exitCode: number) => void): Comman
       done(EXIT.done);
     });
 
+  program
+    .command('swarm')
+    .argument('[gas]', 'a gas with built-in cross-sections')
+    .description('electrons as particles in a uniform field: drift, diffusion, ionisation, each\nwith its error, for a fluid model')
+    .option('--at <fields>', 'reduced fields, as in "10 Td, 100 Td"')
+    .option('--from <field>', 'the first of several, equally spaced in the logarithm')
+    .option('--to <field>', 'the last of them')
+    .addOption(countOption('--points <n>', 'how many', 2, 200).default(undefined, '10'))
+    .option(
+      '--cross-sections <file.csv>',
+      'your own set, columns process, threshold [eV], energy [eV], cross_section [m^2], and name where kinds repeat',
+    )
+    .option('--mass <mass>', 'of a molecule of your own set, as in "4 u"')
+    .option('--ejected-width <energy>', 'of ejected electrons of your own set (default: the threshold)')
+    .addOption(new Option('--scattering <law>', 'directions after collisions').choices(['isotropic', 'screened-coulomb']))
+    .option('--temperature <T>', 'of the gas (default: 293.15 K; models at rest)')
+    .option('--accuracy <share>', 'standard error of energy and drift (default: 0.5 %)')
+    .addOption(countOption('--seed <n>', 'of the random numbers', 0, Number.MAX_SAFE_INTEGER).default(undefined, '1'))
+    .addOption(workersOption('batches'))
+    .option('--csv <file.csv>', 'also write a table that gas.coefficients of a case reads')
+    .option('--json', 'one JSON object on stdout')
+    .option('--quiet', 'print problems only')
+    .helpOption('-h, --help', 'print this help')
+    .action(async (gas: string | undefined, options: SwarmOptions) => {
+      const { swarm } = await import('./swarm.ts');
+      done(await swarm(gas, options, terminal));
+    });
+
   return program;
 }
 
@@ -244,14 +273,22 @@ export interface WindowOptions {
 const MOST_WORKERS = 1024;
 const MOST_SHARDS = 1_000_000;
 
-function workersOption(): Option {
-  return new Option('--workers <n>', 'points computed at the same time')
+function workersOption(what = 'points'): Option {
+  return new Option('--workers <n>', `${what} computed at the same time`)
     .default(undefined, 'all cores')
     .argParser((text: string): number => {
       const workers = /^[0-9]{1,4}$/.test(text) ? Number(text) : 0;
       if (workers < 1 || workers > MOST_WORKERS) throw new InvalidArgumentError(`Expected a whole number from 1 to ${MOST_WORKERS}.`);
       return workers;
     });
+}
+
+function countOption(flags: string, description: string, least: number, most: number): Option {
+  return new Option(flags, description).argParser((text: string): number => {
+    const count = /^[0-9]{1,16}$/.test(text) ? Number(text) : Number.NaN;
+    if (!(count >= least && count <= most)) throw new InvalidArgumentError(`Expected a whole number from ${least} to ${most}.`);
+    return count;
+  });
 }
 
 function shardOption(): Option {
@@ -280,6 +317,7 @@ Examples:
   gapwake scan gap.yaml --csv gap.csv     all points; goes on after Ctrl-C
   gapwake window bay.yaml                 when it breaks down as the bay vents
   gapwake gas argon                       where the numbers for argon come from
+  gapwake swarm argon --at "100 Td"       what its cross-sections lead to
 
 Exit codes: 0 done, 1 --expect not met, 2 wrong input, 3 a simulation could not
 be completed, 4 a file could not be read or written, 70 internal fault,

@@ -45,6 +45,8 @@ export function formulaOf(form: Form): string {
       });
       return `${texts.join('; ')}; joined over ${number(100 * blend)}${NO_BREAK}% of x to either side`;
     }
+    default:
+      return 'a mean over the gases of a mixture';
   }
 }
 
