@@ -1,8 +1,10 @@
 import { describe, expect, it } from 'vitest';
 import { readCase } from '../../src/casefile/index.ts';
 import { gases } from '../../src/gases/index.ts';
+import { mixtureOf } from '../../src/gases/mixture.ts';
 import { defaultsCaution, fallbackYields } from '../../src/onset/cautions/defaults.ts';
 import { cautionsOf, withDefaults } from '../../src/onset/cautions/index.ts';
+import { yieldSpread } from '../../src/onset/cautions/yield-ends.ts';
 import type { Caution, CautionCode } from '../../src/onset/outcome.ts';
 import { prognosisCautions } from '../../src/onset/prognosis.ts';
 import { yieldFor } from '../../src/surfaces/index.ts';
@@ -398,6 +400,72 @@ describe('yield-spread', () => {
 
   it('is not raised where the case gives one number', () => {
     expect(find(beforeRun(), 'yield-spread')).toBeUndefined();
+  });
+
+  it('counts in factors where the yield is a law of the field, and gives the yield at breakdown', () => {
+    const left = surface(1, 0.5, 2);
+    const law = { kind: 'reduced-field', form: { kind: 'constant', value: 0.07 } } as const;
+    const electrodes = both({ ...left, ionYield: { ...left.ionYield, law } });
+    const caution = find(beforeRun({ electrodes, supply: { programme: step(210) } }), 'yield-spread');
+    expect(caution?.text).toBe(
+      `The ion yield, a law of the field that gives 0.07 at breakdown, is known only to a factor of 0.5 to 2: the breakdown voltage is ${V(0.14).toPrecision(3)} V to ${V(0.035).toPrecision(3)} V, and the 210 V here lie within, so the verdict depends on the yield.`,
+    );
+    expect(caution?.value).toBe(4);
+  });
+
+  it('says that the verdict depends on it from V_s at the high end up to that at the low end', () => {
+    const decides = (voltage: number): boolean | undefined =>
+      yieldSpread(openCaseWith({ electrodes: both(surface(0.07, 0.02, 0.16)) }), voltage)?.decides;
+    const [lowest, highest] = [V(0.16), V(0.02)];
+    for (const sign of [1, -1]) {
+      expect(decides(sign * lowest * 0.9999)).toBe(false);
+      expect(decides(sign * lowest * 1.0001)).toBe(true);
+      expect(decides(sign * highest * 0.9999)).toBe(true);
+      expect(decides(sign * highest * 1.0001)).toBe(false);
+    }
+    const spread = yieldSpread(openCaseWith({ electrodes: both(surface(0.07, 0, 0.16)) }), 1e5);
+    expect(spread).toMatchObject({ decides: true, low: { breakdown: null, atBreakdown: null } });
+    expect(yieldSpread(openCaseWith(), 200)).toBeNull();
+  });
+});
+
+describe('mixture', () => {
+  const gasOf = (fractions: Readonly<Record<string, number>>, own = false): NonNullable<Changes['gas']> => {
+    const parts = Object.entries(fractions).map(([gas, fraction]) => ({ gas, fraction }));
+    const {
+      name,
+      coefficients: mixed,
+      breakdownUncertainty,
+    } = mixtureOf(parts.map(({ gas, fraction }) => ({ gas: gases[gas], fraction })));
+    const ionisation = own ? { ...mixed.ionisation, status: 'given' as const } : mixed.ionisation;
+    return { name, mixture: parts, coefficients: { ...mixed, ionisation }, breakdownUncertainty };
+  };
+  const caution = (fractions: Readonly<Record<string, number>>, own = false): Caution | undefined =>
+    find(beforeRun({ gas: gasOf(fractions, own) }), 'mixture');
+
+  it('is raised by every mixture, and by no single gas', () => {
+    expect(caution({ nitrogen: 0.79, oxygen: 0.21 })).toEqual({
+      code: 'mixture',
+      text: 'The coefficients of the mixture follow from those of its gases by mixing rules at equal E/N, not from measurements: V_s is known to 30 %.',
+      value: 2,
+    });
+    expect(find(beforeRun(), 'mixture')).toBeUndefined();
+    expect(find(afterRun({ gas: gasOf({ argon: 0.9, nitrogen: 0.1 }) }), 'mixture')?.text).toContain('known to 50 %');
+  });
+
+  it('names Penning pairs, whose mixtures break down below V_s', () => {
+    const { text, value } = caution({ neon: 0.998, argon: 0.001, helium: 0.001 }) ?? {};
+    expect(text).toContain(
+      'Penning ionisation: neon metastables (16.6 eV) ionise argon (15.8 eV); helium metastables (19.8 eV) ionise argon (15.8 eV).',
+    );
+    expect(text).toContain('may break down far below V_s');
+    expect(value).toBe(3);
+    expect(caution({ helium: 0.5, neon: 0.5 })?.text).not.toContain('Penning');
+    expect(caution({ argon: 0.5, xenon: 0.5 })?.text).not.toContain('Penning');
+  });
+
+  it('says less where the case gives the ionisation of the mixture', () => {
+    expect(caution({ neon: 0.999, argon: 0.001 }, true)?.text).toMatch(/^The gas is a mixture whose ionisation the case gives/);
   });
 });
 

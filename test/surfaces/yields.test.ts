@@ -2,9 +2,17 @@
 import { describe, expect, it } from 'vitest';
 import { gases } from '../../src/gases/index.ts';
 import { argonAtomYields, argonIonYields } from '../../src/surfaces/argon-yields.ts';
-import { cleanYieldFor, surfaces, yieldFor, yieldLawFor } from '../../src/surfaces/index.ts';
+import { cleanYieldFor, surfaceIn, surfaces, yieldFor, yieldInMixture, yieldLawFor } from '../../src/surfaces/index.ts';
 import { potentialEmission } from '../../src/surfaces/potential-emission.ts';
-import { meanImpactEnergy, meanYield, type YieldData, type YieldTerm, yieldAtEnergy, yieldCurve } from '../../src/surfaces/yield-law.ts';
+import {
+  meanImpactEnergy,
+  meanYield,
+  type YieldData,
+  type YieldTerm,
+  yieldAt,
+  yieldAtEnergy,
+  yieldCurve,
+} from '../../src/surfaces/yield-law.ts';
 import { minimum } from '../gases/townsend.ts';
 
 const Td = 1e-21;
@@ -206,5 +214,49 @@ describe('built-in materials', () => {
       expect(gamma, material).toBeGreaterThan(y?.low ?? Number.NaN);
       expect(gamma, material).toBeLessThan(y?.high ?? Number.NaN);
     }
+  });
+});
+
+describe('a material in a mixture of gases', () => {
+  const row = (gas: string): NonNullable<ReturnType<typeof yieldFor>>['ionYield'] => {
+    const surface = yieldFor('nickel', gas);
+    if (surface === null) throw new Error(gas);
+    return surface.ionYield;
+  };
+
+  it('has the largest of the yields, so that V_s errs low, and the widest spread', () => {
+    for (const pair of [
+      ['argon', 'nitrogen'],
+      ['oxygen', 'helium', 'neon'],
+    ]) {
+      const made = yieldInMixture('nickel', pair)?.ionYield;
+      const rows = pair.map(row);
+      expect(made?.typical).toBe(Math.max(...rows.map((r) => r.typical)));
+      expect(made?.low).toBe(Math.min(...rows.map((r) => r.low)));
+      expect(made?.high).toBe(Math.max(...rows.map((r) => r.high)));
+      expect(yieldInMixture('nickel', pair.toReversed())).toEqual(yieldInMixture('nickel', pair));
+    }
+  });
+
+  it('has the yield of the gas where there is one gas only, and none where the material is unknown', () => {
+    expect(yieldInMixture('nickel', ['argon'])).toEqual(yieldFor('nickel', 'argon'));
+    expect(yieldInMixture('unobtainium', ['argon', 'neon'])).toBeNull();
+  });
+});
+
+describe('a surface in a stated condition', () => {
+  it('follows the law of its gas, with the uncertainty as its spread', () => {
+    const surface = surfaceIn('iron', 'argon', 'technical');
+    expect(surface).toMatchObject({ material: 'iron', condition: 'technical', workFunction: 4.17 });
+    expect(surface?.ionYield).toMatchObject({ typical: 1, low: 1 / 1.5, high: 1.5, law: argonIonYields.technical.law });
+    // the figure that stands in the note of the law
+    if (surface !== null) expect(yieldAt(surface.ionYield, 540 * Td)).toBeCloseTo(0.0026, 4);
+  });
+
+  it('is that of slow ions on clean metal in other gases, and unknown elsewhere', () => {
+    expect(surfaceIn('tungsten', 'neon', 'clean')?.ionYield).toEqual(cleanYieldFor('tungsten', 'neon'));
+    expect(surfaceIn('tungsten', 'neon', 'technical')).toBeNull();
+    expect(surfaceIn('graphite', 'argon', 'technical')).toBeNull();
+    expect(surfaceIn('unobtainium', 'argon', 'clean')).toBeNull();
   });
 });
