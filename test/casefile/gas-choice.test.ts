@@ -1,5 +1,6 @@
 /** `gas.data` and `gas.mixture`: what they mean, what is refused, what enters the hash. */
 import { describe, expect, it } from 'vitest';
+import { hashCase } from '../../src/casefile/index.ts';
 import { gasData, gases } from '../../src/gases/index.ts';
 import { mixtureOf } from '../../src/gases/mixture.ts';
 import { yieldFor } from '../../src/surfaces/index.ts';
@@ -28,6 +29,8 @@ describe('gas.data', () => {
     const { sha256 } = good(GOOD).case;
     expect(good(withGas('  name: argon\n  data: phelps-petrovic\n')).case.sha256).toBe(sha256);
     expect(good(withGas('  name: argon\n  data: ward\n')).case.sha256).not.toBe(sha256);
+    const { case: c } = good(GOOD);
+    expect(hashCase({ ...c, gas: { ...c.gas, dataSet: 'renamed' } })).toBe(sha256);
   });
 
   it('stands beside coefficients of the case, which win', () => {

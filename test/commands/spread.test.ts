@@ -105,13 +105,18 @@ describe('the set of data', () => {
     expect(out).toMatch(/V_s over the data sets \d+ V to \d+ V: .*nitrogen lieberman \d+ V/);
     expect(out).toContain('Wieland, ETZ-A 94, 370, 1973');
     expect(out).toContain('[mixture]');
-    const json = gasJson(load(overrides).case, 230) as { mixture: unknown; sets: { gas: string; set: string; used: boolean }[] };
+    const json = gasJson(load(overrides).case, 230) as {
+      mixture: unknown;
+      sets: { gas: string; used: boolean; static_breakdown_voltage_V: number }[];
+    };
     expect(json.mixture).toEqual([
       { gas: 'argon', fraction: 0.9 },
       { gas: 'nitrogen', fraction: 0.1 },
     ]);
     expect(json.sets.filter((s) => s.used).map((s) => s.gas)).toEqual(['argon', 'nitrogen']);
     expect(json.sets.length).toBe(6);
+    // each set has a voltage of its own, but for the default of either gas, which is one mixture
+    expect(new Set(json.sets.map((s) => s.static_breakdown_voltage_V)).size).toBe(5);
   });
 });
 
