@@ -294,6 +294,47 @@ describe('a supply that follows a schedule', () => {
   });
 });
 
+describe('a busy history', () => {
+  const rest = pressureOf(4 * bottom);
+
+  it('has every one of sixty pulses, half a second long in three hours', async () => {
+    const times: number[] = [];
+    const values: number[] = [];
+    for (let i = 0; i < 60; i++) {
+      times.push(180 * i, 180 * i + 0.01, 180 * i + 0.5, 180 * i + 0.51);
+      values.push(100, 400, 400, 100);
+    }
+    const history = {
+      duration: T,
+      pressure: { kind: 'table' as const, rows: { times: [0, T], values: [rest, rest] } },
+      temperature: TEMPERATURE,
+    };
+    const world = analytic(one);
+    const answer = await follow(paschenCase(one), { history, voltage: { times, values }, margin: 1.5 }, world);
+    const broken = windows(answer, 'breaks-down');
+    expect(broken).toHaveLength(60);
+    for (const [i, [from, to]] of broken.entries()) {
+      expect(Math.abs(from - 180 * i)).toBeLessThan(0.02);
+      expect(Math.abs(to - (180 * i + 0.5))).toBeLessThan(0.02);
+    }
+    expect(world.asked.filter(({ kind }) => kind === 'hold-off')).toHaveLength(1);
+    expect(answer.notes).toEqual([]);
+  });
+
+  it('of a hundred thousand rows shows what only one of them says', async () => {
+    const rows = 100_001;
+    const times = Float64Array.from({ length: rows }, (_, i) => (i * T) / (rows - 1));
+    const values = times.map((t, i) => (i === 54_321 ? rest / 4 : rest * (1 + 0.01 * Math.sin(t))));
+    const history = { duration: T, pressure: { kind: 'table' as const, rows: { times, values } }, temperature: TEMPERATURE };
+    const answer = await follow(paschenCase(one), { history, voltage: 250, margin: 1 }, analytic(one));
+    expect(closedForm(3.95 * bottom, SPACING, one.typical)).toBeGreaterThan(250);
+    const [[from, to], ...others] = windows(answer, 'breaks-down');
+    expect(others).toEqual([]);
+    expect(Math.abs(from - times[54_321])).toBeLessThan(T / (rows - 1));
+    expect(Math.abs(to - times[54_321])).toBeLessThan(T / (rows - 1));
+  });
+});
+
 describe('walls of different yields', () => {
   it('break down by the yield of the one that is the cathode at that time', async () => {
     const settings = paschenCase(one);

@@ -7,6 +7,9 @@ import type { FollowedInstant, WindowAnswer } from './follow.ts';
 import { atSurroundings } from './instant-case.ts';
 import type { Timescales } from './timescales.ts';
 
+/** Instants that are looked at for cautions of their own, at most; they lie evenly. */
+const MOST_LOOKS = 60;
+
 /** Every caution of a window: those of the gap at its worst instant; those that only other instants raise, with the time of the first; and the one about
  *  discharges that are not fast against what changes around them.
  *  @param defaults  paths of every default that the case leaves to the program */
@@ -14,9 +17,10 @@ export function windowCautions(settings: Case, answer: WindowAnswer, defaults: r
   const { instants, worst, lowest, timescales } = answer;
   const first = worst === null ? instants.find(({ time }) => time === lowest?.time) : instants[worst];
   const raised = new Map<CautionCode, Caution>();
-  for (const instant of first === undefined ? instants : [first, ...instants]) {
-    // where the model says nothing the state says so already
-    if (instant.holdOff === null) continue;
+  // where the model says nothing the state says so already
+  const modelled = instants.filter(({ holdOff }) => holdOff !== null);
+  const some = modelled.filter((_, i) => i % Math.ceil(modelled.length / MOST_LOOKS) === 0);
+  for (const instant of first === undefined ? some : [first, ...some]) {
     for (const caution of cautionsAt(settings, instant)) {
       if (raised.has(caution.code)) continue;
       const text = instant === first ? caution.text : `First at ${seconds(instant.time)}: ${caution.text}`;

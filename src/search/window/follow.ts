@@ -55,8 +55,9 @@ export interface Following {
 
 /** Rounds of looking and looking closer; every round halves at least what an edge is known to. */
 const MOST_ROUNDS = 16;
-/** Instants that are looked at, at most: a schedule may change state thousands of times. */
-const MOST_INSTANTS = 600;
+/** Instants that are looked at, at most, and densities that are simulated for them: a schedule may change state thousands of times. */
+const MOST_INSTANTS = 20_000;
+const MOST_SIMULATED = 600;
 /** Densities simulated first, from which the others are expected. */
 const PILOTS = 4;
 /** Distance of |V| from the expected hold-off voltage at the high end of the yields, in ln V, from which on a simulation need not confirm it. */
@@ -64,6 +65,8 @@ const CLEAR = 0.1;
 /** Lags that are simulated, at most, and the least overvoltage for which they are: nearer the threshold they grow without limit. */
 const MOST_LAGS = 16;
 const LEAST_OVERVOLTAGE = 1.02;
+
+const CUT = `The state changes too often to be followed everywhere (${MOST_INSTANTS} instants, ${MOST_SIMULATED} densities at most): some edges are less exact than 0.5 % of the time, and some hold-off voltages are expected from those at densities nearby.`;
 
 /** Follows a gap through its surroundings. Discharges take microseconds to milliseconds and pressures seconds to hours, so each instant is a gap at rest:
  *  what it holds depends on the density N of that instant alone.
@@ -103,6 +106,8 @@ class Search {
   readonly #failures: string[] = [];
   #runs = 0;
   #done = 0;
+  /** whether more instants or simulations were wanted than there may be */
+  #cut = false;
 
   constructor(settings: Case, { margin }: WindowSettings, track: Track, following: Following) {
     this.#settings = settings;
@@ -115,21 +120,27 @@ class Search {
   /** Looks at instants, and at more of them, until the edges are known. */
   async look(): Promise<void> {
     const first = firstInstants(this.#track, this.#view('typical'));
-    await this.#simulate('typical', pilots(first, PILOTS));
+    await this.#simulate('typical', thinned(first, PILOTS));
     await this.#simulate('typical', first);
     this.#looked.typical = first;
     const ends: readonly YieldEnd[] = this.#spread ? ['typical', 'high', 'low'] : ['typical'];
     for (const end of ends) if (end !== 'typical') this.#looked[end] = [0, this.#track.duration];
     for (let round = 0; round < MOST_ROUNDS; round++) {
       const requests: HoldOffRequest[] = [];
+      let added = 0;
       for (const end of ends) {
-        const room = MOST_INSTANTS - this.#looked[end].length;
-        const more = nextInstants(this.#track, this.#view(end), this.#looked[end]).slice(0, room);
+        await breath();
+        const wanted = nextInstants(this.#track, this.#view(end), this.#looked[end]);
+        const more = thinned(wanted, MOST_INSTANTS - this.#looked[end].length);
+        this.#cut ||= more.length < wanted.length;
+        added += more.length;
         this.#looked[end] = [...this.#looked[end], ...more].sort((a, b) => a - b);
         requests.push(...this.#wanted(end, end === 'typical' ? this.#looked[end] : more));
       }
-      if (requests.length === 0) return;
-      await this.#ask(requests);
+      const affordable = thinned(distinct(requests), MOST_SIMULATED - this.#done);
+      this.#cut ||= affordable.length < distinct(requests).length;
+      if (added === 0 && affordable.length === 0) return;
+      await this.#ask(affordable);
     }
   }
 
@@ -140,8 +151,10 @@ class Search {
       .filter(({ instant, over }) => over !== null && over >= LEAST_OVERVOLTAGE && this.#judge('typical', instant).state === 'breaks-down');
     const worst = windowsOf(this.#judged('typical'))
       .map(({ from, to }) => broken.filter(({ instant: { time } }) => time >= from && time <= to))
-      .flatMap((within) => within.reduce<typeof within>((best, each) => ((each.over ?? 0) > (best[0]?.over ?? 0) ? [each] : best), []));
-    const others = pilots(broken, Math.max(0, MOST_LAGS - worst.length));
+      .flatMap((within) => within.reduce<typeof within>((best, each) => ((each.over ?? 0) > (best[0]?.over ?? 0) ? [each] : best), []))
+      .sort((a, b) => (b.over ?? 0) - (a.over ?? 0))
+      .slice(0, MOST_LAGS);
+    const others = thinned(broken, MOST_LAGS - worst.length);
     const requests = new Map<string, { readonly request: LagRequest; readonly times: number[] }>();
     for (const { instant } of new Set([...worst, ...others])) {
       for (const request of this.#lagRequests(instant)) {
@@ -171,7 +184,7 @@ class Search {
       timescales: timescalesOf(this.#settings, this.#track, instants, (instant) =>
         this.#curve('typical', instant.polarity).theory.at(instant.density),
       ),
-      notes: history.notes,
+      notes: this.#cut ? [...history.notes, CUT] : history.notes,
       runs: this.#runs,
       failures: this.#failures,
     };
@@ -183,9 +196,9 @@ class Search {
   }
 
   async #ask(requests: readonly HoldOffRequest[]): Promise<void> {
-    const distinct = [...new Map(requests.map((request) => [requestKey(request), request])).values()];
-    const answers = await this.#evaluate(distinct);
-    for (const [i, request] of distinct.entries()) this.#curve(request.yields, request.polarity).learn(request, answers[i]);
+    const questions = distinct(requests);
+    const answers = await this.#evaluate(questions);
+    for (const [i, request] of questions.entries()) this.#curve(request.yields, request.polarity).learn(request, answers[i]);
   }
 
   async #evaluate(requests: readonly Request[]): ReturnType<Evaluate> {
@@ -312,8 +325,18 @@ function followed<Each extends JudgedInstant>(instants: readonly Each[]): Follow
   };
 }
 
+/** Lets the event loop look at signals. */
+function breath(): Promise<void> {
+  return new Promise((resume) => setImmediate(resume));
+}
+
+/** Each question once. */
+function distinct(requests: readonly HoldOffRequest[]): HoldOffRequest[] {
+  return [...new Map(requests.map((request) => [requestKey(request), request])).values()];
+}
+
 /** A few of many, evenly. */
-function pilots<T>(all: readonly T[], count: number): T[] {
+function thinned<T>(all: readonly T[], count: number): T[] {
   if (all.length <= count) return [...all];
-  return Array.from({ length: count }, (_, i) => all[Math.floor(((i + 0.5) * all.length) / count)]);
+  return Array.from({ length: Math.max(0, count) }, (_, i) => all[Math.floor(((i + 0.5) * all.length) / count)]);
 }

@@ -23,12 +23,14 @@ export interface Track {
   /** times at which the supply's schedule bends, within the history, rising [s] */
   readonly voltageCorners: readonly number[];
   at(time: number): Instant;
-  /** times so dense that the density changes by less than 5 % between neighbours, and nothing that is given bends in between [s] */
+  /** times so dense that the density changes by less than 5 % between neighbours and, up to 20,000 corners, nothing that is given bends in between [s] */
   readonly times: Float64Array;
 }
 
 /** Even steps in which a history is looked through before it is refined: each is a fifth of what an edge is located to. */
 const STEPS = 1000;
+/** Corners of what is given that are all looked at; of more, some. */
+const MOST_GIVEN = 20_000;
 /** Largest change of ln N between neighbouring times. */
 const DENSITY_STEP = 0.05;
 /** Shortest time between two instants, over the duration. */
@@ -54,9 +56,33 @@ export function trackOf(history: History, voltage: number | Rows, symmetric: boo
       polarity: polarityAt(time),
     };
   };
-  const given = [...Array.from({ length: STEPS + 1 }, (_, i) => (i * duration) / STEPS), ...history.corners, ...voltageCorners];
   const logDensity = (t: number): number => Math.log(Math.max(at(t).density, Number.MIN_VALUE));
+  const corners = telling(Float64Array.from(new Set([...history.corners, ...voltageCorners])).sort(), [
+    logDensity,
+    (t) => Math.abs(at(t).voltage),
+  ]);
+  const given = [...Array.from({ length: STEPS + 1 }, (_, i) => (i * duration) / STEPS), ...corners];
   return { duration, voltageCorners, at, times: refined(Float64Array.from(new Set(given)).sort(), logDensity, SHORTEST * duration) };
+}
+
+/** Of very many times those at which the quantities are extreme among their neighbours: what a state depends on lies between those extremes. */
+function telling(times: Float64Array, quantities: readonly ((t: number) => number)[]): Float64Array {
+  if (times.length <= MOST_GIVEN) return times;
+  const size = Math.ceil((times.length * quantities.length * 2) / MOST_GIVEN);
+  const kept = new Set<number>();
+  for (const quantity of quantities) {
+    for (let from = 0; from < times.length; from += size) {
+      let [low, high] = [from, from];
+      let [least, largest] = [Infinity, -Infinity];
+      for (let i = from; i < Math.min(from + size, times.length); i++) {
+        const value = quantity(times[i]);
+        if (value < least) [low, least] = [i, value];
+        if (value > largest) [high, largest] = [i, value];
+      }
+      kept.add(times[low]).add(times[high]);
+    }
+  }
+  return Float64Array.from(kept).sort();
 }
 
 /** Halves intervals until the logarithm changes little across each, by its ends and its middle. */
