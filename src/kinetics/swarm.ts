@@ -60,8 +60,6 @@ const WINDOW = 6;
 /** turnovers of the steady stream: to settle, and to average over */
 const STREAM_SETTLING = 4;
 const STREAM = 24;
-/** flights, real and null, of a batch */
-const BATCH_FLIGHTS = 3e6;
 /** electrons of a batch: where they multiply, choosing among a few would favour the quick ones by about one part in their number */
 const FEWEST = 400;
 const FEWEST_ALONE = 16;
@@ -75,14 +73,8 @@ const PILOT_FLIGHTS = 3e8;
 /** Lets a few electrons settle, to see how long that takes and what a batch costs.
  *  @param reducedField  E/N [V m²], above 0
  *  @param point         number of the point, for its stream of random numbers
- *  @param flights       of a batch, real and null */
-export function pilotOf(
-  gas: SwarmGas,
-  reducedField: number,
-  seed: number,
-  point: number,
-  flights: number = BATCH_FLIGHTS,
-): SwarmPlan | NoPlan {
+ *  @param flights       of a batch, real and null, as far as few electrons allow */
+export function pilotOf(gas: SwarmGas, reducedField: number, seed: number, point: number, flights: number): SwarmPlan | NoPlan {
   const { table } = gas;
   const random = new Random(seed, [PILOT_STREAM, point]);
   const engine = new Flights(table, uniformForce(reducedField * DENSITY), random);

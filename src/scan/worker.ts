@@ -3,5 +3,6 @@ import { serve } from './serve.ts';
 
 serve({
   'scan-point': async () => (await import('./point-job.ts')).pointJob,
+  swarm: async () => (await import('./swarm-job.ts')).swarmJob,
   'window-request': async () => (await import('./window-job.ts')).windowJob,
 });
