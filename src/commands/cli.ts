@@ -190,11 +190,18 @@ function programOf(terminal: Terminal, done: (exitCode: number) => void): Comman
     .option('--data <set>', 'another set of data of the gas')
     .addOption(new Option('--at <fields>', 'values at reduced fields, as in "10 Td, 100 Td"').conflicts(['csv']))
     .addOption(new Option('--csv', 'the curves as a table that gas.coefficients of a case reads').conflicts(['json']))
+    .addOption(
+      new Option('--figures <folder>', 'write the curves as SVG, and as PNG where rsvg-convert\nis installed').conflicts([
+        'at',
+        'csv',
+        'json',
+      ]),
+    )
     .option('--json', 'one JSON object on stdout')
     .helpOption('-h, --help', 'print this help')
     .action(async (words: string[], options: GasOptions) => {
       const { gas } = await import('./gas.ts');
-      gas(words, options, terminal);
+      await gas(words, options, terminal);
       done(EXIT.done);
     });
 

@@ -18,29 +18,43 @@ export interface GasOptions {
   readonly data?: string;
   readonly at?: string;
   readonly csv?: boolean;
+  readonly figures?: string;
   readonly json?: boolean;
 }
 
 /** What is built in: all of it in short, or one gas or cathode material with every source; values at some fields; curves as a table. */
-export function gas(words: readonly string[], options: GasOptions, terminal: Terminal): void {
+export async function gas(words: readonly string[], options: GasOptions, terminal: Terminal): Promise<void> {
   if (words.length === 0) {
-    const useless = options.data !== undefined ? '--data' : options.at !== undefined ? '--at' : options.csv ? '--csv' : null;
+    const useless = uselessOf(options);
     if (useless !== null) throw refusal('usage', `${useless} needs the name of a gas`, 'gapwake gas NAME', useless, null);
     terminal.out(options.json ? printableJson(listJson()) : listText(terminal));
     return;
   }
   const found = named(words.join(' '));
   if ('yields' in found) {
-    const useless = options.data !== undefined ? '--data' : options.at !== undefined ? '--at' : options.csv ? '--csv' : null;
+    const useless = uselessOf(options);
     if (useless !== null) throw refusal('usage', `${useless} is for gases, and ${found.name} is a material`, 'a gas', useless, null);
     terminal.out(options.json ? printableJson(surfaceJson(found)) : surfaceText(found, terminal));
     return;
   }
   const data = withSet(found, options.data);
+  if (options.figures !== undefined) {
+    const { writeGasFigures } = await import('./gas-figures.ts');
+    terminal.out(`${await writeGasFigures(data, options.figures)}\n`);
+    return;
+  }
   const fields = options.at === undefined ? null : fieldsOf(options.at);
   if (options.json) terminal.out(printableJson(gasJson(data, fields)));
   else if (options.csv) terminal.out(gasCsv(data));
   else terminal.out(fields === null ? gasText(data, terminal) : valuesText(data, fields, terminal));
+}
+
+/** an option that means nothing without a gas; null where none was given */
+function uselessOf({ data, at, csv, figures }: GasOptions): string | null {
+  if (data !== undefined) return '--data';
+  if (at !== undefined) return '--at';
+  if (figures !== undefined) return '--figures';
+  return csv ? '--csv' : null;
 }
 
 function named(name: string): GasData | SurfaceData {

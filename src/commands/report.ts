@@ -1,5 +1,4 @@
-import { mkdirSync, readFileSync, renameSync, rmSync, statSync, writeFileSync } from 'node:fs';
-import { join } from 'node:path';
+import { readFileSync, renameSync, rmSync, statSync, writeFileSync } from 'node:fs';
 import { fileURLToPath } from 'node:url';
 import { GENERATOR } from '../report/document.ts';
 import type { FigureFile } from '../report/svg-file.ts';
@@ -8,7 +7,7 @@ import { readResultFormat } from '../results/read.ts';
 import { EXIT } from './exit-codes.ts';
 import { Failure, problemWithoutPlace } from './failure.ts';
 import { printable } from './printable.ts';
-import { pngOf } from './report-png.ts';
+import { writeFigures } from './report-figures.ts';
 import type { Terminal } from './terminal.ts';
 
 export interface ReportOptions {
@@ -76,18 +75,6 @@ function writeWhole(path: string, text: string): number {
     throw resultFileError(path, thrown);
   }
   return Buffer.byteLength(text);
-}
-
-async function writeFigures(folder: string, files: readonly FigureFile[]): Promise<string> {
-  try {
-    mkdirSync(folder, { recursive: true });
-    for (const { name, svg } of files) writeFileSync(join(folder, `${name}.svg`), svg);
-  } catch (thrown) {
-    throw resultFileError(folder, thrown);
-  }
-  const pictures = await pngOf(files.map(({ name }) => [join(folder, `${name}.svg`), join(folder, `${name}.png`)]));
-  const also = pictures === null ? '; no PNG, because rsvg-convert is not installed' : ` and ${pictures} PNG`;
-  return `Written: ${printable(folder)} (${files.length} SVG${also}).`;
 }
 
 function written(path: string, bytes: number): string {

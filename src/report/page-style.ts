@@ -53,7 +53,7 @@ button[aria-pressed=true]{background:var(--accent);border-color:var(--accent);co
 .plot{margin:0;padding:6px 6px 4px;position:relative;min-width:0}
 .plot svg{display:block;max-width:100%;height:auto}
 .timed svg{cursor:crosshair;touch-action:pan-y}
-.strip{display:block}.narrow{max-width:62em}#coefficients th:nth-child(4),#coefficients td:nth-child(4){min-width:7.5em}#coefficients th:first-child{min-width:8em}
+.strip{display:block}.narrow{max-width:62em}#coefficients th:nth-child(4),#coefficients td:nth-child(4){min-width:7.5em}#coefficients th:first-child{min-width:8em}#coefficients td:nth-child(2){min-width:9em}
 .strip .has{fill:var(--line)}
 .strip .visited{fill:var(--accent)}
 .strip .outside{fill:var(--alarm)}

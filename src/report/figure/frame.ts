@@ -67,15 +67,17 @@ export interface FrameSpec {
   readonly marks?: readonly Mark[];
   /** names of the marks above the plot, or lines only */
   readonly nameMarks?: boolean;
+  /** lines of text under the figure */
+  readonly footer?: readonly string[];
 }
 
 /** Where the plot area of a figure will lie, below its heading, the rows of its key and those of the names of marks. */
 export function boxOf(spec: FrameSpec, keyRows = 0): Box {
-  const { width, height, left, right, marks = [], nameMarks = true } = spec;
+  const { width, height, left, right, marks = [], nameMarks = true, footer = [] } = spec;
   const plain = { left, width: width - left - right };
   const rows = nameMarks ? placeMarks(marks, plain, width - 4).rows : 0;
   const top = HEADING + (rows + keyRows) * LINE + 3;
-  return { ...plain, top, height: height - top - 40 };
+  return { ...plain, top, height: height - top - 40 - (footer.length === 0 ? 0 : footer.length * LINE + 6) };
 }
 
 /** Heading, axes and marks around what is drawn inside.
@@ -91,7 +93,7 @@ export function frame(
   inside: readonly (Element | null)[],
   beside: readonly (Element | null)[],
 ): Figure {
-  const { id, title, description, width, height, marks = [], nameMarks = true } = spec;
+  const { id, title, description, width, height, marks = [], nameMarks = true, footer = [] } = spec;
   const bottom = box.top + box.height;
   const end = box.left + box.width;
   const clip = `${id}-clip`;
@@ -132,6 +134,7 @@ export function frame(
     ),
     el('text', { class: 'name', x: (box.left + end) / 2, y: bottom + 35, 'text-anchor': 'middle' }, x.title),
     markElements(marks, nameMarks, box, width),
+    footer.map((line, i) => el('text', { class: 'name', x: 2, y: bottom + 54 + i * LINE }, line)),
     beside,
   );
   return { root, box };

@@ -5,7 +5,7 @@ import type { Scale } from './scale.ts';
 /** One curve; x and y in the units of the axes. */
 export interface Curve {
   readonly name: string;
-  /** `s1` … `s4`: colour and dashes */
+  /** `s1` … `s6`: colour and dashes */
   readonly style: string;
   readonly x: ArrayLike<number>;
   readonly y: ArrayLike<number>;

@@ -34,8 +34,15 @@ export const DARK: Theme = {
   series: ['#74c4f0', '#f3a95f', '#c6ced8', '#e59bd2'],
 };
 
-const DASHES = ['', '7 4', '2 3', '9 3 2 3'];
-const WIDTHS = [2, 1.8, 1.8, 1.8];
+/** `s1`, `s2`, …: which colour, which dashes, how wide */
+const SERIES: readonly (readonly [colour: number, dashes: string, width: number])[] = [
+  [0, '', 2],
+  [1, '7 4', 1.8],
+  [2, '2 3', 1.8],
+  [3, '9 3 2 3', 1.8],
+  [0, '1 4', 1.8],
+  [1, '14 4', 1.4],
+];
 
 /** The rules of one theme. @param within  selector in front of each, for pages */
 export function figureStyle(theme: Theme, within = ''): string {
@@ -56,8 +63,11 @@ export function figureStyle(theme: Theme, within = ''): string {
     rule('.figure .mark text', `fill:${theme.mark};stroke:${theme.ground};stroke-width:3;paint-order:stroke`),
     rule('.figure .reading', 'font-weight:bold'),
     rule('.figure .curve', 'fill:none;stroke-linejoin:round'),
-    ...theme.series.map((colour, i) =>
-      rule(`.figure .s${i + 1}`, `stroke:${colour};stroke-width:${WIDTHS[i]}${DASHES[i] === '' ? '' : `;stroke-dasharray:${DASHES[i]}`}`),
+    ...SERIES.map(([colour, dashes, width], i) =>
+      rule(
+        `.figure .s${i + 1}`,
+        `stroke:${theme.series[colour]};stroke-width:${width}${dashes === '' ? '' : `;stroke-dasharray:${dashes}`}`,
+      ),
     ),
     rule('.figure .rings', 'fill:none;stroke-width:1.6;stroke-dasharray:none'),
     rule('.figure .band', `fill:${theme.series[0]};opacity:0.18`),

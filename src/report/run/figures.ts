@@ -184,21 +184,24 @@ function between(places: Float64Array): (share: number) => { first: number; seco
   };
 }
 
-/** The colours of a map: from its largest value down to where the weakest stage begins. In the units of the figure. */
+/** The colours of a map: from its largest value down to where its weak stages begin. In the units of the figure. */
 export function mapRange(run: RunSeries, field: RunField): [from: number, to: number] {
   const values = run.fields[field] as Profiles;
   const { factor } = Object.values(MAPS).find((m) => m.field === field) ?? { factor: 1 };
   const cells = run.x.length;
   let most = 0;
-  let least = Number.POSITIVE_INFINITY;
+  const stages: number[] = [];
   for (let i = 0; i < run.time.length; i++) {
     let rowMost = 0;
     for (let k = i * cells; k < (i + 1) * cells; k++) rowMost = Math.max(rowMost, Math.abs(values[k]));
     most = Math.max(most, rowMost);
-    if (rowMost > 0) least = Math.min(least, rowMost);
+    if (rowMost > 0) stages.push(rowMost);
   }
+  if (!(most > 0)) return [1e-3, 1];
   const decades = field === 'electricField' ? 3 : MOST_DECADES;
-  return [Math.max(least / 30, most * 10 ** -decades) * factor, most * factor];
+  // the first snapshots, while charge only begins to cross the gap, would take most of the scale
+  const early = stages.sort((a, b) => a - b)[Math.floor(stages.length / 5)];
+  return [Math.min(Math.max(early / 100, most * 10 ** -decades), most / 10) * factor, most * factor];
 }
 
 function positionScale(spacing: number, length: number, apart: number): Scale {
@@ -249,7 +252,7 @@ export function profileFigure(name: ProfileName, run: RunSeries, index: number, 
     return lineFigure(
       { ...base, title: 'Density profiles', description: 'Densities between the electrodes at the linked time', curves },
       xScale,
-      (length) => logarithmic('Density', 'cm⁻³', from, to, { length, apart: 20 }, false),
+      (length) => logarithmic('Density', 'cm⁻³', from, to * 3, { length, apart: 20 }, false),
     );
   }
   const [from, to] = mapRange(run, 'ionisationRate');
@@ -261,7 +264,7 @@ export function profileFigure(name: ProfileName, run: RunSeries, index: number, 
       curves: curve('ionisation', 's1', at('ionisationRate', 1e-6)),
     },
     xScale,
-    (length) => logarithmic('Ionisation rate', 'cm⁻³ s⁻¹', from, to, { length, apart: 20 }, false),
+    (length) => logarithmic('Ionisation rate', 'cm⁻³ s⁻¹', from, to * 3, { length, apart: 20 }, false),
   );
 }
 

@@ -343,7 +343,7 @@ class GridView {
       const px = (s: number): number => round(box.left + s * box.width);
       const py = (s: number): number => round(box.top + (1 - s) * box.height);
       const d = pieces.map((p) => `M${px(p.x1)} ${py(p.y1)}L${px(p.x2)} ${py(p.y2)}`).join('');
-      const label = labels === null ? null : placeForLabel(pieces, taken, px, py);
+      const label = labels === null ? null : placeForLabel(pieces, taken, px, py, (4 * labels[k].length + 4) / box.width);
       if (label !== null) taken.push(label);
       return [
         el('path', { class: 'halo', d }),
@@ -406,19 +406,21 @@ function nearestShare(shares: readonly number[], share: number): number {
   return shares[high] - share < share - shares[low] ? high : low;
 }
 
-/** Where on a line its value can stand: farthest from the labels that are there already, the first near the middle; null where there is no room. */
+/** Where on a line its value can stand: farthest from the labels that are there already, the first near the middle; null where there is no room.
+ *  @param half  of the width of the label, as a share of the plot's */
 function placeForLabel(
   pieces: readonly Piece[],
   taken: readonly (readonly [number, number])[],
   px: (share: number) => number,
   py: (share: number) => number,
+  half: number,
 ): readonly [number, number] | null {
   let best: readonly [number, number] | null = null;
   let most = -Infinity;
   for (const { x1, x2, y1, y2 } of pieces) {
     const [sx, sy] = [(x1 + x2) / 2, (y1 + y2) / 2];
     // labels are wider than high, and must stay inside
-    if (sx < 0.06 || sx > 0.94 || sy < 0.03 || sy > 0.93) continue;
+    if (sx < half || sx > 1 - half || sy < 0.03 || sy > 0.93) continue;
     const place = [px(sx), py(sy)] as const;
     const apart = Math.min(120, ...taken.map(([x, y]) => Math.hypot((place[0] - x) / 3, place[1] - y) * 3));
     const worth = apart - 20 * Math.hypot(sx - 0.5, sy - 0.5);
