@@ -85,7 +85,9 @@ function figure(title: string, coefficient: CoefficientCurve): ReturnType<typeof
       areas: range === null ? [] : [{ name: 'range of the data', fill: 'band' }],
       under: (box, scale) => {
         if (range === null) return [];
-        const [left, right] = [range.from, range.to].map((v) => box.left + box.width * Math.min(1, Math.max(0, scale.at(v / TOWNSEND))));
+        const [left, right] = [range.from, range.to].map(
+          (v) => box.left + box.width * scale.at(Math.min(to, Math.max(from, v / TOWNSEND))),
+        );
         const area: Element = el('rect', {
           class: 'area band',
           x: round(left),
