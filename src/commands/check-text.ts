@@ -1,7 +1,5 @@
 import type { Case } from '../case.ts';
 import type { Coefficient, Provenance } from '../gases/gas.ts';
-import { gases } from '../gases/index.ts';
-import { mixtureNotes } from '../gases/mixture.ts';
 import type { YieldEnd } from '../onset/cautions/yield-ends.ts';
 import type { Caution } from '../onset/outcome.ts';
 import type { Surface } from '../surfaces/surface.ts';
@@ -11,7 +9,7 @@ import { VERSION } from '../version.ts';
 import type { LoadedCase } from './case-source.ts';
 import { cautionLines, lastLines } from './cautions-text.ts';
 import { gasUsed, type SetVoltage, yieldConsequences } from './check-spread.ts';
-import { coefficientsOf } from './coefficients.ts';
+import { coefficientsOf, notesOf } from './coefficients.ts';
 import { columns, NO_BREAK, wrap } from './layout.ts';
 import { printable } from './printable.ts';
 import { currentDensity, field, percent, pressure, pressureDistance, quantity, rate, reducedField } from './quantities.ts';
@@ -260,12 +258,6 @@ function sourceLines(settings: Case, voltage: number, width: number): string[] {
     lines.push(...wrap('From memory: nobody here has read the text; confidence H high, M medium, L low.', width, '  '));
   for (const note of notesOf(settings.gas)) lines.push(...wrap(note, width, '  - ', '    '));
   return lines;
-}
-
-/** What a reader must know of the gas, of a mixture of its rules. */
-function notesOf({ name, mixture }: Case['gas']): readonly string[] {
-  if (mixture !== undefined) return mixtureNotes(mixture.map((part) => part.gas));
-  return name === null ? [] : (gases[name]?.notes ?? []);
 }
 
 function rangeText({ range }: Coefficient): string {

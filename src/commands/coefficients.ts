@@ -1,6 +1,7 @@
 import type { Case } from '../case.ts';
 import type { Coefficient, GasCoefficients } from '../gases/gas.ts';
 import { gases } from '../gases/index.ts';
+import { mixtureNotes } from '../gases/mixture.ts';
 import type { Surface } from '../surfaces/surface.ts';
 
 /** A coefficient that a case uses, with its name and unit. */
@@ -38,6 +39,12 @@ export function namedCoefficients(coefficients: Partial<GasCoefficients>): Named
   });
 }
 
+/** What a reader must know of the gas, of a mixture of its rules. */
+export function notesOf({ name, mixture }: Case['gas']): readonly string[] {
+  if (mixture !== undefined) return mixtureNotes(mixture.map((part) => part.gas));
+  return name === null ? [] : (gases[name]?.notes ?? []);
+}
+
 /** Every number that a run takes from elsewhere, with its source, as a result file keeps it. SI; E/N in V m². */
 export function coefficientsUsed(settings: Case): Record<string, unknown> {
   const { gas, electrodes } = settings;
@@ -48,7 +55,7 @@ export function coefficientsUsed(settings: Case): Record<string, unknown> {
   });
   return {
     gas: gas.name,
-    notes: gas.name === null ? [] : (gases[gas.name]?.notes ?? []),
+    notes: notesOf(gas),
     breakdown_uncertainty: gas.breakdownUncertainty,
     kinetic_cross_section_m2: gas.kineticCrossSection,
     coefficients: Object.fromEntries(coefficientsOf(settings).map(({ name, unit, coefficient }) => [name, { unit, ...coefficient }])),
