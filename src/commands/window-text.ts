@@ -168,6 +168,8 @@ function factLines(outcome: WindowOutcome, width: number): string[] {
     const share = quantity(Math.abs(worst.supply_V) / worst.hold_off_V, '');
     rows.push(['worst instant', `${clock(worst.time_s)}: ${quantity(worst.supply_V, 'V')}, ${share} of the hold-off voltage${lag}`]);
   }
+  const beyond = beyondText(outcome);
+  if (beyond !== null) rows.push(['outside the model', beyond]);
   if (spread !== null) {
     for (const end of [spread.low, spread.high]) rows.push([`at an ion yield of ${end.ion_yield}`, endText(end, duration_s)]);
   }
@@ -176,6 +178,22 @@ function factLines(outcome: WindowOutcome, width: number): string[] {
     [LABELS],
     width,
   );
+}
+
+/** Why the model says nothing, in words; null where it always does. */
+const BEYOND: Readonly<Record<string, string>> = {
+  'no-threshold': 'no voltage up to 1e4 Td breaks down any path',
+  'field-above-data': 'E/N at the breakdown voltage is above the data of ionisation',
+  collisionless: 'electrons cross with few collisions',
+};
+
+function beyondText({ history }: WindowOutcome): string | null {
+  const outside = history.filter(({ state }) => state === 'outside-model');
+  if (outside.length === 0) return null;
+  const words = outside.map(({ note }) =>
+    note === null ? 'in dense gas the breakdown voltage is extrapolated' : (BEYOND[note] ?? 'no answer'),
+  );
+  return [...new Set(words)].join('; ');
 }
 
 function earliestText({ earliest_turn_on_s: seconds }: WindowOfYield, none: string): string {

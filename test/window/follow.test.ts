@@ -446,6 +446,7 @@ describe('simulations that give no answer', () => {
     };
     const answer = await follow(paschenCase(one), { history, voltage: 400, margin: 1.5 }, { ...world, evaluate });
     expect(answer.failures.length).toBeGreaterThan(0);
+    expect(answer.notes.join(' ')).toMatch(/Simulations gave no answer at .*taken as not holding: made to fail/);
     const failed = answer.instants.filter(({ note }) => note === 'made to fail');
     expect(failed.length).toBeGreaterThan(0);
     for (const { judgement, holdOff } of failed) {

@@ -62,6 +62,11 @@ export class HoldOffCurve {
     return this.#nodes.get(rounded(density))?.failure ?? null;
   }
 
+  /** Why simulations gave no answer, where they did not. */
+  get failures(): string[] {
+    return [...this.#nodes.values()].flatMap(({ failure }) => failure ?? []);
+  }
+
   /** What to ask of a simulation at this density; null where theory has no threshold to begin from. */
   request(density: number): HoldOffRequest | null {
     const there = rounded(density);

@@ -184,10 +184,20 @@ class Search {
       timescales: timescalesOf(this.#settings, this.#track, instants, (instant) =>
         this.#curve('typical', instant.polarity).theory.at(instant.density),
       ),
-      notes: this.#cut ? [...history.notes, CUT] : history.notes,
+      notes: [...history.notes, ...this.#shortcomings()],
       runs: this.#runs,
       failures: this.#failures,
     };
+  }
+
+  /** What this could not do, one sentence each. */
+  #shortcomings(): string[] {
+    const silent = [...this.#curves.values()].flatMap((curve) => curve.failures);
+    const count = `${silent.length === 1 ? 'one density' : `${silent.length} densities`}`;
+    return [
+      ...(silent.length > 0 ? [`Simulations gave no answer at ${count}, taken as not holding: ${silent[0]}`] : []),
+      ...(this.#cut ? [CUT] : []),
+    ];
   }
 
   /** Simulates the hold-off voltages that decide at some instants. */

@@ -1,6 +1,7 @@
 import type { Case } from '../../case.ts';
 import type { Programme } from '../../supply/settings.ts';
-import type { IonYield, Surface } from '../../surfaces/surface.ts';
+import type { Surface } from '../../surfaces/surface.ts';
+import { sameYield } from '../../surfaces/yield-law.ts';
 import { BOLTZMANN } from '../../units/constants.ts';
 import { largestVoltage } from '../scaled.ts';
 
@@ -43,8 +44,8 @@ export function yieldsSpread({ electrodes: { left, right } }: Case): boolean {
 
 /** Whether it makes no difference which wall is the cathode. */
 export function isSymmetric({ electrodes: { left, right } }: Case): boolean {
-  const same = (key: keyof IonYield): boolean => left.ionYield[key] === right.ionYield[key];
-  return same('typical') && same('low') && same('high');
+  const [one, other] = [left.ionYield, right.ionYield];
+  return sameYield(one, other) && one.low === other.low && one.high === other.high;
 }
 
 /** A path through the gas as a plane gap of its own, energised at one polarity, for runs that ask only whether it breaks down.

@@ -1,6 +1,9 @@
 import type { Case } from '../../case.ts';
 import type { Caution } from '../../onset/outcome.ts';
 import type { WindowSettings } from '../../study.ts';
+import type { IonYield } from '../../surfaces/surface.ts';
+import { yieldAt } from '../../surfaces/yield-law.ts';
+import { BOLTZMANN } from '../../units/constants.ts';
 import { windowCautions } from './cautions.ts';
 import type { Followed, FollowedInstant, WindowAnswer } from './follow.ts';
 import type { State } from './states.ts';
@@ -25,6 +28,7 @@ export interface WindowOutcome extends WindowOfYield {
   } | null;
   /** what becomes of the answer at the ends of the yields' published spread; null where the case gives one number */
   readonly yield_spread: {
+    /** electrons per ion; where they depend on the field, at the hold-off voltage of the worst instant */
     readonly low: WindowOfYield & { readonly ion_yield: number };
     readonly high: WindowOfYield & { readonly ion_yield: number };
   } | null;
@@ -79,6 +83,8 @@ export function windowOutcome(
   const most = worst === null ? null : instants[worst];
   const polarity = most !== null && most.supply < 0 ? 'right' : 'left';
   const { ionYield } = settings.electrodes[polarity];
+  const known = most ?? instants.find(({ holdOff }) => holdOff !== null) ?? null;
+  const yieldOf = (end: 'low' | 'high'): number => electronsPerIon(ionYield, end, known);
   return {
     format: 'gapwake.window/1',
     title: settings.title,
@@ -94,12 +100,20 @@ export function windowOutcome(
     yield_spread:
       ends === null
         ? null
-        : { low: { ion_yield: ionYield.low, ...ofYield(ends.low) }, high: { ion_yield: ionYield.high, ...ofYield(ends.high) } },
+        : { low: { ion_yield: yieldOf('low'), ...ofYield(ends.low) }, high: { ion_yield: yieldOf('high'), ...ofYield(ends.high) } },
     history: instants.map(historyEntry),
     notes: answer.notes,
     cautions: windowCautions(settings, answer, defaults),
     numerics: { instants: instants.length, runs: answer.runs, failures: answer.failures },
   };
+}
+
+/** One end of a yield. Where it follows a law of the field, what that gives at the hold-off voltage of one instant, to three digits; without such an instant
+ *  the end's factor on the law. */
+function electronsPerIon(ionYield: IonYield, end: 'low' | 'high', at: FollowedInstant | null): number {
+  if (ionYield.law === undefined || at === null || at.holdOff === null || at.path === null) return ionYield[end];
+  const density = at.pressure / (BOLTZMANN * at.temperature);
+  return Number(yieldAt({ ...ionYield, typical: ionYield[end] }, at.holdOff / (density * at.path)).toPrecision(3));
 }
 
 function ofYield({ windows, lowest, earliest, latest }: Followed<JudgedInstant>): WindowOfYield {
