@@ -2,6 +2,7 @@ import { readdirSync, readFileSync, statSync, truncateSync } from 'node:fs';
 import { join } from 'node:path';
 import type { Browser } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
+import { together } from '../../src/report/sections.ts';
 import { readScanFile } from '../../src/results/scan-read.ts';
 import type { WindowOutcome } from '../../src/search/window/index.ts';
 import { realProgram } from '../commands/program.ts';
@@ -152,7 +153,7 @@ describe.skipIf(skipped)(`the pages of scans and windows in a browser${skipped ?
         if (headline?.kind === 'number' || headline?.kind === 'count') expect(Number(value), name).toBe(expected);
         else expect(value, name).toBe(Array.isArray(expected) ? expected.join(', ') || 'none' : expected);
       }
-      expect(await tab.locator('#point').textContent()).toContain(points[place].outcome?.verdict.reason);
+      expect(await tab.locator('#point').textContent()).toContain(together(points[place].outcome?.verdict.reason ?? '?'));
     };
     const start = await chosen();
     await check(start);

@@ -111,8 +111,10 @@ describe.skipIf(skipped)(`the page of a run in a browser${skipped ? ' (skipped: 
       const image = new Image();
       image.src = 'https://gapwake.invalid/x.png';
       document.body.append(image);
+      fetch('https://gapwake.invalid/x.json').catch(() => undefined);
+      document.body.append(Object.assign(document.createElement('iframe'), { src: 'https://gapwake.invalid/' }));
     }`);
-    await expect.poll(() => complaints.length).toBeGreaterThanOrEqual(2);
+    await expect.poll(() => complaints.length).toBeGreaterThanOrEqual(4);
     expect(await tab.evaluate('window.got')).toBeUndefined();
     expect(complaints.every((line) => line.includes('Content Security Policy'))).toBe(true);
     await close();

@@ -14,6 +14,7 @@ import {
 } from '../scan/data.ts';
 import { curveAxis, curveFigure, pointAt, quantityMap, verdictMap } from '../scan/figures.ts';
 import type { ScanPageData } from '../scan/page.ts';
+import { together } from '../sections.ts';
 import { canvasAddress, toNode } from './dom.ts';
 import { begin, byId, innerWidth, openForPrint, plot } from './linked.ts';
 import { exact, texts } from './unpack.ts';
@@ -222,7 +223,7 @@ class ScanViewer {
     );
     byId('point').replaceChildren(
       toNode(el('h3', {}, `Point ${place}`)),
-      toNode(el('p', {}, table.reasons[place] ?? '')),
+      toNode(el('p', {}, together(table.reasons[place] ?? ''))),
       toNode(el('table', {}, el('tbody', {}, where, rows))),
     );
     document.body.dataset.point = String(place);

@@ -5,7 +5,7 @@ import { withoutScript } from '../linked-section.ts';
 import { packExact, packSingle, packTexts } from '../pack.ts';
 import type { Packed } from '../packed.ts';
 import { coefficientSection } from '../run/coefficient-section.ts';
-import { assumptionSection, cautionSection, footer, provenance } from '../sections.ts';
+import { assumptionSection, cautionSection, footer, provenance, together } from '../sections.ts';
 import { axisValue, columnOf, type ScanAxisValues, type ScanColumn, type YieldBand } from './data.ts';
 import type { ScanReport } from './report.ts';
 
@@ -155,7 +155,7 @@ function extremes(scan: ScanReport, name: string): Element[] {
         { class: 'number', 'data-column': name, 'data-place': place, 'data-value': column.values[place] },
         formatQuantity(column.values[place], unit),
       ),
-      el('div', { class: 'faint' }, where.join(', ')),
+      el('div', { class: 'faint' }, together(where.join(', '))),
     );
   };
   return [el('tr', {}, el('th', { scope: 'row' }, column.longName), cell(least), cell(most))];
