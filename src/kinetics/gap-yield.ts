@@ -44,7 +44,10 @@ export interface GapYield {
 
 const BATCHES = 16;
 const GAP_STREAM = 3;
-const MOST = 4000;
+/** electrons followed at the same time, for each emitted in the batch and at least; more are represented by a choice of them, whose noise is small beside
+ *  that of what the emitted ones do first */
+const MOST_PER_EMITTED = 8;
+const MOST = 400;
 /** slices of time after which electrons that cannot ionise are no longer waited for */
 const PATIENCE = 400;
 
@@ -82,7 +85,7 @@ export function gapBatchOf({ table, field, emissionEnergy, particles, seed, stre
   const { tally } = engine;
   const count = Math.max(1, Math.round(particles / BATCHES));
   const electrons = emit(count, emissionEnergy, low, random);
-  const most = Math.max(MOST, 2 * count);
+  const most = Math.max(MOST, MOST_PER_EMITTED * count);
   const gain = gainAhead(field);
   const threshold = table.kinds.reduce(
     (least, kind, p) => (kind === 'ionisation' ? Math.min(least, table.thresholds[p]) : least),
