@@ -332,7 +332,8 @@ function ionisedRates(
   }
 }
 
-/** The same with attachment, η|Γ_e|, and negative ions as third species. */
+/** The same with attachment, −η Γ_e sign(E), and negative ions as third species. Attachment too is by the flux along the drift: η|Γ_e|
+ *  would take electrons from a cell that a wiggle has left with less than none, and so feed the wiggle. */
 function attachedRates(
   widths: Float64Array,
   alpha: Float64Array,
@@ -349,9 +350,10 @@ function attachedRates(
     const width = widths[i];
     const left = electrons[i];
     const right = electrons[i + 1];
-    const half = 0.5 * cellFactor(0.5 * (alpha[i] + alpha[i + 1] - eta[i] - eta[i + 1]) * width);
-    const ionised = half * 0.5 * (alpha[i] + alpha[i + 1]) * ((y[field + i] < 0 ? left : -left) + (y[field + i + 1] < 0 ? right : -right));
-    const attached = half * 0.5 * (eta[i] + eta[i + 1]) * (Math.abs(left) + Math.abs(right));
+    const along = (y[field + i] < 0 ? left : -left) + (y[field + i + 1] < 0 ? right : -right);
+    const half = 0.5 * cellFactor(0.5 * (alpha[i] + alpha[i + 1] - eta[i] - eta[i + 1]) * width) * along;
+    const ionised = half * 0.5 * (alpha[i] + alpha[i + 1]);
+    const attached = half * 0.5 * (eta[i] + eta[i + 1]);
     out[first + i] += ionised - attached - (right - left) / width;
     out[row + first + i] += ionised - (flux[1][i + 1] - flux[1][i]) / width;
     if (flux.length > 2) out[2 * row + first + i] += attached - (flux[2][i + 1] - flux[2][i]) / width;

@@ -119,7 +119,6 @@ export class LinearSystem {
       const meanAlpha = 0.5 * (alpha[i] + alpha[i + 1]);
       const meanEta = 0.5 * (eta[i] + eta[i + 1]);
       const alongSum = (y[field + i] < 0 ? left : -left) + (y[field + i + 1] < 0 ? right : -right);
-      const sizeSum = Math.abs(left) + Math.abs(right);
       for (let k = 0; k < species; k++) {
         const diagonal = (species * i + this.#slots[k]) * stride + lower;
         entries[diagonal] += a;
@@ -129,10 +128,10 @@ export class LinearSystem {
         const s = (side === 0 ? -1 : 1) / width;
         const along = y[field + f] < 0 ? 1 : -1;
         const made = half * meanAlpha * along;
-        const lost = half * meanEta * Math.sign(electronFlux[f]);
+        const lost = half * meanEta * along;
         const netSlope = eq.alphaSlope[f] - eq.etaSlope[f];
         const madeByField = (0.5 * half * eq.alphaSlope[f] + bend * meanAlpha * netSlope) * alongSum;
-        const lostByField = (0.5 * half * eq.etaSlope[f] + bend * meanEta * netSlope) * sizeSum;
+        const lostByField = (0.5 * half * eq.etaSlope[f] + bend * meanEta * netSlope) * alongSum;
         B.fill(0);
         for (let k = 0; k < species; k++) {
           const fromElectrons = k === 0 ? -made + lost : k === 1 ? -made : -lost;

@@ -55,4 +55,17 @@ describe('the steady current below the breakdown voltage', () => {
       for (const row of rows) expect(Math.abs(row[3]), `at ${row[0]} of V_s`).toBeLessThan(5e-3);
     });
   }
+
+  it('is the closed form within 0.5 % where electrons attach within a cell or a small part of one', () => {
+    const rows = [10, 50, 200, 1000].map((attachment) => {
+      const gap = { ...rightOfMinimum, attachment };
+      const settings = caseOf(gap, { seed: { cathodeCurrent: SEED }, supply: { programme: stepTo(200) }, observe: { until: 0.05 } });
+      const outcome = simulateNow(settings);
+      const exact = amplification(gap, 200);
+      expect(outcome.verdict.state).toBe('holds');
+      return [etaOf(gap) * gap.spacing, exact, outcome.final.current_A / SEED, outcome.final.current_A / SEED / exact - 1];
+    });
+    printTable('steady current with strong attachment', ['ηd', 'closed form', 'run', 'error'], rows);
+    for (const row of rows) expect(Math.abs(row[3]), `at ηd = ${row[0]}`).toBeLessThan(5e-3);
+  });
 });
