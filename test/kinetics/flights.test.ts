@@ -192,6 +192,19 @@ describe('cells', () => {
     expect(engine.tally.leftEnergy[0]).toBeCloseTo(2, 12);
   });
 
+  test('an electron whose parabola leads through a wall and back in is gone at the wall', () => {
+    // 1 eV towards the wall, 0.5 mm away, against 1.5 V/mm: it would turn 0.17 mm behind the wall
+    const engine = new Flights(empty, { faces: Float64Array.of(0, 2e-3), force: Float64Array.of(1.5e3) }, new Random(1));
+    const electrons = new Electrons();
+    electrons.add(1);
+    electrons.x[0] = 5e-4;
+    electrons.ux[0] = -1;
+    const turn = (2 * (1 / 1.5e3)) / SPEED_OF_1_EV;
+    engine.run(electrons, 2 * turn);
+    expect([...engine.tally.left]).toEqual([1, 0]);
+    expect(engine.tally.leftEnergy[0]).toBeCloseTo(0.25, 12);
+  });
+
   test('that all have the same field are the same as no cells', () => {
     const force = 300e-21 * density;
     const table = collisionTable(argon, { density, temperature: 0 }, 'isotropic');
