@@ -5,7 +5,7 @@ import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import { together } from '../../src/report/sections.ts';
 import { readScanFile } from '../../src/results/scan-read.ts';
 import type { WindowOutcome } from '../../src/search/window/index.ts';
-import { realProgram } from '../commands/program.ts';
+import { plainEnvironment, realProgram } from '../commands/program.ts';
 import { GRID, scanCase } from '../scan/studies.ts';
 import { browserPath, launch } from './help/browser.ts';
 import { seriousFaults } from './help/faults.ts';
@@ -28,8 +28,11 @@ beforeAll(async () => {
   }
   await writeManyPoints(at('many.h5'), 100, 100, HOSTILE);
   for (const name of ['window', 'grid', 'line', 'many']) {
-    const { code, err } = await program.run(['report', `${name}.h5`, '--figures', `figures-${name}`, '--quiet']);
+    // without a converter on the path
+    const figures = name === 'many' ? [] : ['--figures', `figures-${name}`];
+    const { code, out, err } = await program.run(['report', `${name}.h5`, ...figures], { env: { ...plainEnvironment(), PATH: '' } });
     expect({ code, err }).toEqual({ code: 0, err: '' });
+    if (name !== 'many') expect(out).toContain('no PNG, because rsvg-convert is not installed');
   }
 }, 120_000);
 
