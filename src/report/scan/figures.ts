@@ -20,6 +20,8 @@ import {
 /** The figures of a scan: curves over one varied entry, maps over two. */
 
 const LEFT = 74;
+/** lines of equal value in a map */
+const MOST_LEVELS = 7;
 
 /** Colours of the verdicts: pale, dark and in between, so that they differ in lightness too. */
 const VERDICTS: Readonly<Record<string, { readonly colour: Rgb; readonly word: string; readonly dot: string }>> = {
@@ -109,7 +111,8 @@ export function curveFigure(table: ScanTable, view: ScanView, name: string, sele
   const bandCurves = beside === null ? [] : [pick(beside.low), pick(beside.high)];
   const curves: Curve[] = [
     ...(typical === null ? [] : [{ name: 'theory', style: 's2', x: xs, y: typical }]),
-    { name: 'simulated', style: 's1', x: xs, y: ys },
+    // points that share an x are no curve
+    { name: 'simulated', style: 's1', x: xs, y: ys, points: new Set(xs).size < xs.length },
   ];
   const ofSearch = name.startsWith('found_');
   const state = columnOf(table, ofSearch ? 'found_state' : 'verdict');
@@ -128,18 +131,23 @@ export function curveFigure(table: ScanTable, view: ScanView, name: string, sele
       right: width < 480 ? 18 : KEY_WIDTH + 30,
       curves,
       dots: [...new Set(words)].map((word) => ({ name: dotOf(word).word, dot: dotOf(word).dot })),
+      footer: ys.every(Number.isFinite) ? [] : ['Bars at the foot: points that have no such value.'],
       areas: beside === null ? [] : [{ name: 'yield’s spread', fill: 'band' }],
       under: (box, x, y) => (beside === null ? [] : [bandArea(xs, bandCurves[0], bandCurves[1], box, x, y)]),
       over: (box, x, y) =>
         places.map((place, i) => {
           const [px, sy] = [box.left + x.at(xs[i]) * box.width, y.at(ys[i])];
-          // where there is no value the verdict stands at the bottom
-          const py = Number.isFinite(sy) ? box.top + (1 - sy) * box.height : box.top + box.height - 6;
           if (!Number.isFinite(px)) return null;
+          const kind = dotOf(words[i]).dot;
+          // a point without a value is a bar at the foot of the figure: its verdict counts all the same
+          const valued = Number.isFinite(sy);
+          const py = valued ? box.top + (1 - sy) * box.height : box.top + box.height - 6;
           return el(
             'g',
             {},
-            el('circle', { class: dotOf(words[i]).dot, cx: round(px), cy: round(py), r: 4, 'data-point': place }),
+            valued
+              ? el('circle', { class: kind, cx: round(px), cy: round(py), r: 4, 'data-point': place })
+              : el('rect', { class: kind, x: round(px - 2.5), y: round(py - 6), width: 5, height: 12, 'data-point': place }),
             place === selected ? el('circle', { class: 'now', cx: round(px), cy: round(py), r: 8 }) : null,
           );
         }),
@@ -223,13 +231,15 @@ export function quantityMap(
   grid.each((place) => shown.push(column.values[place]));
   const colour = valueScale({ ...column, values: Float64Array.from(shown) }, [], 22);
   const colours = colour(300);
-  const levels = colours.ticks.filter(({ label, at }) => label !== '' && at > 0.001 && at < 0.999).map(({ at }) => colours.from(at));
+  const labelled = colours.ticks.filter(({ label, at }) => label !== '' && at > 0.001 && at < 0.999);
+  const every = Math.ceil(labelled.length / MOST_LEVELS);
+  const levels = labelled.filter((_, i) => i % every === 0).map(({ at }) => colours.from(at));
   // where nothing is: grey, the last colour
   const palette: Rgb[] = [...SCALE.slice(0, 255), UNKNOWN];
   return mapFigure(
     {
       ...base('quantity-map', column.longName, width),
-      heading: `${capital(column.longName)}${column.units === '1' ? '' : ` [${column.units}]`}`,
+      heading: colours.title,
       yName: grid.yTitle,
       paint: grid.paint((place) => {
         const value = column.values[place];
