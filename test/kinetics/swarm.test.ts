@@ -2,6 +2,7 @@
 import { describe, expect, test } from 'vitest';
 import { argon } from '../../src/kinetics/argon.ts';
 import { ATOMIC_MASS, type CrossSectionSet, ELECTRON_MASS, SPEED_OF_1_EV } from '../../src/kinetics/cross-sections.ts';
+import { helium } from '../../src/kinetics/helium.ts';
 import { lucasSaelee, reidRamp } from '../../src/kinetics/model-gases.ts';
 import { jackknife, type Measured } from '../../src/kinetics/statistics.ts';
 import { batchOf, combine, pilotOf, type SwarmPoint, swarmGas } from '../../src/kinetics/swarm.ts';
@@ -124,6 +125,15 @@ describe('argon', () => {
     const point = pointOf(argon, 150, 293.15, 8, 1e6);
     expectNear(point.meanEnergy, two.mean, 3, 0.03);
     expectNear(point.fluxDrift, two.mobility * 150e-21, 3, 0.05);
+  });
+});
+
+describe('helium', () => {
+  // Ward, J. Appl. Phys. 33, 2789, 1962 (from memory, H; pressure at 0 °C): α/p = 4.4 exp(−14/√(E/p)); 25 % for cross-sections recollected to 20 %
+  test('at 200 Td makes about as many ions per length as measured', () => {
+    const perTorr = 200 / 2.829;
+    const ward = (4.4 * Math.exp(-14 / Math.sqrt(perTorr)) * 1e-4) / 3.535e16;
+    expectNear(pointOf(helium, 200, 293.15, 6).ionisation, ward, 3, 0.25);
   });
 });
 
