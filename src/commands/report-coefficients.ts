@@ -67,9 +67,10 @@ function entry(name: string, label: string, value: unknown, words: string): Coef
 function yieldText(ion: unknown): string {
   const [typical, low, high] = ['typical', 'low', 'high'].map((key) => number(part(ion, key)));
   if (typical === null) return part(ion, 'form') === undefined ? '–' : formText(part(ion, 'form'), '');
+  const factor = part(ion, 'law') === undefined ? '' : ', times its law of the field at the cathode';
   return low === null || high === null || low === high
-    ? formatQuantity(typical, '')
-    : `${formatQuantity(typical, '')}, published ${formatQuantity(low, '')} to ${formatQuantity(high, '')}`;
+    ? `${formatQuantity(typical, '')}${factor}`
+    : `${formatQuantity(typical, '')}, published ${formatQuantity(low, '')} to ${formatQuantity(high, '')}${factor}`;
 }
 
 /** A form with its numbers; x = E/N. */
@@ -114,6 +115,8 @@ function formText(form: unknown, unit: string): string {
             .join('; ')
         : '–';
     }
+    case 'mixed':
+      return `made of those of ${count('parts')} gases, by the rule at the right`;
     default:
       return '–';
   }

@@ -15,7 +15,7 @@ export function coefficientSection(coefficients: CoefficientsUsed, run: RunRepor
     el(
       'p',
       {},
-      coefficients.gas === null ? 'Every coefficient is the case’s own.' : `Gas: ${coefficients.gas}. `,
+      gasText(coefficients),
       coefficients.breakdownUncertainty === null
         ? null
         : `A breakdown voltage computed with these data is uncertain by about ${percent(coefficients.breakdownUncertainty, false)}.`,
@@ -59,6 +59,12 @@ export function coefficientSection(coefficients: CoefficientsUsed, run: RunRepor
           ),
         ]),
   );
+}
+
+function gasText({ gas, entries }: CoefficientsUsed): string {
+  if (gas !== null) return `Gas: ${gas}. `;
+  const own = entries.every(({ status, name }) => status === 'given' || name.endsWith('_ion_yield'));
+  return own ? 'Every coefficient is the case’s own. ' : 'Gas: a mixture, its coefficients made of those of its parts. ';
 }
 
 /** @param use  null: not used or not known; undefined: not asked for */
