@@ -79,7 +79,7 @@ describe.skipIf(skipped)(`the pages of scans and windows in a browser${skipped ?
   let browser: Browser;
   beforeAll(async () => {
     browser = await launch();
-  });
+  }, 60_000);
   afterAll(() => browser?.close());
 
   test.each(['window', 'grid', 'line', 'many'])('%s opens with no request and no complaint, and fits 420 px', async (name) => {

@@ -17,7 +17,7 @@ const HOSTILE = '</script><script>alert(1)</script><img src=x onerror=alert(2)> 
 beforeAll(async () => {
   program.write('plain.yaml', openCase());
   expect((await program.run(['run', 'plain.yaml', '-o', 'plain.h5', '--quiet'])).code).toBe(0);
-});
+}, 60_000);
 
 describe('gapwake report on a run', () => {
   test('the page lies beside the result, replaces an older page and nothing else', async () => {
@@ -89,7 +89,7 @@ describe.skipIf(skipped)(`the page of a run in a browser${skipped ? ' (skipped: 
     browser = await launch();
     page = join(program.folder(), 'page.html');
     expect((await program.run(['report', 'plain.h5', '-o', 'page.html', '--quiet'])).code).toBe(0);
-  });
+  }, 60_000);
   afterAll(() => browser?.close());
 
   test('it opens from disk with no request and no complaint', async () => {
