@@ -4,6 +4,7 @@ import { defineConfig } from 'vitest/config';
 export default defineConfig({
   test: {
     testTimeout: 60_000,
+    hookTimeout: 120_000, // some build the program
     projects: [
       { extends: true, test: { name: 'fast', include: ['test/**/*.test.ts'], exclude: ['test/**/*.long.test.ts'] } },
       { extends: true, test: { name: 'long', include: ['test/**/*.long.test.ts'], testTimeout: 900_000 } },
