@@ -6,7 +6,7 @@ import { yieldAt, yieldSlopeAt } from '../surfaces/yield-law.ts';
 import { ELEMENTARY_CHARGE } from '../units/constants.ts';
 import { fluxAtFaces, linearFluxAtFaces, makeStencils, type Stencils } from './drift-diffusion.ts';
 import { emissionShare, emissionShareSlope } from './emission.ts';
-import { cellFactor } from './production.ts';
+import { alongDrift, cellFactor } from './production.ts';
 
 /** One kind of charge carrier. Order everywhere: electrons, positive ions, negative ions. */
 export interface Species {
@@ -264,7 +264,7 @@ export class GapEquations {
     if (this.charges.length === 2 && !this.laws.attachment) {
       ionisedRates(this.grid.widths, v.alpha, y, field, v.flux[0], v.flux[1], out, first, row + first);
     } else {
-      attachedRates(this.grid.widths, v.alpha, v.eta, y, field, v.flux, out, first, row);
+      attachedRates(this.grid.widths, v.alpha, v.eta, y, field, this.laws.density, v.flux, out, first, row);
     }
     const ei = this.laws.electronIonRecombination;
     if (ei > 0) recombine(ei, y, first, row + first, this.grid.cells, out);
@@ -332,14 +332,16 @@ function ionisedRates(
   }
 }
 
-/** The same with attachment, −η Γ_e sign(E), and negative ions as third species. Attachment too is by the flux along the drift: η|Γ_e|
- *  would take electrons from a cell that a wiggle has left with less than none, and so feed the wiggle. */
+/** The same with attachment, η Γ_e along the drift, and negative ions as third species. (η|Γ_e| would take electrons from a cell that
+ *  a wiggle has left with less than none, and so feed the wiggle.)
+ *  @param density N [1/m³] */
 function attachedRates(
   widths: Float64Array,
   alpha: Float64Array,
   eta: Float64Array,
   y: Float64Array,
   field: number,
+  density: number,
   flux: readonly Float64Array[],
   out: Float64Array,
   first: number,
@@ -350,10 +352,10 @@ function attachedRates(
     const width = widths[i];
     const left = electrons[i];
     const right = electrons[i + 1];
-    const along = (y[field + i] < 0 ? left : -left) + (y[field + i + 1] < 0 ? right : -right);
-    const half = 0.5 * cellFactor(0.5 * (alpha[i] + alpha[i + 1] - eta[i] - eta[i + 1]) * width) * along;
-    const ionised = half * 0.5 * (alpha[i] + alpha[i + 1]);
-    const attached = half * 0.5 * (eta[i] + eta[i + 1]);
+    const [leftField, rightField] = [y[field + i], y[field + i + 1]];
+    const half = 0.5 * cellFactor(0.5 * (alpha[i] + alpha[i + 1] - eta[i] - eta[i + 1]) * width);
+    const ionised = half * 0.5 * (alpha[i] + alpha[i + 1]) * ((leftField < 0 ? left : -left) + (rightField < 0 ? right : -right));
+    const attached = half * 0.5 * (eta[i] + eta[i + 1]) * (left * alongDrift(leftField, density) + right * alongDrift(rightField, density));
     out[first + i] += ionised - attached - (right - left) / width;
     out[row + first + i] += ionised - (flux[1][i + 1] - flux[1][i]) / width;
     if (flux.length > 2) out[2 * row + first + i] += attached - (flux[2][i + 1] - flux[2][i]) / width;

@@ -1,4 +1,5 @@
 import { expOfNegative } from '../numerics/exponential.ts';
+import { TOWNSEND } from '../units/constants.ts';
 
 /** Ions made per cell from the flux form: α times the mean of the two face fluxes, α the mean of its face values, times φ(z),
  *  z = (α − η)Δx. (Weighing each face's flux by its own α would answer unequally to the field at the two faces and put a term
@@ -29,4 +30,22 @@ export function cellFactorSlope(z: number): number {
 function tanhOfHalf(z: number): number {
   const e = expOfNegative(-Math.abs(z));
   return (Math.sign(z) * (1 - e)) / (1 + e);
+}
+
+/** E/N around zero over which attachment by the flux along the drift fades out and back in [V m²]: η, unlike α, need not vanish there, and
+ *  electrons that diffuse through a place without field have no direction of drift. A choice of the program, not a datum. */
+const ATTACHMENT_WIDTH = 0.3 * TOWNSEND;
+
+/** How far a flux of electrons counts as along their drift in a field E [V/m], −1 … 1: −sign(E) beyond a few tenths of a townsend.
+ *  @param density N [1/m³] */
+export function alongDrift(E: number, density: number): number {
+  const width = ATTACHMENT_WIDTH * density;
+  return -E / Math.sqrt(E * E + width * width);
+}
+
+/** d alongDrift / dE [m/V] */
+export function alongDriftSlope(E: number, density: number): number {
+  const width = ATTACHMENT_WIDTH * density;
+  const q = E * E + width * width;
+  return (-width * width) / (q * Math.sqrt(q));
 }

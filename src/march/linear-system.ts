@@ -1,7 +1,7 @@
 import type { Gauss } from '../gap/gauss.ts';
 import type { Layout } from '../gap/layout.ts';
 import type { GapEquations } from '../laws/gap-equations.ts';
-import { cellFactor, cellFactorSlope } from '../laws/production.ts';
+import { alongDrift, alongDriftSlope, cellFactor, cellFactorSlope } from '../laws/production.ts';
 import { BandMatrix } from '../numerics/band.ts';
 import { ELEMENTARY_CHARGE, VACUUM_PERMITTIVITY } from '../units/constants.ts';
 
@@ -106,6 +106,7 @@ export class LinearSystem {
     const { entries, stride, lower } = this.#matrix;
     const byField = eq.byField;
     const { alpha, eta } = eq.at;
+    const { density } = eq.laws;
     const electronFlux = eq.at.flux[0];
     const B = new Float64Array(species * species);
     const G = new Float64Array(species);
@@ -119,6 +120,7 @@ export class LinearSystem {
       const meanAlpha = 0.5 * (alpha[i] + alpha[i + 1]);
       const meanEta = 0.5 * (eta[i] + eta[i + 1]);
       const alongSum = (y[field + i] < 0 ? left : -left) + (y[field + i + 1] < 0 ? right : -right);
+      const attachedSum = left * alongDrift(y[field + i], density) + right * alongDrift(y[field + i + 1], density);
       for (let k = 0; k < species; k++) {
         const diagonal = (species * i + this.#slots[k]) * stride + lower;
         entries[diagonal] += a;
@@ -128,10 +130,12 @@ export class LinearSystem {
         const s = (side === 0 ? -1 : 1) / width;
         const along = y[field + f] < 0 ? 1 : -1;
         const made = half * meanAlpha * along;
-        const lost = half * meanEta * along;
+        const lost = half * meanEta * alongDrift(y[field + f], density);
         const netSlope = eq.alphaSlope[f] - eq.etaSlope[f];
         const madeByField = (0.5 * half * eq.alphaSlope[f] + bend * meanAlpha * netSlope) * alongSum;
-        const lostByField = (0.5 * half * eq.etaSlope[f] + bend * meanEta * netSlope) * alongSum;
+        const lostByField =
+          (0.5 * half * eq.etaSlope[f] + bend * meanEta * netSlope) * attachedSum +
+          half * meanEta * electronFlux[f] * alongDriftSlope(y[field + f], density);
         B.fill(0);
         for (let k = 0; k < species; k++) {
           const fromElectrons = k === 0 ? -made + lost : k === 1 ? -made : -lost;
