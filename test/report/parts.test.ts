@@ -188,7 +188,16 @@ describe('axes', () => {
           expect(label).not.toContain('NaN');
         }
       }),
+      { numRuns: 1000 },
     );
+  });
+
+  test('a range of next to nothing beside its place has few ticks', () => {
+    for (const place of [1, -1, 1e20, -1e300]) {
+      const { ticks } = linear('x', 'V', place, place + Math.abs(place) * Number.EPSILON, room);
+      expect(ticks.length).toBeGreaterThan(0);
+      expect(ticks.length).toBeLessThan(20);
+    }
   });
 
   test('the roundest number of a range has the fewest digits', () => {

@@ -49,12 +49,17 @@ export function prefixFor(size: number, unit: string): { readonly prefix: string
   return { prefix, factor };
 }
 
+/** Least range of an axis, as a share of the numbers on it. */
+const NARROWEST = 1e-9;
+
 /** An even axis over a range widened to round numbers. */
 export function linear(name: string, unit: string, from: number, to: number, room: Room, widen = true): Scale {
-  const span = to > from ? to - from : Math.max(Math.abs(to), 1e-300);
+  const size = Math.max(Math.abs(from), Math.abs(to));
+  // a range next to nothing beside its own place is drawn as a billionth of that: numbers closer than that cannot be told apart
+  const span = to > from ? Math.max(to - from, NARROWEST * size) : Math.max(size, 1e-300);
   const step = roundStep(span, Math.max(2, Math.floor(room.length / room.apart)));
   const low = widen ? Math.floor(from / step + 1e-9) * step : from;
-  const high = widen ? Math.ceil((to > from ? to : from + span) / step - 1e-9) * step : to;
+  const high = widen ? Math.ceil((from + span) / step - 1e-9) * step : from + span;
   const { prefix, factor } = prefixFor(Math.max(Math.abs(low), Math.abs(high)), unit);
   const ticks: Tick[] = [];
   for (let k = Math.ceil(low / step - 1e-9); k * step <= high + 1e-9 * step; k++)
