@@ -28,7 +28,7 @@ export function acquireLock(lockPath: string): Lock {
         },
       };
     }
-    const content = contentOf(lockPath);
+    const content = settledContentOf(lockPath);
     if (content === null) continue;
     refuseUnlessDead(lockPath, content);
     takeAway(lockPath, content);
@@ -55,6 +55,16 @@ function create(lockPath: string): boolean {
   }
 }
 
+/** Content of a lock file, once there is some. An empty one is being written, or was left by a process killed between making it and writing it:
+ *  it is given the time that writing may take, and is then a left-over. */
+function settledContentOf(lockPath: string): string | null {
+  for (;;) {
+    const content = contentOf(lockPath);
+    if (content !== '' || Date.now() - (statSync(lockPath, { throwIfNoEntry: false })?.mtimeMs ?? 0) > writingTime) return content;
+    Atomics.wait(new Int32Array(new SharedArrayBuffer(4)), 0, 0, 50);
+  }
+}
+
 function contentOf(lockPath: string): string | null {
   try {
     if (!statSync(lockPath).isFile()) throw new ResultFileError('foreign', lockPath, 'is in the way and is not a lock of gapwake');
@@ -66,10 +76,7 @@ function contentOf(lockPath: string): string | null {
 }
 
 function refuseUnlessDead(lockPath: string, content: string): void {
-  if (content === '') {
-    if (Date.now() - statSync(lockPath).mtimeMs > writingTime) return;
-    throw new ResultFileError('locked', lockPath, 'another process is taking this lock');
-  }
+  if (content === '') return;
   if (!/^[1-9][0-9]{0,9}\n?$/.test(content)) {
     throw new ResultFileError('foreign', lockPath, 'is in the way and is not a lock of gapwake; choose another output name or move it');
   }
