@@ -65,7 +65,7 @@ describe('electrons of a gap', () => {
     // electrons that arrive, per electron emitted, grow as e^(αd)
     const slope = Math.log(long.arrived.value / short.arrived.value) / 0.006 / TORR;
     const error = Math.hypot(long.arrived.error / long.arrived.value, short.arrived.error / short.arrived.value) / 0.006 / TORR;
-    // of swarm.test.ts and of `gapwake swarm argon --at "500 Td"`: 1.063e-20 m², ± 0.1 %
+    // of swarm-values.long.test.ts and of `gapwake swarm argon --at "500 Td"`: 1.063e-20 m², ± 0.1 %
     expect(Math.abs(slope - 1.063e-20)).toBeLessThan(5 * error + 0.02 * 1.063e-20);
     expect(error).toBeLessThan(0.02 * slope);
   });
