@@ -1,7 +1,7 @@
 import * as z from 'zod';
 import { clip, DIMENSIONS, type DimensionName, expectation, sameExponents, unitFactor } from '../units/index.ts';
+import { printable } from '../units/printable.ts';
 import { type Bounds, type IssueDetail, isWithin, section } from './fields.ts';
-import { escapeControls } from './problem.ts';
 
 /** What a case's data sets are read with: the finite values of a one-dimensional numeric data set and its attribute `units`, or why there are none. */
 export type DatasetReader = (relativePath: string, dataset: string) => DatasetRead;
@@ -49,7 +49,7 @@ export function dataset(reader: DatasetReader, dimension: DimensionName, bounds:
       if (!read.ok)
         return report(key, 'a data set of finite numbers in one dimension', {
           code: 'unreadable',
-          found: escapeControls(read.reason).slice(0, 200),
+          found: printable(read.reason).slice(0, 200),
         });
       const scale = factorOf(read.units, spec[unitKey], of);
       if (!scale.ok)

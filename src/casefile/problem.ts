@@ -1,4 +1,5 @@
 import { clip } from '../units/index.ts';
+import { printable } from '../units/printable.ts';
 
 /** One mistake in a case: what was expected where, and what stands there. */
 export interface Problem {
@@ -59,16 +60,11 @@ export interface Place {
 /** A problem as one line of text: `case.yaml:4:10: gap.spacing: expected …, found …; did you mean …?` */
 export function formatProblem(problem: Problem): string {
   const { line, column, path, expected, found, nearest } = problem;
-  const file = [...problem.file].length > 200 ? clip(problem.file) : escapeControls(problem.file);
+  const file = [...problem.file].length > 200 ? clip(problem.file) : printable(problem.file);
   const place = line === null ? file : `${file}:${line}:${column ?? 1}`;
-  const where = path === '' || file === `--set ${path}` ? '' : ` ${escapeControls(path)}:`;
+  const where = path === '' || file === `--set ${path}` ? '' : ` ${printable(path)}:`;
   const hint = nearest === null ? '' : `; did you mean ${nearest}?`;
   return `${place}:${where} expected ${expected}, found ${found}${hint}`;
-}
-
-/** Text with control and direction-changing characters escaped. */
-export function escapeControls(text: string): string {
-  return text.replace(/[\p{Cc}\u2028-\u202e\u2066-\u2069]/gu, (c) => `\\u${c.charCodeAt(0).toString(16).padStart(4, '0')}`);
 }
 
 /** Problems in the order of the file; those without a line last, as they came. */

@@ -2,9 +2,9 @@ import { dirname } from 'node:path';
 import { parseSource } from '../casefile/document.ts';
 import { formatProblem, type ReadResult, readCase } from '../casefile/index.ts';
 import { applyOverrides } from '../casefile/overrides.ts';
+import { printable } from '../units/printable.ts';
 import { EXIT } from './exit-codes.ts';
 import { Failure, problemWithoutPlace } from './failure.ts';
-import { printable } from './printable.ts';
 import { readText } from './read-text.ts';
 import { datasetReader, tableReader } from './tables.ts';
 

@@ -1,6 +1,6 @@
 import type { Caution, CautionCode } from '../onset/outcome.ts';
+import { printable } from '../units/printable.ts';
 import { wrap } from './layout.ts';
-import { printable } from './printable.ts';
 import type { Terminal } from './terminal.ts';
 
 /** The last line of everything a person reads. */

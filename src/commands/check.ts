@@ -2,12 +2,12 @@ import { caseJsonSchema, caseTemplate } from '../casefile/index.ts';
 import { highestOpenGapVoltage } from '../onset/highest-voltage.ts';
 import { prognosisCautions } from '../onset/prognosis.ts';
 import { predict, prospects } from '../theory/predict.ts';
+import { printableJson } from '../units/printable.ts';
 import { VERSION } from '../version.ts';
 import { loadCase } from './case-source.ts';
 import { gasJson, yieldJson } from './check-spread.ts';
 import { checkText } from './check-text.ts';
 import type { CheckOptions } from './cli.ts';
-import { printableJson } from './printable.ts';
 import type { Terminal } from './terminal.ts';
 
 /** Reads a case and says what it means and what theory expects; simulates nothing. */

@@ -1,10 +1,10 @@
 import { Command, CommanderError, InvalidArgumentError, Option } from 'commander';
+import { printable, printableJson } from '../units/printable.ts';
 import { VERSION } from '../version.ts';
 import { EXIT } from './exit-codes.ts';
 import { Failure, problemWithoutPlace } from './failure.ts';
 import type { GasOptions } from './gas.ts';
 import { wrap } from './layout.ts';
-import { printable, printableJson } from './printable.ts';
 import type { ReportOptions } from './report.ts';
 import type { SwarmOptions } from './swarm-request.ts';
 import { processTerminal, type Terminal } from './terminal.ts';

@@ -1,7 +1,7 @@
 import type { ResultFileError } from '../results/errors.ts';
+import { printable } from '../units/printable.ts';
 import { EXIT } from './exit-codes.ts';
 import { Failure, problemWithoutPlace } from './failure.ts';
-import { printable } from './printable.ts';
 
 /** A result file that cannot be read or written ends a command. */
 export function fileFailure({ path, code, message }: ResultFileError): Failure {

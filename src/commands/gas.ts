@@ -4,6 +4,7 @@ import { dataSets, gasData, gases } from '../gases/index.ts';
 import { type SurfaceData, surfaces } from '../surfaces/index.ts';
 import { BOLTZMANN, TOWNSEND } from '../units/constants.ts';
 import { clip, nearestSpelling, parseAnyOf } from '../units/index.ts';
+import { printableJson } from '../units/printable.ts';
 import { EXIT } from './exit-codes.ts';
 import { Failure, problemWithoutPlace } from './failure.ts';
 import { gasCsv } from './gas-csv.ts';
@@ -11,7 +12,6 @@ import { gasJson, listJson, surfaceJson } from './gas-json.ts';
 import { listText } from './gas-list-text.ts';
 import { surfaceText } from './gas-surface-text.ts';
 import { gasText, valuesText } from './gas-text.ts';
-import { printableJson } from './printable.ts';
 import type { Terminal } from './terminal.ts';
 
 export interface GasOptions {

@@ -2,9 +2,9 @@ import type { Progress } from '../simulate.ts';
 import { formatQuantity } from '../units/index.ts';
 import type { Terminal } from './terminal.ts';
 
-/** Shows how far a run has come: on a terminal a line that is drawn again, elsewhere a plain line a minute. */
-export interface ProgressLine {
-  show(progress: Progress): void;
+/** Shows how far something has come: on a terminal a line that is drawn again, elsewhere a plain line a minute. */
+export interface ProgressLine<P> {
+  show(progress: P): void;
   /** Removes the line. */
   end(): void;
 }
@@ -14,7 +14,12 @@ const REDRAW = 100;
 const QUIET_START = 300;
 const PLAIN = 60_000;
 
-export function progressLine(terminal: Terminal, now: () => number = () => performance.now()): ProgressLine {
+/** @param text  one line for what there is to show and the time since the line was made [s] */
+export function progressLine<P>(
+  terminal: Terminal,
+  text: (progress: P, elapsed: number) => string,
+  now: () => number = () => performance.now(),
+): ProgressLine<P> {
   const started = now();
   let due = started + (terminal.live ? QUIET_START : PLAIN);
   let drawn = false;
@@ -23,7 +28,7 @@ export function progressLine(terminal: Terminal, now: () => number = () => perfo
       const time = now();
       if (time < due) return;
       due = time + (terminal.live ? REDRAW : PLAIN);
-      const line = progressText(progress, (time - started) / 1000);
+      const line = text(progress, (time - started) / 1000);
       if (terminal.live) {
         terminal.err(`\r${[...line].slice(0, terminal.errWidth - 1).join('')}\u001b[K`);
         drawn = true;
@@ -36,8 +41,8 @@ export function progressLine(terminal: Terminal, now: () => number = () => perfo
   };
 }
 
-/** The parts have fixed widths, so that the line stands still while its numbers change. */
-function progressText(progress: Progress, wall: number): string {
+/** A run. The parts have fixed widths, so that the line stands still while its numbers change. */
+export function runProgressText(progress: Progress, wall: number): string {
   const { time_s, until_s, current_A, gap_voltage_V, growth_per_s, steps } = progress;
   const time = `${formatQuantity(time_s, 's')} of ${formatQuantity(until_s, 's')}`;
   const rate = growth_per_s === null ? '' : `${growth_per_s > 0 ? '+' : ''}${formatQuantity(growth_per_s, '1/s')}`;

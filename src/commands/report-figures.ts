@@ -4,7 +4,7 @@ import { availableParallelism } from 'node:os';
 import { join } from 'node:path';
 import type { FigureFile } from '../report/svg-file.ts';
 import { resultFileError } from '../results/errors.ts';
-import { printable } from './printable.ts';
+import { printable } from '../units/printable.ts';
 
 /** Writes figures into a folder, made if need be, as SVG and, where a converter is at hand, as PNG.
  *  @returns what was written, for people

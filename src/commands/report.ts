@@ -4,9 +4,9 @@ import { GENERATOR } from '../report/document.ts';
 import type { FigureFile } from '../report/svg-file.ts';
 import { ResultFileError, resultFileError } from '../results/errors.ts';
 import { readResultFormat } from '../results/read.ts';
+import { printable } from '../units/printable.ts';
 import { EXIT } from './exit-codes.ts';
 import { Failure, problemWithoutPlace } from './failure.ts';
-import { printable } from './printable.ts';
 import { writeFigures } from './report-figures.ts';
 import type { Terminal } from './terminal.ts';
 

@@ -2,10 +2,10 @@ import type { Case } from '../case.ts';
 import { type YieldEnd, type YieldSpread, yieldSpread } from '../onset/cautions/yield-ends.ts';
 import type { Outcome, State, Stop } from '../onset/outcome.ts';
 import type { Prospects } from '../theory/predict.ts';
+import { printable } from '../units/printable.ts';
 import { cautionLines, lastLines } from './cautions-text.ts';
 import { yieldConsequences } from './check-spread.ts';
 import { columns, lengthOf, wrap } from './layout.ts';
-import { printable } from './printable.ts';
 import { currentDensity, field, percent, quantity } from './quantities.ts';
 import type { Terminal } from './terminal.ts';
 

@@ -4,9 +4,10 @@ import { withDefaults } from '../onset/cautions/index.ts';
 import type { Outcome } from '../onset/outcome.ts';
 import { ResultFileError } from '../results/errors.ts';
 import { type PreparedRunFile, prepareRunFile, type RunWriter } from '../results/write.ts';
-import { SimulationFailure, simulate } from '../simulate.ts';
+import { type Progress, SimulationFailure, simulate } from '../simulate.ts';
 import { prospects } from '../theory/predict.ts';
 import { TOWNSEND } from '../units/constants.ts';
+import { printable, printableJson } from '../units/printable.ts';
 import { VERSION } from '../version.ts';
 import { effectiveText, type LoadedCase, loadCase } from './case-source.ts';
 import type { RunOptions } from './cli.ts';
@@ -14,8 +15,7 @@ import { coefficientsUsed } from './coefficients.ts';
 import { EXIT } from './exit-codes.ts';
 import { Failure, problemWithoutPlace } from './failure.ts';
 import { fileFailure } from './file-failure.ts';
-import { printable, printableJson } from './printable.ts';
-import { type ProgressLine, progressLine } from './progress.ts';
+import { type ProgressLine, progressLine, runProgressText } from './progress.ts';
 import { type FileWritten, runText } from './run-text.ts';
 import { listenForStop, type StopRequest } from './signals.ts';
 import type { Terminal } from './terminal.ts';
@@ -31,7 +31,13 @@ export async function run(path: string, options: RunOptions, terminal: Terminal)
   try {
     // before anything is computed: the path may be no good
     if (options.output !== undefined) await recording.prepare(options.output);
-    const { outcome, failure } = await follow(path, loaded, stop, recording, options.quiet ? null : progressLine(terminal));
+    const { outcome, failure } = await follow(
+      path,
+      loaded,
+      stop,
+      recording,
+      options.quiet ? null : progressLine(terminal, runProgressText),
+    );
     const kept = keep(recording, outcome);
     const problem = failure ?? kept.failure;
     // with --json a problem is the one object on stdout; a person may still want to know what was found
@@ -54,7 +60,7 @@ async function follow(
   loaded: LoadedCase,
   stop: StopRequest,
   recording: Recording,
-  progress: ProgressLine | null,
+  progress: ProgressLine<Progress> | null,
 ): Promise<{ readonly outcome: Outcome; readonly failure: Failure | null }> {
   try {
     const outcome = await simulate(loaded.case, {

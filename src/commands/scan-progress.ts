@@ -1,39 +1,4 @@
 import type { ScanProgress } from '../scan/session.ts';
-import type { Terminal } from './terminal.ts';
-
-/** Shows how far a scan has come: on a terminal one line that is drawn again, elsewhere a plain line a minute. */
-export interface ScanProgressLine {
-  show(progress: ScanProgress): void;
-  /** Removes the line. */
-  end(): void;
-}
-
-/** [ms] between two drawings; before the first one; between plain lines */
-const REDRAW = 200;
-const QUIET_START = 300;
-const PLAIN = 60_000;
-
-export function scanProgressLine(terminal: Terminal, now: () => number = () => performance.now()): ScanProgressLine {
-  const started = now();
-  let due = started + (terminal.live ? QUIET_START : PLAIN);
-  let drawn = false;
-  return {
-    show: (progress) => {
-      const time = now();
-      if (time < due) return;
-      due = time + (terminal.live ? REDRAW : PLAIN);
-      const line = scanProgressText(progress, (time - started) / 1000);
-      if (terminal.live) {
-        terminal.err(`\r${[...line].slice(0, terminal.errWidth - 1).join('')}\u001b[K`);
-        drawn = true;
-      } else terminal.err(`${line}\n`);
-    },
-    end: () => {
-      if (drawn) terminal.err('\r\u001b[K');
-      drawn = false;
-    },
-  };
-}
 
 /** `312 done, 1 failed, 687 left   52.1/s   13 s to go`: rate and time by what this session has finished; at most 79 characters. */
 export function scanProgressText({ done, failed, total, computed }: ScanProgress, elapsed: number): string {

@@ -3,7 +3,7 @@ import { dirname } from 'node:path';
 import { ResultFileError, resultFileError } from '../results/errors.ts';
 import type { ScanFile } from '../results/scan-read.ts';
 import type { Headline, ScanPoint } from '../results/scan-variables.ts';
-import { printableJsonText } from './printable.ts';
+import { printableJsonText } from '../units/printable.ts';
 import type { Terminal } from './terminal.ts';
 
 /** A scan as JSON and as CSV, written as it is read: however many points there are, only a page of them is in memory. */

@@ -6,14 +6,15 @@ import { type Preview, preview } from '../scan/pilot.ts';
 import type { Shard } from '../scan/plan.ts';
 import { gatherScan, runScan, type ScanEnd, type ScanRequest } from '../scan/session.ts';
 import { type Study, studyOf } from '../scan/study.ts';
+import { printable, printableJson } from '../units/printable.ts';
 import { effectiveText, type LoadedCase, loadCase } from './case-source.ts';
 import type { ScanOptions } from './cli.ts';
 import { coefficientsUsed } from './coefficients.ts';
 import { EXIT } from './exit-codes.ts';
 import { Failure, problemWithoutPlace } from './failure.ts';
 import { fileFailure } from './file-failure.ts';
-import { printable, printableJson } from './printable.ts';
-import { scanProgressLine } from './scan-progress.ts';
+import { progressLine } from './progress.ts';
+import { scanProgressText } from './scan-progress.ts';
 import { checkCsvTarget, printScanJson, writeScanCsv } from './scan-table.ts';
 import { planText, scanText } from './scan-text.ts';
 import { listenForStop, type StopRequest } from './signals.ts';
@@ -65,7 +66,7 @@ function defaultOutput(path: string, shard: Shard | null): string {
 }
 
 async function follow(request: ScanRequest, options: ScanOptions, stop: StopRequest, terminal: Terminal): Promise<ScanEnd> {
-  const line = options.quiet ? null : scanProgressLine(terminal);
+  const line = options.quiet ? null : progressLine(terminal, scanProgressText);
   const watch = { stop: stop.signal, ...(line === null ? {} : { progress: line.show }) };
   try {
     return options.gather === undefined ? await runScan(request, watch) : await gatherScan(request, options.gather, watch);

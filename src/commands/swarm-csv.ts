@@ -5,8 +5,8 @@ import type { SwarmPoint } from '../kinetics/swarm.ts';
 import { ResultFileError, resultFileError } from '../results/errors.ts';
 import type { SwarmRequest, SwarmResult } from '../scan/swarm-session.ts';
 import { TOWNSEND } from '../units/constants.ts';
+import { printable } from '../units/printable.ts';
 import { VERSION } from '../version.ts';
-import { printable } from './printable.ts';
 
 /** Swarms as a table that `gas.coefficients` of a case takes: rows in rising order of the field, coefficients first, then their errors and the rest. */
 

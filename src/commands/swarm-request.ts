@@ -7,9 +7,9 @@ import type { SwarmSetup } from '../scan/swarm-job.ts';
 import type { SwarmRequest } from '../scan/swarm-session.ts';
 import { ELEMENTARY_CHARGE, TOWNSEND } from '../units/constants.ts';
 import { clip, type DimensionName, nearestSpelling, parseQuantity } from '../units/index.ts';
+import { printable } from '../units/printable.ts';
 import { EXIT } from './exit-codes.ts';
 import { Failure, problemWithoutPlace } from './failure.ts';
-import { printable } from './printable.ts';
 import { readText } from './read-text.ts';
 import { readSet } from './swarm-file.ts';
 

@@ -1,9 +1,10 @@
 import { ResultFileError } from '../results/errors.ts';
 import { runSwarm, type SwarmEnd } from '../scan/swarm-session.ts';
+import { printableJson } from '../units/printable.ts';
 import { EXIT } from './exit-codes.ts';
 import { Failure, problemWithoutPlace } from './failure.ts';
 import { fileFailure } from './file-failure.ts';
-import { printableJson } from './printable.ts';
+import { progressLine } from './progress.ts';
 import { listenForStop } from './signals.ts';
 import { swarmCautions } from './swarm-cautions.ts';
 import { checkSwarmCsvTarget, writeSwarmCsv } from './swarm-csv.ts';
@@ -37,14 +38,9 @@ async function follow(
   terminal: Terminal,
 ): Promise<Extract<SwarmEnd, { readonly kind: 'complete' }>> {
   const stop = listenForStop();
-  let drawn = false;
+  const line = options.quiet ? null : progressLine(terminal, swarmProgressText);
   try {
-    const show = (done: number, total: number): void => {
-      if (!terminal.live || options.quiet) return;
-      terminal.err(`\r${done} of ${total} fields done\u001b[K`);
-      drawn = true;
-    };
-    const end = await runSwarm(request, { stop: stop.signal, progress: show });
+    const end = await runSwarm(request, { stop: stop.signal, progress: (done, total) => line?.show({ done, total }) });
     if (end.kind === 'complete') return end;
     const text = `interrupted; ${end.done} of ${request.fields.length} fields were done, nothing was written`;
     throw new Failure(
@@ -53,7 +49,11 @@ async function follow(
       [problemWithoutPlace('interrupted', 'signal', 'the end of the swarm', text)],
     );
   } finally {
-    if (drawn) terminal.err('\r\u001b[K');
+    line?.end();
     stop.release();
   }
+}
+
+function swarmProgressText({ done, total }: { readonly done: number; readonly total: number }, elapsed: number): string {
+  return `${done} of ${total} fields done   ${elapsed.toFixed(0)} s`;
 }

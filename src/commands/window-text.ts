@@ -1,8 +1,8 @@
 import type { HistoryEntry, WindowOfYield, WindowOutcome } from '../search/window/index.ts';
+import { printable } from '../units/printable.ts';
 import { cautionLines, lastLines } from './cautions-text.ts';
 import { clock } from './clock.ts';
 import { columns, lengthOf, NO_BREAK, wrap } from './layout.ts';
-import { printable } from './printable.ts';
 import { pressure, quantity } from './quantities.ts';
 import type { Terminal } from './terminal.ts';
 

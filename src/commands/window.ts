@@ -5,16 +5,17 @@ import type { WindowFile } from '../results/window-read.ts';
 import { runWindow, type WindowEnd, type WindowRequest } from '../scan/window-session.ts';
 import { HistoryFailure } from '../search/window/index.ts';
 import type { WindowSettings } from '../study.ts';
+import { printable, printableJson } from '../units/printable.ts';
 import { effectiveText, type LoadedCase, loadCase } from './case-source.ts';
 import type { WindowOptions } from './cli.ts';
 import { coefficientsUsed } from './coefficients.ts';
 import { EXIT } from './exit-codes.ts';
 import { Failure, problemWithoutPlace } from './failure.ts';
 import { fileFailure } from './file-failure.ts';
-import { printable, printableJson } from './printable.ts';
+import { progressLine } from './progress.ts';
 import { listenForStop, type StopRequest } from './signals.ts';
 import type { Terminal } from './terminal.ts';
-import { windowProgressLine } from './window-progress.ts';
+import { windowProgressText } from './window-progress.ts';
 import { checkWindowCsvTarget, writeWindowCsv } from './window-table.ts';
 import { windowText } from './window-text.ts';
 
@@ -67,7 +68,7 @@ function defaultOutput(path: string): string {
 }
 
 async function follow(request: WindowRequest, options: WindowOptions, stop: StopRequest, terminal: Terminal): Promise<WindowEnd> {
-  const line = options.quiet ? null : windowProgressLine(terminal);
+  const line = options.quiet ? null : progressLine(terminal, windowProgressText);
   try {
     return await runWindow(request, { stop: stop.signal, ...(line === null ? {} : { progress: line.show }) });
   } finally {

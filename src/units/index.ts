@@ -7,6 +7,7 @@
  *  format.ts      SI -> text for people
  *  spelling.ts    the nearest valid spelling of a word
  *  clip.ts        text from outside, shortened and escaped for messages
+ *  printable.ts   text from outside made safe for a terminal
  *  constants.ts   physical constants */
 export { clip } from './clip.ts';
 export { DIMENSIONS, type Dimension, type DimensionName, describeExponents, type Exponents, sameExponents } from './dimension.ts';

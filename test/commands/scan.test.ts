@@ -15,7 +15,8 @@ import { dirname, join } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { describe, expect, test } from 'vitest';
 import { NOT_A_CLEARANCE } from '../../src/commands/cautions-text.ts';
-import { durationText, scanProgressLine, scanProgressText } from '../../src/commands/scan-progress.ts';
+import { progressLine } from '../../src/commands/progress.ts';
+import { durationText, scanProgressText } from '../../src/commands/scan-progress.ts';
 import type { Terminal } from '../../src/commands/terminal.ts';
 import { readScanFile } from '../../src/results/scan-read.ts';
 import { GRID, scanCase, withoutWall } from '../scan/studies.ts';
@@ -344,7 +345,7 @@ describe('progress', () => {
   test('is drawn again on a terminal, and plain once a minute elsewhere', () => {
     let time = 0;
     const said: string[] = [];
-    const live = scanProgressLine(terminalThat(true, said), () => time);
+    const live = progressLine(terminalThat(true, said), scanProgressText, () => time);
     const at = (line: typeof live, ms: number): void => {
       time = ms;
       line.show({ done: 1, failed: 0, total: 9, computed: 1 });
@@ -356,7 +357,7 @@ describe('progress', () => {
     expect(said.pop()).toBe('\r\u001b[K');
     said.length = 0;
     time = 0;
-    const plain = scanProgressLine(terminalThat(false, said), () => time);
+    const plain = progressLine(terminalThat(false, said), scanProgressText, () => time);
     for (const ms of [0, 59_000, 60_001, 61_000, 120_002]) at(plain, ms);
     plain.end();
     expect(said).toEqual([expect.stringMatching(/^1 done, 0 failed, 8 left {3}1\/min.*\n$/), expect.stringMatching(/\n$/)]);

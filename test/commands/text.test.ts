@@ -2,10 +2,10 @@ import fc from 'fast-check';
 import { describe, expect, test } from 'vitest';
 import { readCase } from '../../src/casefile/index.ts';
 import { columns, lengthOf, NO_BREAK, wrap } from '../../src/commands/layout.ts';
-import { printable, printableJson } from '../../src/commands/printable.ts';
-import { progressLine } from '../../src/commands/progress.ts';
+import { progressLine, runProgressText } from '../../src/commands/progress.ts';
 import type { Terminal } from '../../src/commands/terminal.ts';
 import { highestOpenGapVoltage } from '../../src/onset/highest-voltage.ts';
+import { printable, printableJson } from '../../src/units/printable.ts';
 import { openCase } from './program.ts';
 
 describe('layout', () => {
@@ -67,7 +67,7 @@ describe('the progress line', () => {
   test('is one plain line a minute where stderr is no terminal', () => {
     const said: string[] = [];
     let now = 0;
-    const line = progressLine(terminalThat(false, said), () => now);
+    const line = progressLine(terminalThat(false, said), runProgressText, () => now);
     for (; now <= 150_000; now += 50) line.show(progress);
     line.end();
     expect(said).toHaveLength(2);
@@ -78,7 +78,7 @@ describe('the progress line', () => {
   test('is drawn in place on a terminal, not at once, within its width, and removed at the end', () => {
     const said: string[] = [];
     let now = 0;
-    const line = progressLine(terminalThat(true, said), () => now);
+    const line = progressLine(terminalThat(true, said), runProgressText, () => now);
     for (; now <= 1000; now += 50) line.show(progress);
     line.end();
     expect(said).toHaveLength(9); // from 0.3 s on every 0.1 s, and the removal
@@ -91,7 +91,7 @@ describe('the progress line', () => {
 
   test('leaves no trace of a run that ends at once', () => {
     const said: string[] = [];
-    const line = progressLine(terminalThat(true, said), () => 0);
+    const line = progressLine(terminalThat(true, said), runProgressText, () => 0);
     line.show(progress);
     line.end();
     expect(said).toEqual([]);

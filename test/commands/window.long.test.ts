@@ -4,8 +4,9 @@ import { join } from 'node:path';
 import { describe, expect, test } from 'vitest';
 import { NOT_A_CLEARANCE } from '../../src/commands/cautions-text.ts';
 import { clock } from '../../src/commands/clock.ts';
+import { progressLine } from '../../src/commands/progress.ts';
 import type { Terminal } from '../../src/commands/terminal.ts';
-import { windowProgressLine } from '../../src/commands/window-progress.ts';
+import { windowProgressText } from '../../src/commands/window-progress.ts';
 import { windowText } from '../../src/commands/window-text.ts';
 import { readWindowFile } from '../../src/results/window-read.ts';
 import type { WindowOfYield, WindowOutcome } from '../../src/search/window/index.ts';
@@ -264,7 +265,7 @@ describe('progress', () => {
   test('is one line, drawn again, and removed at the end', () => {
     const said: string[] = [];
     let time = 0;
-    const line = windowProgressLine({ ...terminal, err: (text) => void said.push(text) }, () => time);
+    const line = progressLine({ ...terminal, err: (text) => void said.push(text) }, windowProgressText, () => time);
     line.show({ done: 0, asked: 10 });
     time = 1000;
     line.show({ done: 3, asked: 10 });

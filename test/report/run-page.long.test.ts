@@ -2,6 +2,7 @@ import { existsSync, readdirSync, readFileSync, statSync } from 'node:fs';
 import { join } from 'node:path';
 import type { Browser } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
+import { createHdf5 } from '../../src/results/hdf5.ts';
 import { readRunFile } from '../../src/results/read.ts';
 import { openRunFile } from '../../src/results/write.ts';
 import { openCase, realProgram } from '../commands/program.ts';
@@ -34,7 +35,7 @@ describe('gapwake report on a run', () => {
     expect(readdirSync(program.folder()).filter((name) => name.endsWith('.part'))).toEqual([]);
   });
 
-  test('a truncated file, a foreign one, a missing one and one whose outcome is not understood give one line and exit code 4', async () => {
+  test('a truncated file, a foreign one, a missing one, one of a newer version and one whose outcome is not understood give one line and exit code 4', async () => {
     const whole = readFileSync(join(program.folder(), 'plain.h5'));
     program.write('short.h5', whole.subarray(0, whole.length / 2));
     program.write('foreign.h5', 'x,y\n1,2\n');
@@ -42,7 +43,11 @@ describe('gapwake report on a run', () => {
     const writer = await openRunFile(join(program.folder(), 'odd.h5'), { x: cellCentres(4), negativeIons: false });
     writer.append(snapshot(0, 4, false));
     writer.finish(documents);
-    const files = ['short.h5', 'foreign.h5', 'missing.h5', 'odd.h5'];
+    const newer = await createHdf5(join(program.folder(), 'newer.h5'));
+    newer.attribute('format', 'gapwake.run/2');
+    newer.attribute('version', '9.0.0');
+    newer.close();
+    const files = ['short.h5', 'foreign.h5', 'missing.h5', 'newer.h5', 'odd.h5'];
     for (const file of files) {
       const { code, out, err } = await program.run(['report', file, '-o', 'never.html']);
       expect(code, file).toBe(4);
