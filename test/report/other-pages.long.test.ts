@@ -11,7 +11,7 @@ import { browserPath, launch } from './help/browser.ts';
 import { seriousFaults } from './help/faults.ts';
 import { writeMadeUpWindow } from './help/made-up-window.ts';
 import { writeManyPoints } from './help/many-points.ts';
-import { open } from './help/opened.ts';
+import { cutOff, open } from './help/opened.ts';
 
 const program = realProgram();
 const HOSTILE = '</script><img src=x onerror=alert(1)> \u001b[31m';
@@ -86,6 +86,7 @@ describe.skipIf(skipped)(`the pages of scans and windows in a browser${skipped ?
     const { tab, requests, complaints, close } = await open(browser, at(`${name}.html`), { viewport: { width: 420, height: 800 } });
     expect(await tab.locator('figure svg').count()).toBe({ window: 4, grid: 2, line: 1, many: 2 }[name]);
     expect(await tab.evaluate('document.documentElement.scrollWidth')).toBeLessThanOrEqual(420);
+    expect(await cutOff(tab)).toEqual([]);
     expect(await tab.locator('img').count()).toBe(0);
     expect(requests).toEqual([]);
     expect(complaints).toEqual([]);

@@ -10,7 +10,7 @@ import { cellCentres, documents, snapshot } from '../roundtrip/snapshots.ts';
 import { browserPath, launch } from './help/browser.ts';
 import { seriousFaults } from './help/faults.ts';
 import { writeLongRun } from './help/long-run.ts';
-import { open } from './help/opened.ts';
+import { cutOff, open } from './help/opened.ts';
 
 const program = realProgram();
 const HOSTILE = '</script><script>alert(1)</script><img src=x onerror=alert(2)> \\e[31mred\\e[0m \\u202e';
@@ -208,9 +208,10 @@ describe.skipIf(skipped)(`the page of a run in a browser${skipped ? ' (skipped: 
     for (const scheme of ['light', 'dark'] as const) expect(await seriousFaults(browser, page, scheme)).toEqual([]);
   });
 
-  test('at 420 px nothing is wider than the window', async () => {
+  test('at 420 px nothing is wider than the window, and no text of a figure is cut off', async () => {
     const { tab, close } = await open(browser, page, { viewport: { width: 420, height: 800 } });
     expect(await tab.evaluate('document.documentElement.scrollWidth')).toBeLessThanOrEqual(420);
+    expect(await cutOff(tab)).toEqual([]);
     await close();
   });
 

@@ -289,7 +289,7 @@ function base(
     width,
     height: 400,
     left: LEFT + 12,
-    right: width < 480 ? 92 : 110,
+    right: 114, // room for "breaks down" beside its colour, in the widest of usual fonts
   };
 }
 

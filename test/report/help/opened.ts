@@ -28,3 +28,15 @@ export async function open(browser: Browser, path: string, options: BrowserConte
   await tab.waitForSelector('body[data-ready]', { timeout: 20_000 });
   return { tab, requests, complaints, close: () => context.close() };
 }
+
+/** Texts of figures that reach beyond their picture, by more than half a pixel. */
+export async function cutOff(tab: Page): Promise<string[]> {
+  return (await tab.evaluate(`[...document.querySelectorAll('figure svg')].flatMap((svg) => {
+    const frame = svg.getBoundingClientRect();
+    return [...svg.querySelectorAll('text')].flatMap((text) => {
+      const box = text.getBoundingClientRect();
+      const out = box.width > 0 && (box.left < frame.left - 0.5 || box.right > frame.right + 0.5 || box.top < frame.top - 0.5 || box.bottom > frame.bottom + 0.5);
+      return out ? [text.textContent] : [];
+    });
+  })`)) as string[];
+}
