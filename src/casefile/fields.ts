@@ -1,4 +1,5 @@
 import * as z from 'zod';
+import { _check } from 'zod/v4/core';
 import { DIMENSIONS, type DimensionName, expectation, parseAnyOf, type QuantityError } from '../units/index.ts';
 import { type Column, readCsv } from './csv.ts';
 import type { ProblemCode } from './problem.ts';
@@ -183,7 +184,7 @@ type Entries = Readonly<Record<string, unknown>>;
  *  @param check  sees the entries without the wrong ones (`sound`), and which are there at all (`given`); `adopt` takes over what another
  *                schema finds wrong with an entry */
 export function across(check: (sound: Entries, report: Report, given: Entries, adopt: Adopt) => void): z.core.$ZodCheck<unknown> {
-  return z.core._check<unknown>(
+  return _check<unknown>(
     (payload) => {
       const given = payload.value as Entries;
       const sound = payload.issues.reduce((value, issue) => without(value, issue.path ?? []), given);
