@@ -1,4 +1,4 @@
-import type { Random } from '../numerics/random.ts';
+import { philox, type Random } from '../numerics/random.ts';
 import { exponentialLayers, normalLayers } from '../numerics/random-layers.ts';
 import { BINS, type CollisionTable, LOWEST, massShare, SPANS, type Spans, spansOf, thermalSpread } from './collision-table.ts';
 import { ELECTRON_MASS, type ProcessKind, SPEED_OF_1_EV } from './cross-sections.ts';
@@ -21,6 +21,8 @@ export interface Tally {
   readonly left: Float64Array;
   readonly leftTime: Float64Array;
   readonly leftEnergy: Float64Array;
+  /** electrons given over as slow, by cell (see `Thinning`) */
+  readonly slow: Float64Array;
   /** unweighted: real collisions, and with null ones */
   readonly events: Float64Array;
 }
@@ -35,6 +37,7 @@ export function tallyFor(cells: number, processes: number): Tally {
     left: new Float64Array(2),
     leftTime: new Float64Array(2),
     leftEnergy: new Float64Array(2),
+    slow: new Float64Array(cells),
     events: new Float64Array(2),
   };
 }
@@ -56,8 +59,21 @@ export function uniformForce(force: number): ForceField {
   return { faces: Float64Array.of(Number.NEGATIVE_INFINITY, Number.POSITIVE_INFINITY), force: Float64Array.of(force) };
 }
 
+/** Which electrons need not be followed, by cell. */
+export interface Thinning {
+  /** after a collision that leaves it less energy [eV] an electron is gone and counted as slow; negative: never */
+  readonly slowBelow: Float64Array;
+  /** electrons of less than half this weight are played for: they go on with this weight or not at all, so that on average nothing changes */
+  readonly weight: Float64Array;
+}
+
 const KINDS: readonly ProcessKind[] = ['elastic', 'momentum-transfer', 'excitation', 'ionisation', 'attachment'];
 const [, , EXCITATION, IONISATION] = KINDS.map((_, i) => i);
+
+/** tells streams of electrons from others that start from the same numbers */
+const OWN_STREAM = 0x67617077;
+
+const NOTHING = new Float64Array(0);
 
 /** what ends a flight */
 const COLLISION = 0;
@@ -95,9 +111,14 @@ export class Flights {
   readonly #other = new Float64Array(3);
   readonly #bits = new Float32Array(1);
   readonly #word: Int32Array;
+  readonly #thinning: Thinning | null;
+  readonly #key = new Uint32Array(4);
 
-  constructor(table: CollisionTable, field: ForceField, random: Random) {
+  /** @param thinning  null: every electron is followed. With it each electron has its own stream of random numbers (`Electrons.keys`), so that a run in a
+   *    field that is hardly different makes nearly the same electrons */
+  constructor(table: CollisionTable, field: ForceField, random: Random, thinning: Thinning | null = null) {
     this.table = table;
+    this.#thinning = thinning;
     this.tally = tallyFor(field.force.length, table.kinds.length);
     this.#random = random;
     this.#field = field;
@@ -112,8 +133,9 @@ export class Flights {
   }
 
   /** Follows every electron, and those that it makes, up to a time [s] or until it is gone; those that are gone keep their place with weight 0.
-   *  Nothing is allocated on the way except when the electrons outgrow their arrays. */
-  run(electrons: Electrons, until: number): void {
+   *  Nothing is allocated on the way except when the electrons outgrow their arrays.
+   *  @param most  stops after the electron that brings them above this number, with those behind it not followed */
+  run(electrons: Electrons, until: number, most: number = Number.POSITIVE_INFINITY): void {
     const { table, tally } = this;
     const random = this.#random;
     const { faces } = this.#field;
@@ -131,6 +153,9 @@ export class Flights {
     const rest = 1 - share;
     const isotropic = table.angular === 'isotropic';
     const velocity = this.#velocity;
+    const thinned = this.#thinning !== null;
+    const slowBelow = this.#thinning?.slowBelow ?? NOTHING;
+    const wanted = this.#thinning?.weight ?? NOTHING;
     const { inside: exponentialInside, width: exponentialWidth } = exponentialLayers;
     const { inside: normalInside, width: normalWidth } = normalLayers;
     let { x: xs, y: ys, z: zs, ux: uxs, uy: uys, uz: uzs, time: times, weight: weights, cell: cells } = electrons;
@@ -139,9 +164,10 @@ export class Flights {
     let collisions = 0;
     let trials = 0;
 
-    for (let i = 0; i < electrons.count; i++) {
-      const weight = weights[i];
+    for (let i = 0; i < electrons.count && electrons.count <= most; i++) {
+      let weight = weights[i];
       if (weight === 0) continue;
+      if (thinned) this.#ownStream(electrons.keys, i);
       let x = xs[i];
       let y = ys[i];
       let z = zs[i];
@@ -247,6 +273,13 @@ export class Flights {
           low = faces[cell];
           high = faces[cell + 1];
           acceleration = accelerations[cell];
+          if (thinned && weight < 0.5 * wanted[cell]) {
+            if ((random.word() >>> 0) * 2 ** -32 * wanted[cell] >= weight) {
+              gone = true;
+              break;
+            }
+            weight = wanted[cell];
+          }
           continue;
         }
 
@@ -347,6 +380,10 @@ export class Flights {
           times[born] = t;
           weights[born] = weight;
           cells[born] = cell;
+          if (thinned) {
+            electrons.keys[2 * born] = random.word();
+            electrons.keys[2 * born + 1] = random.word();
+          }
           velocity[0] = gx;
           velocity[1] = gy;
           velocity[2] = gz;
@@ -356,8 +393,27 @@ export class Flights {
           uz = velocity[2];
           energy = ux * ux + uy * uy + uz * uz;
           inelasticLoss += weight * (before - Math.max(0, relative - thresholds[p]));
+          if (thinned && weight < 0.5 * wanted[cell]) {
+            tally.time[cell] += weight * sumTime;
+            tally.way[cell] += weight * sumWay;
+            tally.energy[cell] += weight * sumEnergy;
+            sumTime = 0;
+            sumWay = 0;
+            sumEnergy = 0;
+            weights[born] = (random.word() >>> 0) * 2 ** -32 * wanted[cell] < weight ? wanted[cell] : 0;
+            if ((random.word() >>> 0) * 2 ** -32 * wanted[cell] >= weight) {
+              gone = true;
+              break;
+            }
+            weight = wanted[cell];
+          }
         } else {
           inelasticLoss += weight * before;
+          gone = true;
+          break;
+        }
+        if (thinned && energy < slowBelow[cell]) {
+          tally.slow[cell] += weight;
           gone = true;
           break;
         }
@@ -374,12 +430,24 @@ export class Flights {
       uzs[i] = uz;
       times[i] = t;
       cells[i] = cell;
-      if (gone) weights[i] = 0;
+      weights[i] = gone ? 0 : weight;
     }
     tally.losses[0] += elasticLoss;
     tally.losses[1] += inelasticLoss;
     tally.events[0] += collisions;
     tally.events[1] += trials;
+  }
+
+  /** Goes to the stream of one electron, told by two numbers from the stream of the one that made it: what becomes of one electron does not change the
+   *  random numbers of any other but those it makes. */
+  #ownStream(keys: Int32Array, i: number): void {
+    const key = this.#key;
+    key[0] = keys[2 * i];
+    key[1] = keys[2 * i + 1];
+    key[2] = 0;
+    key[3] = 0;
+    philox(key, OWN_STREAM, 0);
+    this.#random.start(key[0], key[1], key[2], key[3]);
   }
 
   /** Velocities after an ionisation: of the electron ejected, in its place, and of the other in `velocity`, which comes as that relative to the molecule. */

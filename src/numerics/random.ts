@@ -20,6 +20,11 @@ export class Random {
   /** @param seed     whole number from 0 to 2⁵³ − 1
    *  @param streams  up to four whole numbers below 2³² that tell this stream from others of the same seed */
   constructor(seed: number, streams: readonly number[] = []) {
+    this.restart(seed, streams);
+  }
+
+  /** Goes to the beginning of a stream: afterwards it is as if made new with the same arguments. */
+  restart(seed: number, streams: readonly number[] = []): void {
     if (!Number.isSafeInteger(seed) || seed < 0) throw new Error(`a seed is a whole number from 0 to 2^53 - 1, not ${seed}`);
     if (streams.length > 4) throw new Error('a stream is told apart by four numbers at most');
     const counter = Uint32Array.from({ length: 4 }, (_, i) => streams[i] ?? 0);

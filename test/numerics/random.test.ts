@@ -34,6 +34,14 @@ describe('streams', () => {
     expect(firstOf(7, [1, 2])).toBe(firstOf(7, [1, 2, 0, 0]));
   });
 
+  test('begin again where they began, whatever was drawn before', () => {
+    const random = new Random(1, [9]);
+    random.normal();
+    random.restart(7, [1, 2]);
+    const fresh = new Random(7, [1, 2]);
+    expect([random.word(), random.exponential()]).toEqual([fresh.word(), fresh.exponential()]);
+  });
+
   test('differ when the seed or any counter differs', () => {
     const all = new Set<string>();
     let count = 0;
