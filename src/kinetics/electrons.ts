@@ -13,6 +13,8 @@ export class Electrons {
   /** how many electrons it stands for; 0: gone */
   weight: Float64Array;
   cell: Int32Array;
+  /** two numbers of each that tell its own stream of random numbers, where electrons have one */
+  keys: Int32Array;
 
   constructor(capacity = 1024) {
     this.capacity = capacity;
@@ -21,6 +23,7 @@ export class Electrons {
       () => new Float64Array(capacity),
     ) as Columns;
     this.cell = new Int32Array(capacity);
+    this.keys = new Int32Array(2 * capacity);
   }
 
   /** Adds an electron at rest at the origin. @returns its index */
@@ -30,6 +33,8 @@ export class Electrons {
     for (const column of this.#columns()) column[i] = 0;
     this.weight[i] = weight;
     this.cell[i] = 0;
+    this.keys[2 * i] = 0;
+    this.keys[2 * i + 1] = 0;
     return i;
   }
 
@@ -45,6 +50,9 @@ export class Electrons {
     const cell = new Int32Array(this.capacity);
     cell.set(this.cell);
     this.cell = cell;
+    const keys = new Int32Array(2 * this.capacity);
+    keys.set(this.keys);
+    this.keys = keys;
   }
 
   /** Copies electron `from` to place `to`. */
@@ -58,6 +66,8 @@ export class Electrons {
     this.time[to] = this.time[from];
     this.weight[to] = this.weight[from];
     this.cell[to] = this.cell[from];
+    this.keys[2 * to] = this.keys[2 * from];
+    this.keys[2 * to + 1] = this.keys[2 * from + 1];
   }
 
   /** Removes those that are gone; the others keep their order. */

@@ -1,14 +1,19 @@
 import { Random } from '../numerics/random.ts';
 import type { CollisionTable } from './collision-table.ts';
-import { SPEED_OF_1_EV } from './cross-sections.ts';
 import { Electrons } from './electrons.ts';
 import { Flights, type ForceField } from './flights.ts';
+import { slowBelow } from './slow.ts';
 import { jackknife, type Measured } from './statistics.ts';
 
-/** What one electron that a cathode emits does in a planar gap with a given field: ions made and where, the chance to come back, times of flight.
+/** What one electron that a cathode emits does in a planar gap with a given field: ions made and where, the chance to come back, where electrons become
+ *  slow, times of flight.
  *
  *  The cathode is the low face of the field, the anode the high one; both take every electron that arrives. `ForceField.force` is the force on electrons
- *  over their charge, towards the anode positive: −E. */
+ *  over their charge, towards the anode positive: −E.
+ *
+ *  Each emitted electron is followed to the end with all that it makes, on streams of random numbers of its own and of its offspring (`Flights`), so that
+ *  fields that hardly differ give nearly the same answer. So that a long avalanche costs little more than one electron's way, electrons are played for: in
+ *  each cell with a chance that keeps about as many as there were emitted. All means are right whatever those weights; only the noise depends on them. */
 export interface GapElectrons {
   readonly table: CollisionTable;
   readonly field: ForceField;
@@ -17,8 +22,8 @@ export interface GapElectrons {
   /** electrons emitted, all batches together */
   readonly particles: number;
   readonly seed: number;
-  /** tells the random numbers of this field from others of the same seed; equal ones make results smooth in the field */
-  readonly stream?: number;
+  /** electrons through each cell per electron emitted, as expected, to choose weights by; as many as cells. Absent: found by a few electrons beforehand */
+  readonly expected?: Float64Array;
 }
 
 export interface GapYield {
@@ -26,32 +31,36 @@ export interface GapYield {
   readonly ionsPerElectron: Measured;
   /** of electrons emitted and made, those that fell back on the cathode, per electron emitted */
   readonly returned: Measured;
-  /** those that reached the anode, per electron emitted */
+  /** those that reached the anode while they could still ionise, per electron emitted */
   readonly arrived: Measured;
-  /** mean time from emission at which electrons, those made on the way too, reach the anode [s], and their mean energy there [eV]; null where none does */
+  /** mean time from emission at which these, those made on the way too, reach the anode [s], and their mean energy there [eV]; null where none does */
   readonly arrivalTime: Measured | null;
   readonly arrivalEnergy: Measured | null;
   /** ions made in each cell per electron emitted, and their standard errors */
   readonly ions: Float64Array;
   readonly ionsError: Float64Array;
+  /** electrons that in each cell had become too slow ever to ionise, per electron emitted */
+  readonly slow: Float64Array;
   /** where ions are made on average [m from the low face]; null where none are */
   readonly ionPlace: Measured | null;
-  /** per electron emitted, those left in the gap, which can no more ionise: slow electrons where the field does not carry them off */
-  readonly idle: number;
   /** real collisions followed */
   readonly collisions: number;
+  /** electrons through each cell per electron emitted, for `GapElectrons.expected` of a field that is not very different */
+  readonly flux: Float64Array;
 }
 
-const BATCHES = 16;
+export const GAP_BATCHES = 16;
 const GAP_STREAM = 3;
-/** electrons followed at the same time, for each emitted in the batch and at least; more are represented by a choice of them, whose noise is small beside
- *  that of what the emitted ones do first */
-const MOST_PER_EMITTED = 8;
-const MOST = 400;
-/** slices of time after which electrons that cannot ionise are no longer waited for */
-const PATIENCE = 400;
+/** electrons followed in a cell for each emitted, about */
+const FOLLOWED = 2;
+/** electrons emitted to choose weights by in each round, of at least so many; what weights come down by in one */
+const SCOUTS = 32;
+const ROUNDS = 2;
+const DESCENT = 30;
+/** volts for the number of electrons to grow e-fold, which no gas does sooner for long: weights of the first round */
+const QUICKEST = 35;
 
-/** Places of the sums of a batch; then ions by cell. */
+/** Places of the sums of a batch; then ions by cell, then slow electrons by cell. */
 const EMITTED = 0;
 const MADE = 1;
 const RETURNED = 2;
@@ -59,61 +68,85 @@ const ARRIVED = 3;
 const TIME = 4;
 const ENERGY = 5;
 const PLACE = 6;
-const IDLE = 7;
-const COLLISIONS = 8;
-const CELLS = 9;
+const COLLISIONS = 7;
+const CELLS = 8;
 
 /** @throws Error for a field without walls */
 export function gapYieldOf(request: GapElectrons, interrupted: () => boolean = () => false): GapYield | null {
+  const expected = request.expected ?? expectedFlux(request);
   const batches: Float64Array[] = [];
-  for (let batch = 0; batch < BATCHES; batch++) {
+  for (let batch = 0; batch < GAP_BATCHES; batch++) {
     if (interrupted()) return null;
-    batches.push(gapBatchOf(request, batch));
+    batches.push(gapBatchOf({ ...request, expected }, batch));
   }
   return combineGap(batches);
 }
 
 /** One of the batches of {@link gapYieldOf}; what they give does not depend on who computes them. */
-export function gapBatchOf({ table, field, emissionEnergy, particles, seed, stream = 0 }: GapElectrons, batch: number): Float64Array {
+export function gapBatchOf(request: GapElectrons & { readonly expected: Float64Array }, batch: number): Float64Array {
+  const count = Math.max(1, Math.round(request.particles / GAP_BATCHES));
+  return follow(request, count, batch * count, weightsFor(request.expected));
+}
+
+/** Electrons through each cell per electron emitted, roughly: by a few electrons whose weights are at first far too large, so that few are followed, and
+ *  come down by no more than a factor a round, so that never many are. */
+export function expectedFlux(request: GapElectrons): Float64Array {
+  const { faces, force } = request.field;
+  let volts = 0;
+  let weight: Float64Array = force.map((f, cell) => {
+    volts += Math.max(0, f) * (faces[cell + 1] - faces[cell]);
+    return Math.exp(volts / QUICKEST);
+  });
+  for (let round = 0; ; round++) {
+    const flux = fluxOf(follow(request, SCOUTS, 2 ** 31 + round * SCOUTS, weight), force.length);
+    const wanted = weightsFor(flux);
+    const next = wanted.map((w, cell) => Math.max(w, weight[cell] / DESCENT));
+    if (round >= ROUNDS && next.every((w, cell) => w === wanted[cell])) return flux;
+    weight = next;
+  }
+}
+
+/** The weight of electrons in each cell with which about `FOLLOWED` of them are followed for each emitted. */
+function weightsFor(flux: Float64Array): Float64Array {
+  return flux.map((electrons) => Math.max(1, electrons / FOLLOWED));
+}
+
+/** Follows electrons from the cathode, one after the other with their offspring.
+ *  @param first  number of the first, which tells their random numbers */
+function follow({ table, field, emissionEnergy, seed }: GapElectrons, count: number, first: number, weight: Float64Array): Float64Array {
   const { faces, force } = field;
   const cells = force.length;
   const [low, high] = [faces[0], faces[cells]];
   if (!Number.isFinite(low) || !Number.isFinite(high)) throw new Error('a gap has two walls');
   const processes = table.kinds.length;
-  const random = new Random(seed, [GAP_STREAM, stream, batch]);
-  const engine = new Flights(table, field, random);
+  const random = new Random(seed, [GAP_STREAM, first >>> 0]);
+  const engine = new Flights(table, field, random, { slowBelow: slowBelow(table, field), weight });
   const { tally } = engine;
-  const count = Math.max(1, Math.round(particles / BATCHES));
-  const electrons = emit(count, emissionEnergy, low, random);
-  const most = Math.max(MOST, MOST_PER_EMITTED * count);
-  const gain = gainAhead(field);
-  const threshold = table.kinds.reduce(
-    (least, kind, p) => (kind === 'ionisation' ? Math.min(least, table.thresholds[p]) : least),
-    Number.POSITIVE_INFINITY,
-  );
-
-  let step = (high - low) / (SPEED_OF_1_EV * Math.sqrt(emissionEnergy + 10)) / 20;
-  let time = 0;
-  let waited = 0;
-  while (electrons.count > 0) {
-    const before = electrons.count;
-    time += step;
-    engine.run(electrons, time);
-    const growth = electrons.count / before;
-    electrons.removeGone();
-    if (growth > 1.5) step /= 1.5;
-    else if (growth < 1.1) step *= 1.2;
-    if (electrons.count > most) electrons.resample(most / 2, random.uniform());
-    if (canIonise(electrons, faces, force, gain, threshold)) waited = 0;
-    else if (++waited > PATIENCE || !isCarriedOff(electrons, force)) break;
+  const electrons = new Electrons(256);
+  const speed = Math.sqrt(emissionEnergy);
+  for (let k = 0; k < count; k++) {
+    random.restart(seed, [GAP_STREAM, first + k]);
+    electrons.count = 0;
+    const i = electrons.add(1);
+    // the square of the cosine is uniform; one electron in each of `count` equal parts
+    const square = (k + random.uniform()) / count;
+    const angle = 2 * Math.PI * random.uniform();
+    electrons.x[i] = low;
+    electrons.ux[i] = speed * Math.sqrt(square);
+    electrons.uy[i] = speed * Math.sqrt(1 - square) * Math.cos(angle);
+    electrons.uz[i] = speed * Math.sqrt(1 - square) * Math.sin(angle);
+    electrons.keys[2 * i] = random.word();
+    electrons.keys[2 * i + 1] = random.word();
+    engine.run(electrons, Number.POSITIVE_INFINITY);
   }
 
-  const sums = new Float64Array(CELLS + cells);
+  const sums = new Float64Array(CELLS + 2 * cells);
   sums[EMITTED] = count;
   for (let cell = 0; cell < cells; cell++) {
     let ions = 0;
     for (let p = 0; p < processes; p++) if (table.kinds[p] === 'ionisation') ions += tally.counts[cell * processes + p];
     sums[CELLS + cell] = ions;
+    sums[CELLS + cells + cell] = tally.slow[cell];
     sums[MADE] += ions;
     sums[PLACE] += ions * ((faces[cell] + faces[cell + 1]) / 2 - low);
   }
@@ -121,17 +154,29 @@ export function gapBatchOf({ table, field, emissionEnergy, particles, seed, stre
   sums[ARRIVED] = tally.left[1];
   sums[TIME] = tally.leftTime[1];
   sums[ENERGY] = tally.leftEnergy[1];
-  sums[IDLE] = electrons.totalWeight();
   sums[COLLISIONS] = tally.events[0];
   return sums;
 }
 
+/** Electrons through each cell per electron emitted, from sums: those that did not fall back, and what has been made, less what has become slow. */
+function fluxOf(sums: Float64Array, cells: number): Float64Array {
+  let flux = Math.max(0, sums[EMITTED] - sums[RETURNED]);
+  return Float64Array.from({ length: cells }, (_, cell) => {
+    const made = sums[CELLS + cell];
+    const slow = sums[CELLS + cells + cell];
+    const middle = flux + made / 2;
+    flux = Math.max(0, flux + made - slow);
+    return middle / sums[EMITTED];
+  });
+}
+
 export function combineGap(batches: readonly Float64Array[]): GapYield {
-  const total = (place: number): number => batches.reduce((sum, batch) => sum + batch[place], 0);
+  const all = new Float64Array(batches[0].length);
+  for (const batch of batches) for (let k = 0; k < all.length; k++) all[k] += batch[k];
   const measure = (above: number, below: number): Measured => jackknife(batches, (s) => s[above] / s[below]);
-  const cells = batches[0].length - CELLS;
+  const cells = (all.length - CELLS) / 2;
   const ions = Array.from({ length: cells }, (_, cell) => measure(CELLS + cell, EMITTED));
-  const some = total(ARRIVED) > 0;
+  const some = all[ARRIVED] > 0;
   return {
     ionsPerElectron: measure(MADE, EMITTED),
     returned: measure(RETURNED, EMITTED),
@@ -140,9 +185,10 @@ export function combineGap(batches: readonly Float64Array[]): GapYield {
     arrivalEnergy: some ? measure(ENERGY, ARRIVED) : null,
     ions: Float64Array.from(ions, ({ value }) => value),
     ionsError: Float64Array.from(ions, ({ error }) => error),
-    ionPlace: total(MADE) > 0 ? measure(PLACE, MADE) : null,
-    idle: total(IDLE) / total(EMITTED),
-    collisions: total(COLLISIONS),
+    slow: all.slice(CELLS + cells).map((sum) => sum / all[EMITTED]),
+    ionPlace: all[MADE] > 0 ? measure(PLACE, MADE) : null,
+    collisions: all[COLLISIONS],
+    flux: fluxOf(all, cells),
   };
 }
 
@@ -161,46 +207,4 @@ export function uniformGap(voltage: number, distance: number, cells: number): Fo
  *  local-field α give it, by one over the share that escapes. */
 export function particleFeedback({ ionsPerElectron: { value, error } }: GapYield, emission: number): Measured {
   return { value: emission * value, error: emission * error };
-}
-
-/** Electrons at the low face, leaving it by the cosine law. */
-function emit(count: number, energy: number, low: number, random: Random): Electrons {
-  const electrons = new Electrons(4 * count);
-  const speed = Math.sqrt(energy);
-  for (let k = 0; k < count; k++) {
-    const i = electrons.add(1);
-    // the square of the cosine is uniform
-    const square = random.uniform();
-    const angle = 2 * Math.PI * random.uniform();
-    electrons.x[i] = low;
-    electrons.ux[i] = speed * Math.sqrt(square);
-    electrons.uy[i] = speed * Math.sqrt(1 - square) * Math.cos(angle);
-    electrons.uz[i] = speed * Math.sqrt(1 - square) * Math.sin(angle);
-  }
-  return electrons;
-}
-
-/** By face: the most energy [eV] that an electron there can still gain anywhere in the gap. */
-function gainAhead({ faces, force }: ForceField): Float64Array {
-  const potential = new Float64Array(faces.length);
-  for (let i = 1; i < faces.length; i++) potential[i] = potential[i - 1] + force[i - 1] * (faces[i] - faces[i - 1]);
-  const highest = potential.reduce((a, b) => Math.max(a, b), Number.NEGATIVE_INFINITY);
-  return potential.map((value) => highest - value);
-}
-
-/** Whether any electron has, or can get from the field, what it takes to ionise. */
-function canIonise(electrons: Electrons, faces: Float64Array, force: Float64Array, gain: Float64Array, threshold: number): boolean {
-  const { x, ux, uy, uz, cell, count } = electrons;
-  for (let i = 0; i < count; i++) {
-    const c = cell[i];
-    const ahead = gain[c] - force[c] * (x[i] - faces[c]);
-    if (ux[i] ** 2 + uy[i] ** 2 + uz[i] ** 2 + ahead > threshold) return true;
-  }
-  return false;
-}
-
-/** Whether the field carries some of the electrons on. */
-function isCarriedOff({ cell, count }: Electrons, force: Float64Array): boolean {
-  for (let i = 0; i < count; i++) if (force[cell[i]] > 0) return true;
-  return false;
 }

@@ -25,15 +25,18 @@ function yieldOf(request: Partial<GapElectrons> & Pick<GapElectrons, 'field'>): 
   return found;
 }
 
+const sum = (list: Float64Array): number => list.reduce((a, b) => a + b, 0);
+
 describe('electrons of a gap', () => {
-  test('are all accounted for: returned, arrived or idle, as many as were emitted and made, also when only some are followed', () => {
+  test('are all accounted for: returned, arrived or slow, as many as were emitted and made, on average over those played for', () => {
     for (const [voltage, centimetres] of [
       [250, 1],
       [700, 2],
     ] as const) {
-      const { ionsPerElectron, returned, arrived, idle, ions } = yieldOf({ field: uniformGap(voltage, centimetres / 100, 20) });
+      const { ionsPerElectron, returned, arrived, slow, ions } = yieldOf({ field: uniformGap(voltage, centimetres / 100, 20) });
       expect(ionsPerElectron.value).toBeGreaterThan(voltage === 700 ? 1e4 : 50);
-      expect(Math.abs((returned.value + arrived.value + idle) / (1 + ionsPerElectron.value) - 1)).toBeLessThan(1e-9);
+      // one in two of 3200 or more electrons is played for in each of the last cells: some per cent
+      expect(Math.abs((returned.value + arrived.value + sum(slow)) / (1 + ionsPerElectron.value) - 1)).toBeLessThan(0.05);
       expect(Math.abs(ions.reduce((sum, x) => sum + x, 0) / ionsPerElectron.value - 1)).toBeLessThan(1e-9);
     }
   });
@@ -62,9 +65,11 @@ describe('electrons of a gap', () => {
   test('grow in a long gap as the steady stream of a swarm does', () => {
     const field = 500e-21 * TORR;
     const [short, long] = [0.006, 0.012].map((d) => yieldOf({ field: uniformGap(field * d, d, 10), particles: 6400 }));
-    // electrons that arrive, per electron emitted, grow as e^(αd)
-    const slope = Math.log(long.arrived.value / short.arrived.value) / 0.006 / TORR;
-    const error = Math.hypot(long.arrived.error / long.arrived.value, short.arrived.error / short.arrived.value) / 0.006 / TORR;
+    // electrons at the anode, slow ones too, per electron emitted, grow as e^(αd): one for each ion and each emitted one, less those that fell back
+    const atAnode = ({ ionsPerElectron, returned }: GapYield): number => 1 + ionsPerElectron.value - returned.value;
+    const slope = Math.log(atAnode(long) / atAnode(short)) / 0.006 / TORR;
+    const relative = ({ ionsPerElectron: { value, error } }: GapYield): number => error / value;
+    const error = Math.hypot(relative(long), relative(short)) / 0.006 / TORR;
     // of swarm-values.long.test.ts and of `gapwake swarm argon --at "500 Td"`: 1.063e-20 m², ± 0.1 %
     expect(Math.abs(slope - 1.063e-20)).toBeLessThan(5 * error + 0.02 * 1.063e-20);
     expect(error).toBeLessThan(0.02 * slope);
@@ -82,14 +87,18 @@ describe('electrons of a gap', () => {
   test('that stay where no field carries them on end the search when they can no more ionise', () => {
     // 200 V over 2 mm, nothing over 2 cm
     const field = { faces: Float64Array.of(0, 1e-3, 2e-3, 12e-3, 22e-3), force: Float64Array.of(1e5, 1e5, 0, 0) };
-    const { idle, ions, ionsPerElectron, returned, arrived } = yieldOf({ field, particles: 320 });
-    expect(idle).toBeGreaterThan(0.1);
+    // expected: one electron in every cell, so that none is ever played for
+    const { slow, ions, ionsPerElectron, returned, arrived } = yieldOf({ field, particles: 320, expected: new Float64Array(4).fill(1) });
+    expect(sum(slow)).toBeGreaterThan(0.1);
     expect(ions[2]).toBeGreaterThan(0);
-    expect(Math.abs((returned.value + arrived.value + idle) / (1 + ionsPerElectron.value) - 1)).toBeLessThan(1e-9);
+    expect(Math.abs((returned.value + arrived.value + sum(slow)) / (1 + ionsPerElectron.value) - 1)).toBeLessThan(1e-9);
+    // most of them where the field ends; none in the first cell, where it can still give them what it takes
+    expect(slow[0]).toBe(0);
+    expect(slow[2]).toBeGreaterThan(slow[1]);
   });
 
   test('are the same whatever the order of batches; errors shrink with their number', () => {
-    const request: GapElectrons = { table: oneTorr, field: uniformGap(250, 0.005, 8), emissionEnergy: 2, particles: 800, seed: 3 };
+    const request = { table: oneTorr, field: uniformGap(250, 0.005, 8), emissionEnergy: 2, particles: 800, seed: 3, expected: new Float64Array(8).fill(2) };
     const backwards = Array.from({ length: 16 }, (_, k) => gapBatchOf(request, 15 - k)).reverse();
     const once = yieldOf(request);
     expect(combineGap(backwards)).toEqual(once);
