@@ -5,11 +5,13 @@ if (Number(version.split('.')[0]) < 20) {
   process.stderr.write(`gapwake needs Node 20 or newer; this is v${version}\n`);
   process.exitCode = 2;
 } else {
-  import('./commands/cli.ts').then(
-    (commands) => commands.start(process.argv.slice(2)),
-    (error) => {
-      process.stderr.write(`gapwake: the program is incomplete (${String(error).split('\n')[0]}); build it again: npm run build\n`);
-      process.exitCode = 70;
-    },
-  );
+  import('./main/load.ts')
+    .then(({ loadProgram }) => loadProgram())
+    .then(
+      (program) => program.start(process.argv.slice(2)),
+      (error) => {
+        process.stderr.write(`gapwake: the program is incomplete (${String(error).split('\n')[0]}); build it again: npm run build\n`);
+        process.exitCode = 70;
+      },
+    );
 }

@@ -36,7 +36,7 @@ export interface PoolOptions {
   readonly setup: unknown;
   /** default: all cores */
   readonly workers?: number;
-  /** default: the program's own worker, `worker.js` beside this module once it is built; see `worker.ts` for its jobs */
+  /** default: the program's own worker, `worker.js` beside this module once it is built; see `jobs.ts` */
   readonly script?: URL;
   /** [MB] of JavaScript objects a worker may hold (a run needs less than 100) */
   readonly memory?: number;

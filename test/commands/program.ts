@@ -1,7 +1,7 @@
 import { execFileSync, type SpawnOptions, spawn } from 'node:child_process';
-import { existsSync, mkdirSync, mkdtempSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
+import { existsSync, mkdirSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
-import { delimiter, join } from 'node:path';
+import { join } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { afterAll, beforeAll } from 'vitest';
 
@@ -31,12 +31,8 @@ export function realProgram(): {
     mkdirSync(cache, { recursive: true });
     built = mkdtempSync(join(cache, 'gapwake-test-'));
     folder = mkdtempSync(join(tmpdir(), 'gapwake-commands-'));
-    const { scripts } = JSON.parse(readFileSync(join(root, 'package.json'), 'utf8')) as { scripts: { build: string } };
-    // the bundler's part of the script, into another folder: tests must not take away the program that somebody is using
-    const elsewhere = /esbuild .*--outdir=dist.*/.exec(scripts.build)?.[0].replaceAll('--outdir=dist', `--outdir='${built}'`);
-    if (elsewhere === undefined) throw new Error('the build script has changed: no esbuild with --outdir=dist');
-    const PATH = `${join(root, 'node_modules', '.bin')}${delimiter}${process.env.PATH}`;
-    execFileSync('/bin/sh', ['-c', elsewhere], { cwd: root, env: { ...process.env, PATH } });
+    // into another folder: tests must not take away the program that somebody is using
+    execFileSync(process.execPath, [join(root, 'build.mjs'), built]);
   });
   afterAll(() => {
     for (const made of [built, folder]) if (made !== '' && existsSync(made)) rmSync(made, { recursive: true });

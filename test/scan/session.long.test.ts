@@ -8,7 +8,7 @@ import { simulateNow } from '../../src/simulate.ts';
 import { bundledWorker } from './bundle.ts';
 import { GRID, requestFor, scanCase, studyFor, withoutWall } from './studies.ts';
 
-const script = bundledWorker('src/scan/worker.ts');
+const script = bundledWorker('test/scan/worker.ts');
 const harmful = bundledWorker('test/scan/fault-worker.ts');
 
 const never = (): AbortSignal => new AbortController().signal;

@@ -8,7 +8,7 @@ import { VERSION } from '../../src/version.ts';
 import { bundledWorker } from '../scan/bundle.ts';
 import { climbing, outcomeOf, readWindow } from './cases.ts';
 
-const script = bundledWorker('src/scan/worker.ts');
+const script = bundledWorker('test/scan/worker.ts');
 const never = (): AbortSignal => new AbortController().signal;
 const texts = { caseText: 'title: Climbing\n', coefficientsJson: '[]', tablesJson: '[]' };
 

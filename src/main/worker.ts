@@ -1,0 +1,4 @@
+/** The script of every worker. */
+import { loadProgram } from './load.ts';
+
+loadProgram().serveJobs();
