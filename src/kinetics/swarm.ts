@@ -1,6 +1,6 @@
 import { Random } from '../numerics/random.ts';
 import { type CollisionTable, collisionTable } from './collision-table.ts';
-import { type CrossSectionSet, ELECTRON_MASS } from './cross-sections.ts';
+import { type CrossSectionSet, ELECTRON_MASS, SPEED_OF_1_EV } from './cross-sections.ts';
 import { Electrons } from './electrons.ts';
 import { clearTally, Flights, uniformForce } from './flights.ts';
 import type { Angular } from './scattering.ts';
@@ -371,9 +371,13 @@ function madeAndLost({ kinds }: CollisionTable, counts: Float64Array): [made: nu
   return [made, lost];
 }
 
-/** Mean energy over the power that turns it over: what the field gives, and what a gas at rest would take by recoil. */
+/** Mean energy over the power that turns it over: what the field gives, and what a gas at rest would take by recoil; at least the time of three losses of
+ *  momentum, W/(eE/m) each, so that a pulse has forgotten its velocities too when it is said to spread evenly. That counts only where electrons drift about
+ *  as fast as they fly. */
 function turnoverOf({ table, tally }: Flights, reducedField: number): number {
-  const power = Math.max(0, (reducedField * DENSITY * tally.way[0]) / tally.energy[0]);
+  const field = reducedField * DENSITY;
+  const power = Math.max(0, (field * tally.way[0]) / tally.energy[0]);
   const recoil = ((2 * ELECTRON_MASS) / table.mass) * (tally.counts[0] / tally.time[0]);
-  return 1 / Math.max(power + recoil, 1e-300);
+  const momentum = (2 * tally.way[0]) / tally.time[0] / (field * SPEED_OF_1_EV ** 2);
+  return Math.max(1 / Math.max(power + recoil, 1e-300), 3 * momentum);
 }

@@ -28,6 +28,21 @@ function electronsOf(count: number, energy: number, random: Random): Electrons {
 
 const energyOf = ({ ux, uy, uz }: Electrons, i: number): number => ux[i] ** 2 + uy[i] ** 2 + uz[i] ** 2;
 
+/** parts in which energies and directions are counted */
+const PARTS = 60;
+
+/** Share of a Maxwellian below x kT: the incomplete gamma function P(3/2, x) by its series (Abramowitz and Stegun, Handbook of Mathematical Functions, 1964,
+ *  6.5.29). */
+function maxwellShare(x: number): number {
+  let term = (x ** 1.5 * Math.exp(-x)) / (0.75 * Math.sqrt(Math.PI));
+  let sum = 0;
+  for (let a = 2.5; a < 100; a++) {
+    sum += term;
+    term *= x / a;
+  }
+  return Math.min(sum, 1 - 1e-12);
+}
+
 describe('thermal equilibrium without a field', () => {
   const T = 1000;
   const kT = (BOLTZMANN * T) / ELEMENTARY_CHARGE;
@@ -46,6 +61,7 @@ describe('thermal equilibrium without a field', () => {
     let time = 0;
     let samples = 0;
     let [first, second] = [0, 0];
+    const [energies, cosines] = [new Float64Array(PARTS), new Float64Array(PARTS)];
     // 30 collisions are one time constant of cooling, 80 between samples leave them hardly correlated
     const collision = 1 / (density * crossSection(1.5 * kT) * SPEED_OF_1_EV * Math.sqrt(1.5 * kT));
     for (let k = 0; k < 12; k++) {
@@ -54,11 +70,19 @@ describe('thermal equilibrium without a field', () => {
       for (let i = 0; i < n; i++) {
         first += energyOf(electrons, i) / kT;
         second += (energyOf(electrons, i) / kT) ** 2;
+        energies[Math.floor(PARTS * maxwellShare(energyOf(electrons, i) / kT))]++;
+        cosines[Math.floor((PARTS / 2) * (1 + electrons.ux[i] / Math.sqrt(energyOf(electrons, i))))]++;
       }
       samples += n;
     }
     expect(Math.abs(first / samples - 1.5)).toBeLessThan(5 * Math.sqrt(1.5 / samples));
     expect(Math.abs(second / samples - 3.75)).toBeLessThan(5 * Math.sqrt(45 / samples));
+    // in detail: energies by their law and every direction as often; χ² of equally likely parts, mean PARTS − 1 with variance 2 (PARTS − 1)
+    for (const [what, counts] of Object.entries({ energies, cosines })) {
+      const each = samples / PARTS;
+      const chi2 = counts.reduce((sum, count) => sum + (count - each) ** 2 / each, 0);
+      expect(Math.abs(chi2 - (PARTS - 1)), what).toBeLessThan(4 * Math.sqrt(2 * (PARTS - 1)));
+    }
   });
 });
 

@@ -37,6 +37,13 @@ function expectEqual(one: Measured, other: Measured): void {
   expect(Math.abs(one.value - other.value)).toBeLessThan(5 * Math.hypot(one.error, other.error));
 }
 
+/** of a cross-section, for two terms of the Boltzmann equation */
+function rowsOf(crossSection: (e: number) => number): (readonly [number, number])[] {
+  return Array.from({ length: 400 }, (_, i) => 1e-3 * 10 ** (i / 80))
+    .map((e) => [e, crossSection(e) * 1e20] as const)
+    .filter(([, q]) => q > 0);
+}
+
 describe("Reid's ramp model gas", () => {
   // I. D. Reid, Aust. J. Phys. 32, 231, 1979 (from memory, M; an independent Monte Carlo program agrees within 0.3 %): 0.3 % and three errors
   test('at 12 Td has the published energy, drift and diffusion', () => {
@@ -69,6 +76,22 @@ describe("Lucas and Saelee's model gas at 10 Td", () => {
     expectNear(point.energyBalance, 1, 5, 1e-3);
     // mean energy 5.57 eV, Lucas and Saelee, J. Phys. D 8, 640, 1975, as recomputed by others since (from memory, L): 1 %
     expectNear(point.meanEnergy, 5.57, 3, 0.01);
+    // and by two terms of the Boltzmann equation, which with so few inelastic collisions are good to 1 %
+    const set = lucasSaelee(0);
+    const two = twoTerm(
+      {
+        mass: set.mass / ATOMIC_MASS,
+        momentum: rowsOf((e) => set.processes[0].crossSection(e) + set.processes[1].crossSection(e)),
+        losses: [{ threshold: 15.6, rows: rowsOf(set.processes[1].crossSection) }],
+        // none
+        ionisation: { threshold: 1e5, rows: [[1e5, 1e-9]] },
+      },
+      10,
+      80,
+      400,
+    );
+    expectNear(point.meanEnergy, two.mean, 3, 0.01);
+    expectNear(point.fluxDrift, two.mobility * 10e-21, 3, 0.01);
   });
 
   test('with ionisation is colder, its bulk drifts faster than its flux, and growth, drift and diffusion belong together', () => {
@@ -110,16 +133,12 @@ describe('argon', () => {
   });
 
   test('at 150 Td agrees with two terms of the Boltzmann equation in energy within 3 % and in drift within 5 %', () => {
-    const rows = (crossSection: (e: number) => number): (readonly [number, number])[] =>
-      Array.from({ length: 400 }, (_, i) => 1e-3 * 10 ** (i / 80))
-        .map((e) => [e, crossSection(e) * 1e20] as const)
-        .filter(([, q]) => q > 0);
     const [elastic, excitation, ionisation] = argon.processes;
     const target = {
       mass: 39.948,
-      momentum: rows((e) => elastic.crossSection(e) + excitation.crossSection(e) + ionisation.crossSection(e)),
-      losses: [{ threshold: 11.5, rows: rows(excitation.crossSection) }],
-      ionisation: { threshold: 15.8, rows: rows(ionisation.crossSection) },
+      momentum: rowsOf((e) => elastic.crossSection(e) + excitation.crossSection(e) + ionisation.crossSection(e)),
+      losses: [{ threshold: 11.5, rows: rowsOf(excitation.crossSection) }],
+      ionisation: { threshold: 15.8, rows: rowsOf(ionisation.crossSection) },
     };
     const two = twoTerm(target, 150, 40, 240);
     const point = pointOf(argon, 150, 293.15, 8, 1e6);
@@ -134,6 +153,39 @@ describe('helium', () => {
     const perTorr = 200 / 2.829;
     const ward = (4.4 * Math.exp(-14 / Math.sqrt(perTorr)) * 1e-4) / 3.535e16;
     expectNear(pointOf(helium, 200, 293.15, 6).ionisation, ward, 3, 0.25);
+  });
+});
+
+describe('a constant collision frequency', () => {
+  // Exact. With a = m/(m + M), b = M/(m + M) a collision leaves a² ⟨vᵢvⱼ⟩ + δᵢⱼ b² (2 kT/M + ⟨v²⟩/3) of the mean ⟨vᵢvⱼ⟩, and b is the share of momentum it
+  // takes. So W = eE/(mνb), ⟨v²⟩ = 3kT/m + W²/a, (1 − a²) ⟨v_T²⟩ = b² (2 kT/M + ⟨v²⟩/3), ⟨v_L²⟩ = ⟨v²⟩ − 2 ⟨v_T²⟩; and as what is left of any velocity falls
+  // as e^(−bνt), D_T = ⟨v_T²⟩/(bν), D_L = (⟨v_L²⟩ − W²)/(bν). Derived here; mean energy and drift as G. H. Wannier, Bell Syst. Tech. J. 32, 170, 1953, has them.
+  // Molecules of four electron masses, which make D_L 1.6 times D_T in a cold gas.
+  test.each([
+    [4, 10, 0],
+    [4, 10, 1000],
+    [25, 20, 300],
+  ])('gives exact energy, drift and diffusion: %d electron masses, %d Td, %d K', (masses, td, T) => {
+    const M = masses * ELECTRON_MASS;
+    const set: CrossSectionSet = {
+      ...reidRamp,
+      mass: M,
+      processes: [{ kind: 'elastic', name: 'elastic', threshold: 0, crossSection: (e) => 1e-19 / Math.sqrt(e) }],
+    };
+    const [a, b] = [1 / (1 + masses), masses / (1 + masses)];
+    const nu = 1e-19 * SPEED_OF_1_EV;
+    const W = (ELEMENTARY_CHARGE * td * 1e-21) / (ELECTRON_MASS * nu * b);
+    const kT = BOLTZMANN * T;
+    const square = (3 * kT) / ELECTRON_MASS + (W * W) / a;
+    const across = (b * b * ((2 * kT) / M + square / 3)) / (1 - a * a);
+    const point = pointOf(set, td, T, 16, 1.5e6);
+    expectNear(point.fluxDrift, W, 4, 0);
+    expectNear(point.bulkDrift, W, 4, 0);
+    expectNear(point.meanEnergy, (0.5 * ELECTRON_MASS * square) / ELEMENTARY_CHARGE, 4, 0);
+    expectNear(point.transverseDiffusion, across / (b * nu), 4, 0);
+    expectNear(point.longitudinalDiffusion, (square - 2 * across - W * W) / (b * nu), 4, 0);
+    expect(point.meanEnergy.error).toBeLessThan(0.003 * point.meanEnergy.value);
+    for (const { value, error } of [point.transverseDiffusion, point.longitudinalDiffusion]) expect(error).toBeLessThan(0.01 * value);
   });
 });
 

@@ -23,6 +23,120 @@ describe('the generators themselves', () => {
   });
 });
 
+describe('whole streams', () => {
+  // One million words of three streams as two well-kept libraries give them: the authors' own Random123 1.14.0 for the state (Philox4x32-10, counter =
+  // streams, key = seed), and rand_xoshiro 0.6.0 of the Rust project for what follows from it (Xoshiro128PlusPlus); both were run once. First six and last
+  // two words, and h ← 31 h + word of all.
+  test.each([
+    [0, [], [4203364181, 3172999218, 3987853227, 2458982729, 96215356, 1782628989], [3239650834, 2847649165], 842495831],
+    [1, [2], [3771393797, 2912971960, 416879491, 1576854563, 2672774770, 4137407503], [2431068357, 3869393142], 352622240],
+    [
+      1234567890123456,
+      [4294967295, 1, 77, 3],
+      [1787234070, 1654664908, 1126936305, 3449374931, 3940845915, 3309318521],
+      [131196970, 4208592026],
+      3185533025,
+    ],
+  ])('are word for word those of well-kept libraries: seed %d, streams %j', (seed, streams, head, end, hash) => {
+    const random = new Random(seed, streams);
+    const words: number[] = [];
+    let h = 0;
+    for (let i = 0; i < 1_000_000; i++) {
+      const word = random.word() >>> 0;
+      if (i < 6 || i >= 999_998) words.push(word);
+      h = (Math.imul(h, 31) + word) | 0;
+    }
+    expect(words).toEqual([...head, ...end]);
+    expect(h >>> 0).toBe(hash);
+  });
+
+  /** words of one stream, and taken in turns from many: the first ones of streams that differ by one in a counter, as single electrons use them */
+  const sources: readonly (readonly [string, () => () => number])[] = [
+    [
+      'one stream',
+      () => {
+        const random = new Random(15);
+        return () => random.word() >>> 0;
+      },
+    ],
+    [
+      'the beginnings of neighbouring streams',
+      () => {
+        const random = new Random(0);
+        let drawn = 0;
+        return () => {
+          if (drawn % 16 === 0) random.restart(15, [7, 0, drawn / 16]);
+          drawn++;
+          return random.word() >>> 0;
+        };
+      },
+    ],
+  ];
+
+  // D. E. Knuth, The Art of Computer Programming 2, 3.3.2 (serial test; from memory, H): χ² of 4096 cells, mean 4095, standard deviation √8190; four of them
+  test.each(sources)(
+    '%s: three words in a row fall equally often into 16³ cells, by their highest, middle and lowest bits',
+    (_, source) => {
+      const draw = source();
+      const triples = 100_000;
+      const cells = [28, 14, 0].map(() => new Float64Array(4096));
+      for (let k = 0; k < triples; k++) {
+        const [a, b, c] = [draw(), draw(), draw()];
+        for (const [j, shift] of [28, 14, 0].entries())
+          cells[j][(((a >>> shift) & 15) << 8) | (((b >>> shift) & 15) << 4) | ((c >>> shift) & 15)]++;
+      }
+      for (const counts of cells) {
+        const chi2 = counts.reduce((sum, count) => sum + (count - triples / 4096) ** 2 / (triples / 4096), 0);
+        expect(Math.abs(chi2 - 4095)).toBeLessThan(4 * Math.sqrt(8190));
+      }
+    },
+  );
+
+  // Birthday spacings (G. Marsaglia, A current view of random number generators, 1985; Knuth 3.3.2 J; from memory, H): of 512 birthdays in a year of 2²⁴ days,
+  // the spacings that occur again are Poisson distributed with mean 512³/2²⁶ = 2
+  test.each(sources)('%s: spacings of birthdays recur as often as chance says', (_, source) => {
+    const draw = source();
+    for (const shift of [8, 4, 0]) {
+      const years = 400;
+      let [sum, square] = [0, 0];
+      for (let year = 0; year < years; year++) {
+        const days = Float64Array.from({ length: 512 }, () => (draw() >>> shift) & 0xffffff).sort();
+        const spacings = days.map((day, i) => day - (i === 0 ? 0 : days[i - 1])).sort();
+        let again = 0;
+        for (let i = 1; i < 512; i++) if (spacings[i] === spacings[i - 1]) again++;
+        sum += again;
+        square += (again - 2) ** 2;
+      }
+      // variance of the mean 2/n, of the mean square about the mean (2 + 2·2²)/n
+      expect(Math.abs(sum / years - 2)).toBeLessThan(4 * Math.sqrt(2 / years));
+      expect(Math.abs(square / years - 2)).toBeLessThan(4 * Math.sqrt(10 / years));
+    }
+  });
+
+  // Knuth 3.3.2 G, with the length of each run after a number left out: runs up of exactly r occur with the chance 1/r! − 1/(r + 1)!
+  test.each(sources)('%s: runs upwards have the lengths of chance', (_, source) => {
+    const draw = source();
+    const counts = new Float64Array(6);
+    let runs = 0;
+    for (; runs < 60_000; runs++) {
+      let before = draw();
+      let length = 1;
+      for (let next = draw(); next > before; next = draw()) {
+        length++;
+        before = next;
+      }
+      counts[Math.min(length, 6) - 1]++;
+    }
+    let chi2 = 0;
+    for (let r = 1; r <= 6; r++) {
+      const chance = r === 6 ? 1 / factorial(6) : 1 / factorial(r) - 1 / factorial(r + 1);
+      chi2 += (counts[r - 1] - runs * chance) ** 2 / (runs * chance);
+    }
+    // five free: mean 5; a chance of 1e-4 beyond 25.7
+    expect(chi2).toBeLessThan(25.7);
+  });
+});
+
 describe('streams', () => {
   const firstOf = (seed: number, streams: readonly number[]): string => {
     const random = new Random(seed, streams);

@@ -12,12 +12,14 @@ import { hornbeck1951 } from './hornbeck-1951.ts';
 import { iec60664 } from './iec-60664-1.ts';
 import { kuffelZaenglKuffel } from './kuffel-zaengl-kuffel.ts';
 import { lieberman2005 } from './lieberman-2005.ts';
+import { lucasSaelee1975 } from './lucas-saelee-1975.ts';
 import { michaelson1977 } from './michaelson-1977.ts';
 import { naiduKamaraju } from './naidu-kamaraju.ts';
 import { normalGlow } from './normal-glow.ts';
 import { oskamMittelstadt1963 } from './oskam-mittelstadt-1963.ts';
 import { raizer1991 } from './raizer-1991.ts';
 import { raju } from './raju.ts';
+import { reid1979 } from './reid-1979.ts';
 import { schade1937 } from './schade-1937.ts';
 import { skoro2011 } from './skoro-2011.ts';
 import { townsendCurrents } from './townsend-currents.ts';
@@ -47,6 +49,8 @@ export const sources: readonly Source[] = [
   badaloniGallimberti1972,
   boydCrichton1971,
   criticalFields,
+  reid1979,
+  lucasSaelee1975,
   normalGlow,
   hagstrum1954,
   michaelson1977,
