@@ -7,7 +7,8 @@ export interface Pool<Task, Result> {
   /** threads at most */
   readonly workers: number;
   /** Takes a task from `next` whenever a worker is free, until it gives none, and tells `settled` each answer as it comes, in any order. Tasks are
-   *  taken only when a worker is there for them: as many as there are workers are in flight. May be called again when it has ended.
+   *  taken only when a worker is there for them: as many as there are workers are in flight, or {@link PoolOptions.ahead} twice as many. May be called
+   *  again when it has ended.
    *  After {@link Pool.interrupt} it ends once every task in flight has answered or was given up; those given up are not settled.
    *  @throws whatever `next` or `settled` throw, or Error when no worker can be started */
   run(next: () => Task | undefined, settled: (task: Task, answer: Answer<Result>) => void): Promise<void>;
@@ -40,6 +41,8 @@ export interface PoolOptions {
   readonly script?: URL;
   /** [MB] of JavaScript objects a worker may hold (a run needs less than 100) */
   readonly memory?: number;
+  /** [s] a worker whose last task took less is given the next one before it asks, so that it need not wait for this thread; default: never */
+  readonly ahead?: number;
 }
 
 const MEMORY = 1024;
@@ -56,10 +59,18 @@ export function defaultWorkers(): number {
   return availableParallelism();
 }
 
+interface Given<Task> {
+  readonly value: Task;
+  readonly attempt: number;
+}
+
 interface Member<Task> {
   readonly thread: Worker;
   ready: boolean;
-  task: { readonly value: Task; readonly attempt: number } | null;
+  /** given to it and not answered: the first is at work, another waits */
+  readonly tasks: Given<Task>[];
+  /** tasks it may have */
+  room: 1 | 2;
   /** why the thread ended, as far as it said */
   cause: unknown;
 }
@@ -79,7 +90,7 @@ class ThreadPool<Task, Result> implements Pool<Task, Result> {
   readonly #flag = new SharedArrayBuffer(4);
   readonly #members = new Set<Member<Task>>();
   /** tasks whose worker died, for one more attempt */
-  readonly #again: { readonly value: Task; readonly attempt: number }[] = [];
+  readonly #again: Given<Task>[] = [];
   #round: Round<Task, Result> | null = null;
   #interrupted = false;
   #grace: NodeJS.Timeout | undefined;
@@ -120,25 +131,32 @@ class ThreadPool<Task, Result> implements Pool<Task, Result> {
     const round = this.#round;
     if (round === null) return;
     try {
-      for (const member of this.#members) {
-        if (!member.ready || member.task !== null) continue;
-        const task = this.#take(round);
-        if (task === null) break;
-        this.#give(member, task);
-      }
+      this.#fill(round, 1);
       while (this.#members.size < this.workers) {
         const task = this.#take(round);
         if (task === null) break;
         this.#start(task);
       }
+      this.#fill(round, 2);
     } catch (thrown) {
       this.#end(round, thrown);
       return;
     }
-    if ((round.exhausted || this.#interrupted) && [...this.#members].every(({ task }) => task === null)) this.#end(round);
+    if ((round.exhausted || this.#interrupted) && [...this.#members].every(({ tasks }) => tasks.length === 0)) this.#end(round);
   }
 
-  #take(round: Round<Task, Result>): { readonly value: Task; readonly attempt: number } | null {
+  /** Gives workers that are ready so many tasks, as far as they have room. */
+  #fill(round: Round<Task, Result>, count: number): void {
+    for (const { ready, tasks, room, thread } of this.#members) {
+      if (!ready || tasks.length >= Math.min(room, count)) continue;
+      const task = this.#take(round);
+      if (task === null) return;
+      tasks.push(task);
+      thread.postMessage(task.value);
+    }
+  }
+
+  #take(round: Round<Task, Result>): Given<Task> | null {
     if (this.#interrupted) return null;
     const again = this.#again.shift();
     if (again !== undefined) return again;
@@ -151,16 +169,11 @@ class ThreadPool<Task, Result> implements Pool<Task, Result> {
     return { value, attempt: 1 };
   }
 
-  #give(member: Member<Task>, task: NonNullable<Member<Task>['task']>): void {
-    member.task = task;
-    if (member.ready) member.thread.postMessage(task.value);
-  }
-
-  #start(task: NonNullable<Member<Task>['task']>): void {
+  #start(task: Given<Task>): void {
     const { job, setup, script = new URL('./worker.js', import.meta.url), memory = MEMORY } = this.#options;
     const start: WorkerStart = { job, setup, flag: this.#flag };
     const thread = new Worker(script, { workerData: start, resourceLimits: { maxOldGenerationSizeMb: memory }, execArgv: [] });
-    const member: Member<Task> = { thread, ready: false, task, cause: undefined };
+    const member: Member<Task> = { thread, ready: false, tasks: [task], room: 1, cause: undefined };
     this.#members.add(member);
     thread.on('message', (message: WorkerMessage) => this.#hear(member, message));
     thread.on('error', (cause) => {
@@ -172,29 +185,32 @@ class ThreadPool<Task, Result> implements Pool<Task, Result> {
   #hear(member: Member<Task>, message: WorkerMessage): void {
     if (message.kind === 'ready') {
       member.ready = true;
-      if (member.task !== null) member.thread.postMessage(member.task.value);
+      for (const { value } of member.tasks) member.thread.postMessage(value);
       return;
     }
-    const task = member.task;
-    member.task = null;
-    if (task !== null && message.kind === 'done')
+    const task = member.tasks.shift();
+    if (task !== undefined && message.kind === 'done') {
+      member.room = message.seconds < (this.#options.ahead ?? 0) ? 2 : 1;
       this.#settle(task.value, { ok: true, result: message.result as Result, seconds: message.seconds });
-    if (task !== null && message.kind === 'fault') {
+    }
+    if (task !== undefined && message.kind === 'fault') {
       // the same again would fail the same way
       this.#settle(task.value, { ok: false, error: { code: 'internal-fault', text: message.text } });
     }
     this.#feed();
   }
 
-  /** A thread has ended, whatever the reason: its task gets one more attempt in another. */
+  /** A thread has ended, whatever the reason: its task gets one more attempt in another; one that only waited has lost nothing. */
   #lose(member: Member<Task>, exitCode: number): void {
     if (!this.#members.delete(member)) return;
-    const { task, cause, ready } = member;
+    const { cause, ready } = member;
+    const [task, ...waiting] = member.tasks;
     if (!ready && !this.#interrupted && this.#round !== null) {
       this.#end(this.#round, new Error(`a worker could not be started: ${causeText(cause, exitCode)}`));
       return;
     }
-    if (task !== null && !this.#interrupted) {
+    if (task !== undefined && !this.#interrupted) {
+      this.#again.push(...waiting);
       if (task.attempt === 1) this.#again.push({ value: task.value, attempt: 2 });
       else this.#settle(task.value, { ok: false, error: deathOf(cause, exitCode) });
     }

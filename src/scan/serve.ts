@@ -18,7 +18,7 @@ export interface WorkerStart {
   readonly flag: SharedArrayBuffer;
 }
 
-/** What a worker says. It has one task at a time. */
+/** What a worker says: it answers tasks one after the other, in the order in which they came. */
 export type WorkerMessage =
   | { readonly kind: 'ready' }
   | { readonly kind: 'done'; readonly result: unknown; readonly seconds: number }
@@ -41,7 +41,7 @@ export function serve(jobs: Readonly<Record<string, () => Promise<Job<never, nev
     const load = jobs[job];
     if (load === undefined) throw new Error(`no job ${job}`);
     const perform = (await load())(setup as never);
-    port.on('message', async (task: unknown) => {
+    const answer = async (task: unknown): Promise<void> => {
       const start = performance.now();
       try {
         const result = await perform(task as never, interrupted);
@@ -51,6 +51,11 @@ export function serve(jobs: Readonly<Record<string, () => Promise<Job<never, nev
         else if (thrown instanceof Error) say({ kind: 'fault', text: oneLine(thrown) });
         else throw thrown;
       }
+    };
+    let last = Promise.resolve();
+    port.on('message', (task: unknown) => {
+      last = last.then(() => answer(task));
+      return last; // so that what it throws is uncaught, whatever it is
     });
     say({ kind: 'ready' });
   };

@@ -11,8 +11,8 @@ afterEach(async () => {
   pools = [];
 });
 
-function poolOf(workers = 2, job = 'square', memory = 1024): Pool<Task, number> {
-  const pool = createPool<Task, number>({ job, setup: { offset: 100 }, workers, script: script(), memory });
+function poolOf(workers = 2, job = 'square', memory = 1024, ahead = 0): Pool<Task, number> {
+  const pool = createPool<Task, number>({ job, setup: { offset: 100 }, workers, script: script(), memory, ahead });
   pools.push(pool);
   return pool;
 }
@@ -49,8 +49,12 @@ describe('a pool', () => {
     expect((await answers(pool, [])).size).toBe(0);
   });
 
-  test('takes a task only when a worker is there for it', async () => {
-    const pool = poolOf(2);
+  // as many are in flight as there are workers, or twice as many: one less before each is taken
+  test.each([
+    ['takes a task only when a worker is there for it', 2, 0, 1],
+    ['takes one more for each worker, ahead, where tasks are quick', 1, 60, 1],
+  ])('%s', async (_, workers, ahead, inFlight) => {
+    const pool = poolOf(workers, 'square', 1024, ahead);
     let [taken, settled, most] = [0, 0, 0];
     await pool.run(
       () => {
@@ -63,8 +67,7 @@ describe('a pool', () => {
       },
     );
     expect(settled).toBe(200);
-    // as many are in flight as there are workers: one less before each is taken
-    expect(most).toBe(1);
+    expect(most).toBe(inFlight);
   });
 
   test('ends with what its caller throws', async () => {
@@ -108,6 +111,13 @@ describe('a worker that dies', () => {
     expect(found.size).toBe(12);
     for (const [n, answer] of found) if (n !== 3) expect(answer).toMatchObject({ ok: true, result: n * n + 100 });
     expect(found.get(3)).toMatchObject({ ok: false, error: { code, text: expect.stringMatching(text) } });
+  });
+
+  test('does not harm the task that waited behind: it is done as if nothing had been', async () => {
+    const tasks = Array.from({ length: 40 }, (_, n) => (n % 4 === 2 ? { n, harm: 'exit' as const } : { n }));
+    const found = await answers(poolOf(2, 'square', 1024, 60), tasks);
+    expect(found.size).toBe(40);
+    for (const [n, answer] of found) expect(answer.ok, `task ${n}`).toBe(n % 4 !== 2);
   });
 
   test('once only costs nothing but the attempt', async () => {
