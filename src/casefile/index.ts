@@ -9,7 +9,7 @@
  *  issues.ts        what the schema found wrong -> problems (problem.ts)
  *  build.ts         validated input and defaults -> Case (coefficients.ts: the gas)
  *  build-study.ts   the same for scan and history
- *  points.ts        the case at a point of a scan (plain.ts: --set on plain data)
+ *  points.ts        the case at a point of a scan (plain.ts: --set on plain data; sections.ts: what is validated anew)
  *  resolved.ts      the case as a flat record in SI; hash.ts: its SHA-256
  *  template.ts      a case to start from
  *
@@ -34,6 +34,7 @@ import { inOrder, type Place, type Problem } from './problem.ts';
 import { resolvedOf } from './resolved.ts';
 import type { ResolvedValue } from './resolved-study.ts';
 import { type CaseInput, caseSchemas } from './schema.ts';
+import { sectionReader } from './sections.ts';
 
 export type { BuiltIns } from './build.ts';
 export type { DatasetRead, DatasetReader } from './dataset.ts';
@@ -130,8 +131,10 @@ export function readCase(
   const window = input.history ? deepFreeze(buildWindow(input.history, built, defaults)) : null;
 
   const { scan: _, history: __, ...base } = plain.value as Plain;
+  const readSections = sectionReader(run);
   const read = (point: Plain): ReturnType<PointReader> => {
-    const again = run.safeParse(point, { reportInput: false });
+    const quick = readSections(point);
+    const again = quick === null ? run.safeParse(point, { reportInput: false }) : ({ success: true, data: quick } as const);
     const missing = missingYields(point, builtIns, document);
     if (!again.success) return { ok: false, problems: [...problemsOf(again.error.issues, run, point, document), ...missing] };
     if (missing.length > 0) return { ok: false, problems: missing };
