@@ -43,7 +43,7 @@ export function buildCase(input: CaseInput, fileTitle: string, builtIns: BuiltIn
   const withoutHash: Omit<Case, 'sha256'> = {
     title,
     gap: gapOf(input.gap, defaults),
-    gas: gasOf(input.gas, parts, builtIns, defaults),
+    gas: gasOnce(input.gas, parts, builtIns, defaults),
     electrodes: { left, right },
     seed: {
       cathodeCurrent: input.seed.cathode_current,
@@ -93,6 +93,18 @@ function dataOf(input: CaseInput['gas'], parts: readonly MixturePart[] | null, b
   if (parts !== null) defaults.note(`gas.mixture: ${name} alone, read as gas.name: ${name}`);
   const [standard] = builtIns.dataSets(name);
   return known(name, defaults.or(input.data, 'gas.data', standard, standard));
+}
+
+/** by the input they are made from: the points of a scan that does not vary the gas share it, so that it is built, frozen and hashed once */
+const GASES = new WeakMap<CaseInput['gas'], Gas>();
+
+/** The gas; its defaults are noted when it is made. */
+function gasOnce(input: CaseInput['gas'], parts: readonly MixturePart[] | null, builtIns: BuiltIns, defaults: Defaults): Gas {
+  const known = GASES.get(input);
+  if (known !== undefined) return known;
+  const gas = deepFreeze(gasOf(input, parts, builtIns, defaults));
+  GASES.set(input, gas);
+  return gas;
 }
 
 function gasOf(input: CaseInput['gas'], parts: readonly MixturePart[] | null, builtIns: BuiltIns, defaults: Defaults): Gas {
