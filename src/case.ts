@@ -18,6 +18,8 @@ export interface Case {
     readonly electrons: number;
   };
   readonly supply: SupplySettings;
+  /** electrons as particles; absent: they follow the local field */
+  readonly electrons?: KineticElectrons;
   readonly observe: {
     /** [s] */
     readonly until: number;
@@ -29,4 +31,15 @@ export interface Case {
     readonly cells: number | null;
     readonly tolerance: number;
   };
+}
+
+/** How electrons are followed as particles. */
+export interface KineticElectrons {
+  readonly closure: 'kinetic';
+  /** with which electrons leave the cathode [eV] */
+  readonly emissionEnergy: number;
+  /** electrons emitted for one answer, at most */
+  readonly particles: number;
+  /** of the random numbers */
+  readonly seed: number;
 }

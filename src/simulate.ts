@@ -1,11 +1,13 @@
 import type { Case } from './case.ts';
 import { cellsFor } from './gap/cells.ts';
 import { makeLayout } from './gap/layout.ts';
+import { FastElectrons } from './laws/fast-electrons.ts';
 import { GapEquations } from './laws/gap-equations.ts';
 import { lawsOf } from './laws/of-case.ts';
 import { GapSystem } from './march/gap-system.ts';
-import { initialState } from './march/initial.ts';
+import { initialState, releaseParticles } from './march/initial.ts';
 import { March, MarchFailure } from './march/march.ts';
+import { Particles, particleSettingsOf, type UniformAnswers } from './march/particles.ts';
 import { RODAS } from './march/scheme.ts';
 import { Analysis } from './onset/analysis.ts';
 import type { RunContext } from './onset/context.ts';
@@ -15,6 +17,7 @@ import type { Snapshot } from './onset/snapshot-watch.ts';
 import { Circuit } from './supply/circuit.ts';
 import { OpenGap } from './supply/open-gap.ts';
 import { Trip } from './supply/trip.ts';
+import { kineticGapOf } from './theory/kinetic.ts';
 
 /** Where a run is, for a progress line. */
 export interface Progress {
@@ -82,11 +85,19 @@ function assemble(settings: Case, watch: Watch): { march: March; analysis: Analy
   const grid = cellsFor(settings.gap, settings.numerics.cells, scales.cathodes, scales.layer);
   const layout = makeLayout(grid.cells, laws.species.length);
   const circuit = new Circuit(settings.supply);
-  const system = new GapSystem(new GapEquations(grid, layout, laws), circuit);
+  const kinetic = particleSettingsOf(settings, scales.ionTransit, (voltage) => uniformAnswer(settings, voltage));
+  const fast = kinetic === null ? null : new FastElectrons(grid);
+  const system = new GapSystem(new GapEquations(grid, layout, laws, fast), circuit);
+  const particles = kinetic === null || fast === null ? null : new Particles(kinetic, fast, grid, layout);
   const voltage = circuit.begin(0, settings.supply.initialGapVoltage);
   const alpha = laws.density * laws.ionisation.valueAt(Math.abs(voltage) / (laws.density * grid.spacing));
   const released = { electrons: settings.seed.electrons, leftIsCathode: scales.firstIsLeft, alpha };
-  const initial = initialState(grid, layout, released, voltage);
+  const initial = initialState(grid, layout, particles === null ? released : { ...released, electrons: 0 }, voltage);
+  if (particles !== null && fast !== null && released.electrons > 0) {
+    system.settle(initial);
+    particles.look(0, initial);
+    releaseParticles(grid, layout, fast, released.electrons, initial);
+  }
   const openGap = new OpenGap(circuit, system.capacitance, voltage);
   const trip = settings.supply.trip === null ? null : new Trip(settings.supply.trip);
 
@@ -103,11 +114,19 @@ function assemble(settings: Case, watch: Watch): { march: March; analysis: Analy
       errorScale: scales.errorScale(laws.species.length),
       electronTransit: scales.electronTransit,
       ionTransit: scales.ionTransit,
+      particles,
     },
     analysis.observers,
   );
   march.begin();
   return { march, analysis };
+}
+
+/** What particles do in the gap without space charge. */
+function uniformAnswer(settings: Case, voltage: number): ReturnType<UniformAnswers> {
+  const gap = kineticGapOf(settings, 1);
+  if (gap === null) throw new Error('electrons follow the local field');
+  return gap.answer(voltage);
 }
 
 /** One run in slices of wall time. */

@@ -5,7 +5,7 @@ import { mixtureOf } from '../gases/mixture.ts';
 import type { Programme, SupplySettings } from '../supply/settings.ts';
 import type { IonYield, Surface } from '../surfaces/surface.ts';
 import type { YieldLaw } from '../surfaces/yield-law.ts';
-import { BOLTZMANN } from '../units/constants.ts';
+import { BOLTZMANN, ELEMENTARY_CHARGE } from '../units/constants.ts';
 import { coefficientsOf } from './coefficients.ts';
 import type { Defaults } from './defaults.ts';
 import { deepFreeze } from './freeze.ts';
@@ -22,6 +22,8 @@ export interface BuiltIns {
   readonly materials: readonly string[];
   /** the surface of a material in a gas (null: the case's own coefficients), or null where its yield is unknown */
   readonly surfaceFor: (material: string, gas: string | null) => Surface | null;
+  /** gases whose electrons can be followed as particles */
+  readonly kinetic: readonly string[];
   /** the same in a mixture of gases */
   readonly surfaceInMixture: (material: string, gases: readonly string[]) => Surface | null;
   /** the same in a stated condition */
@@ -39,7 +41,6 @@ export function buildCase(input: CaseInput, fileTitle: string, builtIns: BuiltIn
   const left = surfaceOf(input.electrodes.left, gasNames, builtIns);
   if (!input.electrodes.right) defaults.add('electrodes.right', 'same as left');
   const right = input.electrodes.right ? surfaceOf(input.electrodes.right, gasNames, builtIns) : left;
-  defaults.or(input.electrons?.closure, 'electrons.closure', 'local-field', 'local-field');
   const withoutHash: Omit<Case, 'sha256'> = {
     title,
     gap: gapOf(input.gap, defaults),
@@ -50,6 +51,7 @@ export function buildCase(input: CaseInput, fileTitle: string, builtIns: BuiltIn
       electrons: defaults.or(input.seed.electrons, 'seed.electrons', 0, '0'),
     },
     supply: supplyOf(input.supply, defaults),
+    ...electronsOf(input.electrons, defaults),
     observe: {
       until: input.observe.until,
       currents: [...new Set(defaults.or(input.observe.currents, 'observe.currents', [], 'none'))].sort((a, b) => a - b),
@@ -60,6 +62,21 @@ export function buildCase(input: CaseInput, fileTitle: string, builtIns: BuiltIn
     },
   };
   return deepFreeze({ ...withoutHash, sha256: hashCase(withoutHash) });
+}
+
+/** Nothing where electrons follow the local field: such a case is what it was before there was a choice. */
+function electronsOf(input: CaseInput['electrons'], defaults: Defaults): Pick<Case, 'electrons'> {
+  const closure = defaults.or(input?.closure, 'electrons.closure', 'local-field', 'local-field');
+  if (closure === 'local-field') return {};
+  const energy = input?.emission_energy;
+  return {
+    electrons: {
+      closure,
+      emissionEnergy: defaults.or(energy === undefined ? undefined : energy / ELEMENTARY_CHARGE, 'electrons.emission_energy', 2, '2 eV'),
+      particles: defaults.or(input?.particles, 'electrons.particles', 20000, '20000'),
+      seed: defaults.or(input?.seed, 'electrons.seed', 1, '1'),
+    },
+  };
 }
 
 function gapOf(input: CaseInput['gap'], defaults: Defaults): PlanarGap {

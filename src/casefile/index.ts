@@ -17,6 +17,7 @@
 import * as z from 'zod';
 import type { Case } from '../case.ts';
 import { dataSets, gasData, gases } from '../gases/index.ts';
+import { isFollowed } from '../kinetics/sets.ts';
 import type { ScanSettings, WindowSettings } from '../study.ts';
 import { surfaceIn, surfaces, yieldFor, yieldInMixture } from '../surfaces/index.ts';
 import { type BuiltIns, buildCase, knownSurface } from './build.ts';
@@ -82,6 +83,7 @@ export const BUILT_INS: BuiltIns = {
   surfaceFor: yieldFor,
   surfaceInMixture: yieldInMixture,
   surfaceIn,
+  kinetic: Object.keys(gases).filter((name) => isFollowed(name)),
 };
 
 /** Reads a case.
@@ -115,6 +117,7 @@ export function readCase(
       gasNames: Object.keys(builtIns.gases),
       dataSets: builtIns.dataSets,
       materialNames: builtIns.materials,
+      kineticNames: builtIns.kinetic,
     },
     Object.keys(plain.value as Plain),
   );
@@ -183,6 +186,7 @@ export function caseJsonSchema(builtIns: BuiltIns = BUILT_INS): Record<string, u
     gasNames: Object.keys(builtIns.gases),
     dataSets: builtIns.dataSets,
     materialNames: builtIns.materials,
+    kineticNames: builtIns.kinetic,
   });
   return { title: 'gapwake case', ...z.toJSONSchema(file, { io: 'input', target: 'draft-7' }) };
 }

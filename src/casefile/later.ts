@@ -12,7 +12,6 @@ const KEYS: Readonly<Record<string, readonly string[]>> = {
 /** Names that a key may take one day. */
 const NAMES: Readonly<Record<string, readonly string[]>> = {
   'gap.geometry': ['coaxial', 'spherical'],
-  'electrons.closure': ['kinetic'],
 };
 
 export function isLaterKey(parent: readonly PropertyKey[], key: string): boolean {

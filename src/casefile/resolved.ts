@@ -3,6 +3,7 @@ import type { Form } from '../gases/forms.ts';
 import type { Coefficient } from '../gases/gas.ts';
 import type { ScanSettings, WindowSettings } from '../study.ts';
 import type { Surface } from '../surfaces/surface.ts';
+import { ELEMENTARY_CHARGE } from '../units/constants.ts';
 import { hashColumns } from './hash.ts';
 import { type ResolvedValue, scanEntries, windowEntries } from './resolved-study.ts';
 
@@ -44,7 +45,14 @@ export function resolvedOf(c: Case, scan: ScanSettings | null, window: WindowSet
         }
       : { 'supply.trip': null }),
     'supply.initial_gap_voltage': supply.initialGapVoltage,
-    'electrons.closure': 'local-field',
+    'electrons.closure': c.electrons?.closure ?? 'local-field',
+    ...(c.electrons
+      ? {
+          'electrons.emission_energy': c.electrons.emissionEnergy * ELEMENTARY_CHARGE,
+          'electrons.particles': c.electrons.particles,
+          'electrons.seed': c.electrons.seed,
+        }
+      : {}),
     'observe.until': observe.until,
     ...Object.fromEntries(observe.currents.map((level, i) => [`observe.currents.${i}`, level])),
     'numerics.cells': numerics.cells,

@@ -1,4 +1,5 @@
 import * as z from 'zod';
+import { ELEMENTARY_CHARGE } from '../units/constants.ts';
 import { clip, nearestSpelling } from '../units/index.ts';
 import type { DatasetReader } from './dataset.ts';
 import {
@@ -21,6 +22,14 @@ import {
 import { type HistoryInput, historySchema } from './history-schema.ts';
 import { getPlain } from './plain.ts';
 import { type ScanInput, scanSchema } from './scan-schema.ts';
+
+interface ElectronsInput {
+  readonly closure?: 'local-field' | 'kinetic' | undefined;
+  /** [J] */
+  readonly emission_energy?: number | undefined;
+  readonly particles?: number | undefined;
+  readonly seed?: number | undefined;
+}
 
 /** A case as validated: SI values, entries as they were given, no defaults filled in. */
 export interface CaseInput {
@@ -61,7 +70,7 @@ export interface CaseInput {
       | undefined;
     readonly initial_gap_voltage?: number | undefined;
   };
-  readonly electrons?: { readonly closure?: 'local-field' | undefined } | undefined;
+  readonly electrons?: ElectronsInput | undefined;
   readonly observe: { readonly until: number; readonly currents?: readonly number[] | undefined };
   readonly numerics?: { readonly cells?: number | undefined; readonly tolerance?: number | undefined } | undefined;
   readonly scan?: ScanInput | undefined;
@@ -123,6 +132,8 @@ export interface SchemaContext {
   /** names of the sets of data of a gas, the default first */
   readonly dataSets: (gas: string) => readonly string[];
   readonly materialNames: readonly string[];
+  /** gases whose electrons can be followed as particles */
+  readonly kineticNames: readonly string[];
 }
 
 const TEMPERATURE = { min: 4, max: 3000, text: 'from 4 K to 3000 K' };
@@ -144,7 +155,8 @@ export interface CaseSchemas {
 export function caseSchemas(context: SchemaContext, keys: readonly string[] = ['scan', 'history']): CaseSchemas {
   const shape = runShape(context);
   const description = 'A gap, its gas and electrodes, what feeds it, and how long to watch it';
-  const run = section(shape, description);
+  const kinetic = across((sound, report) => checkCrossSections(sound as Partial<CaseInput>, context.kineticNames, report));
+  const run = section(shape, description).check(kinetic);
   const { reader, datasets } = context;
   const file = section(
     {
@@ -155,7 +167,9 @@ export function caseSchemas(context: SchemaContext, keys: readonly string[] = ['
         : z.undefined().optional(),
     },
     description,
-  ).check(across((sound, report, given) => checkStudies(sound as Partial<CaseInput>, report, given)));
+  )
+    .check(kinetic)
+    .check(across((sound, report, given) => checkStudies(sound as Partial<CaseInput>, report, given)));
   return { file, run } as unknown as CaseSchemas;
 }
 
@@ -173,7 +187,7 @@ function runShape(context: SchemaContext): Readonly<Record<string, z.ZodType>> {
     ),
     seed: seedSchema(),
     supply: supplySchema(context),
-    electrons: section({ closure: choice(['local-field']).optional() }, 'how electrons follow the field').optional(),
+    electrons: electronsSchema().optional(),
     observe: section(
       {
         until: quantity('time', { above: 0, max: 1e9, text: 'above 0 and up to 1e9 s' }),
@@ -191,9 +205,56 @@ function runShape(context: SchemaContext): Readonly<Record<string, z.ZodType>> {
   };
 }
 
+/** The entries of kinetic electrons, with the words for their bounds. */
+const KINETIC_ENTRIES = ['emission_energy', 'particles', 'seed'] as const;
+
+function electronsSchema(): z.ZodType<ElectronsInput> {
+  return section(
+    {
+      closure: choice(['local-field', 'kinetic']).optional(),
+      emission_energy: quantity('energy', {
+        min: 0.1 * ELEMENTARY_CHARGE,
+        max: 20 * ELEMENTARY_CHARGE,
+        text: 'from 0.1 eV to 20 eV',
+      }).optional(),
+      particles: pureNumber('a whole number', { min: 320, max: 1e7, text: 'from 320 to 1e7' }, 20000, true).optional(),
+      seed: pureNumber('a whole number', { min: 0, max: 2 ** 53 - 1, text: 'from 0 to 2^53 - 1' }, 1, true).optional(),
+    },
+    'closure local-field: electrons follow the field where they are; kinetic: they are followed as particles, in gases with built-in cross-sections. Then emission_energy: with which they leave the cathode (default 2 eV), particles: how many are followed for one answer at most (default 20000), seed of the random numbers (default 1)',
+  ).check(
+    across(({ closure }, report, given) => {
+      if (closure === 'kinetic' || (given.closure !== undefined && closure === undefined)) return;
+      for (const key of KINETIC_ENTRIES)
+        if (given[key] !== undefined)
+          report([key], `${key} only beside closure: kinetic`, { code: 'inconsistent', found: `closure: ${closure ?? 'local-field'}` });
+    }),
+  ) as unknown as z.ZodType<ElectronsInput>;
+}
+
+/** Cross-sections that kinetic electrons need. */
+function checkCrossSections({ gas, electrons }: Partial<CaseInput>, kinetic: readonly string[], report: Report): void {
+  if (electrons?.closure !== 'kinetic' || gas === undefined) return;
+  if (gas.name !== undefined && kinetic.includes(gas.name)) return;
+  if (gas.name === undefined && gas.mixture === undefined && gas.coefficients === undefined) return;
+  const what = gas.name ?? (gas.mixture !== undefined ? 'a mixture' : 'a gas without name');
+  report(['electrons', 'closure'], `local-field, or a gas.name with built-in cross-sections (${kinetic.join(', ')}) for kinetic`, {
+    code: 'inconsistent',
+    found: `kinetic with ${what}`,
+  });
+}
+
 /** What a scan or a history asks of the rest of the case. */
-function checkStudies({ supply, scan, history }: Partial<CaseInput>, report: Report, given: Readonly<Record<string, unknown>>): void {
+function checkStudies(
+  { supply, scan, history, electrons }: Partial<CaseInput>,
+  report: Report,
+  given: Readonly<Record<string, unknown>>,
+): void {
   checkVariedYields(given, report);
+  if (electrons?.closure === 'kinetic' && given.history !== undefined)
+    report(['electrons', 'closure'], 'local-field beside a history: a window asks for hundreds of densities and runs', {
+      code: 'inconsistent',
+      found: 'kinetic with a history',
+    });
   const what = scan?.find?.what;
   const supplyGiven = given.supply as Readonly<Record<string, unknown>> | null | undefined;
   if (what === 'trip-delay' && typeof supplyGiven === 'object' && supplyGiven?.trip === undefined)

@@ -47,7 +47,7 @@ supply:
   # trip: { current: 1 mA, delay: 50 us, senses: gap, action: open }   # default none; senses: gap or supply; action: open or zero
   # initial_gap_voltage: 0 V    # what the gap holds at t = 0
 
-electrons: { closure: local-field }
+electrons: { closure: local-field }   # or { closure: kinetic, emission_energy: 2 eV, particles: 20000, seed: 1 }: as particles
 
 observe:
   until: 20 ms                  # ends earlier when steady or died out

@@ -4,7 +4,8 @@ import { dataSets, gasData } from '../gases/index.ts';
 import { mixtureOf } from '../gases/mixture.ts';
 import { withYield, type YieldEnd, type YieldSpread, yieldSpread } from '../onset/cautions/yield-ends.ts';
 import { threshold } from '../theory/breakdown-voltage.ts';
-import { multiplicationOf, prospects } from '../theory/predict.ts';
+import { multiplicationOf } from '../theory/multiplication.ts';
+import { prospects } from '../theory/predict.ts';
 
 /** What choices and spreads of the data do to V_s, for `check` and `run`: closed forms, nothing is simulated. */
 

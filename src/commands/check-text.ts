@@ -3,6 +3,7 @@ import type { Coefficient, Provenance } from '../gases/gas.ts';
 import type { YieldEnd } from '../onset/cautions/yield-ends.ts';
 import type { Caution } from '../onset/outcome.ts';
 import type { Surface } from '../surfaces/surface.ts';
+import type { Kinetics } from '../theory/kinetic.ts';
 import type { Prospects, Theory } from '../theory/predict.ts';
 import { TOWNSEND, VACUUM_PERMITTIVITY } from '../units/constants.ts';
 import { printable } from '../units/printable.ts';
@@ -11,6 +12,7 @@ import type { LoadedCase } from './case-source.ts';
 import { cautionLines, lastLines } from './cautions-text.ts';
 import { gasUsed, type SetVoltage, yieldConsequences } from './check-spread.ts';
 import { coefficientsOf, notesOf } from './coefficients.ts';
+import { kineticRows } from './kinetics-text.ts';
 import { columns, NO_BREAK, wrap } from './layout.ts';
 import { currentDensity, field, percent, pressure, pressureDistance, quantity, rate, reducedField } from './quantities.ts';
 import type { Terminal } from './terminal.ts';
@@ -23,6 +25,8 @@ export interface CheckAnswer {
   readonly voltage: number;
   readonly theory: Theory;
   readonly prospects: Prospects;
+  /** null where electrons follow the local field */
+  readonly kinetics: Kinetics | null;
   readonly cautions: readonly Caution[];
 }
 
@@ -50,6 +54,7 @@ export function checkText(answer: CheckAnswer, terminal: Terminal): string {
     ...section('The case', caseRows(loaded)),
     ...[...remarks(loaded), ...unusedStudies(loaded)].flatMap((note) => wrap(note, width, '  ', '  ').map(style.faint)),
     ...section(theoryTitle(voltage), theoryRows(answer)),
+    ...(answer.kinetics === null ? [] : section('Electrons as particles', kineticRows(answer.kinetics))),
     '',
     style.strong('Where the numbers come from'),
     ...sourceLines(settings, voltage, width),
@@ -95,7 +100,12 @@ export function caseRows({ case: settings, defaults }: LoadedCase): Row[] {
     row('trip action', 'supply.trip.action', action[supply.trip.action]);
   }
   row('gap voltage at t = 0', 'supply.initial_gap_voltage', quantity(supply.initialGapVoltage, 'V'));
-  row('electrons', 'electrons.closure', 'local-field');
+  row('electrons', 'electrons.closure', settings.electrons === undefined ? 'local-field' : 'kinetic: followed as particles');
+  if (settings.electrons !== undefined) {
+    row('emission energy', 'electrons.emission_energy', quantity(settings.electrons.emissionEnergy, 'eV'));
+    row('particles', 'electrons.particles', `${settings.electrons.particles} for one answer at most`);
+    row('seed of random numbers', 'electrons.seed', String(settings.electrons.seed));
+  }
   row('observed until', 'observe.until', quantity(observe.until, 's'));
   const levels = observe.currents.map((level) => quantity(level, 'A')).join(', ');
   row('current levels', 'observe.currents', levels === '' ? 'none' : levels);
@@ -214,7 +224,8 @@ function sideOfMinimum({ pd_Pa_m, paschen_minimum_pd_Pa_m }: Theory): string {
 /** V_s with the other sets of data of the gas, the lowest first; none where there is no choice. */
 function setRows(settings: Case, voltage: number): Row[] {
   const sets = gasUsed(settings, voltage)?.sets ?? [];
-  if (sets.length < 2) return [];
+  // sets of data are of the local field
+  if (sets.length < 2 || settings.electrons !== undefined) return [];
   const mixed = settings.gas.mixture !== undefined;
   const known = sets.flatMap((one) => (one.breakdown === null ? [] : [one.breakdown]));
   const text = ({ gas, set, used, breakdown }: SetVoltage): string =>

@@ -1,6 +1,7 @@
 import { caseJsonSchema, caseTemplate } from '../casefile/index.ts';
 import { highestOpenGapVoltage } from '../onset/highest-voltage.ts';
 import { prognosisCautions } from '../onset/prognosis.ts';
+import { kineticsOf } from '../theory/kinetic.ts';
 import { predict, prospects } from '../theory/predict.ts';
 import { printableJson } from '../units/printable.ts';
 import { VERSION } from '../version.ts';
@@ -20,6 +21,7 @@ export function check(path: string, options: CheckOptions, terminal: Terminal): 
     settings,
     loaded.defaults.map((entry) => entry.path),
   );
+  const kinetics = kineticsOf(settings, voltage);
   if (options.json) {
     const { title, sha256 } = settings;
     const spreads = { gas: gasJson(settings, voltage), ion_yield: yieldJson(settings, voltage) };
@@ -30,12 +32,13 @@ export function check(path: string, options: CheckOptions, terminal: Terminal): 
       case_sha256: sha256,
       case: loaded.resolved,
       theory,
+      ...(kinetics === null ? {} : { kinetics }),
       ...spreads,
       cautions,
     };
     terminal.out(printableJson(answer));
   } else if (!options.quiet) {
-    terminal.out(checkText({ loaded, path, voltage, theory, prospects: prospects(settings, voltage), cautions }, terminal));
+    terminal.out(checkText({ loaded, path, voltage, theory, prospects: prospects(settings, voltage), kinetics, cautions }, terminal));
   }
 }
 

@@ -5,6 +5,7 @@ import type { Prospects } from '../theory/predict.ts';
 import { printable } from '../units/printable.ts';
 import { cautionLines, lastLines } from './cautions-text.ts';
 import { yieldConsequences } from './check-spread.ts';
+import { kineticSentence } from './kinetics-text.ts';
 import { columns, lengthOf, wrap } from './layout.ts';
 import { currentDensity, field, percent, quantity } from './quantities.ts';
 import type { Terminal } from './terminal.ts';
@@ -52,6 +53,7 @@ export function runText(answer: RunAnswer, terminal: Terminal): string {
     ...wrap(printable(settings.title), width).map(style.faint),
     ...columns([['', `theory at ${quantity(voltage, 'V')}`, 'simulated']], [LABELS, THEORY], width).map(style.strong),
     ...table([...onsetRows(answer), ...endRows(answer), ...levels]),
+    ...(outcome.kinetics === undefined ? [] : wrap(kineticSentence(outcome.kinetics), width, '  ')),
     ...wrap(numericsText(outcome), width, '  ').map(style.faint),
   ];
   const cautions = cautionLines(outcome.cautions, terminal);

@@ -100,7 +100,7 @@ const WARM = 400;
 export class Flights {
   readonly table: CollisionTable;
   readonly tally: Tally;
-  readonly #random: Random;
+  readonly random: Random;
   readonly #field: ForceField;
   readonly #acceleration: Float64Array;
   readonly #bounded: boolean;
@@ -120,7 +120,7 @@ export class Flights {
     this.table = table;
     this.#thinning = thinning;
     this.tally = tallyFor(field.force.length, table.kinds.length);
-    this.#random = random;
+    this.random = random;
     this.#field = field;
     this.#acceleration = field.force.map((force) => (force * SPEED_OF_1_EV) / 2);
     this.#bounded = field.force.length > 1 || Number.isFinite(field.faces[0]) || Number.isFinite(field.faces[1]);
@@ -137,7 +137,7 @@ export class Flights {
    *  @param most  stops after the electron that brings them above this number, with those behind it not followed */
   run(electrons: Electrons, until: number, most: number = Number.POSITIVE_INFINITY): void {
     const { table, tally } = this;
-    const random = this.#random;
+    const random = this.random;
     const { faces } = this.#field;
     const { limits, lines, thresholds } = table;
     const { top: tops, bottom: bottoms, start: starts, bound: bounds, mean: means, floor } = this.#spans;
@@ -447,12 +447,12 @@ export class Flights {
     key[2] = 0;
     key[3] = 0;
     philox(key, OWN_STREAM, 0);
-    this.#random.start(key[0], key[1], key[2], key[3]);
+    this.random.start(key[0], key[1], key[2], key[3]);
   }
 
   /** Velocities after an ionisation: of the electron ejected, in its place, and of the other in `velocity`, which comes as that relative to the molecule. */
   #ionise(electrons: Electrons, born: number, threshold: number, velocity: Float64Array): void {
-    const random = this.#random;
+    const random = this.random;
     const left = Math.max(0, velocity[0] ** 2 + velocity[1] ** 2 + velocity[2] ** 2 - threshold);
     const ejected = ejectedEnergy(this.table.set.sharing, left, threshold, random.uniform());
     const other = this.#other;

@@ -1,7 +1,7 @@
 import { Random } from '../numerics/random.ts';
 import type { CollisionTable } from './collision-table.ts';
 import { Electrons } from './electrons.ts';
-import { Flights, type ForceField } from './flights.ts';
+import { clearTally, Flights, type ForceField } from './flights.ts';
 import { slowBelow } from './slow.ts';
 import { jackknife, type Measured } from './statistics.ts';
 
@@ -22,6 +22,8 @@ export interface GapElectrons {
   /** electrons emitted, all batches together */
   readonly particles: number;
   readonly seed: number;
+  /** tells these electrons from others of the same seed */
+  readonly stream?: number;
   /** electrons through each cell per electron emitted, as expected, to choose weights by; as many as cells. Absent: found by a few electrons beforehand */
   readonly expected?: Float64Array;
 }
@@ -54,7 +56,7 @@ const GAP_STREAM = 3;
 /** electrons followed in a cell for each emitted, about */
 const FOLLOWED = 2;
 /** electrons emitted to choose weights by in each round, of at least so many; what weights come down by in one */
-const SCOUTS = 32;
+const SCOUTS = 16;
 const ROUNDS = 2;
 const DESCENT = 30;
 /** volts for the number of electrons to grow e-fold, which no gas does sooner for long: weights of the first round */
@@ -74,18 +76,24 @@ const CELLS = 8;
 /** @throws Error for a field without walls */
 export function gapYieldOf(request: GapElectrons, interrupted: () => boolean = () => false): GapYield | null {
   const expected = request.expected ?? expectedFlux(request);
+  const engine = engineFor(request, weightsFor(expected));
+  const count = batchSize(request);
   const batches: Float64Array[] = [];
   for (let batch = 0; batch < GAP_BATCHES; batch++) {
     if (interrupted()) return null;
-    batches.push(gapBatchOf({ ...request, expected }, batch));
+    batches.push(follow(engine, request, count, batch * count));
   }
   return combineGap(batches);
 }
 
 /** One of the batches of {@link gapYieldOf}; what they give does not depend on who computes them. */
 export function gapBatchOf(request: GapElectrons & { readonly expected: Float64Array }, batch: number): Float64Array {
-  const count = Math.max(1, Math.round(request.particles / GAP_BATCHES));
-  return follow(request, count, batch * count, weightsFor(request.expected));
+  const count = batchSize(request);
+  return follow(engineFor(request, weightsFor(request.expected)), request, count, batch * count);
+}
+
+function batchSize({ particles }: GapElectrons): number {
+  return Math.max(1, Math.round(particles / GAP_BATCHES));
 }
 
 /** Electrons through each cell per electron emitted, roughly: by a few electrons whose weights are at first far too large, so that few are followed, and
@@ -98,7 +106,7 @@ export function expectedFlux(request: GapElectrons): Float64Array {
     return Math.exp(volts / QUICKEST);
   });
   for (let round = 0; ; round++) {
-    const flux = fluxOf(follow(request, SCOUTS, 2 ** 31 + round * SCOUTS, weight), force.length);
+    const flux = fluxOf(follow(engineFor(request, weight), request, SCOUTS, 2 ** 31 + round * SCOUTS), force.length);
     const wanted = weightsFor(flux);
     const next = wanted.map((w, cell) => Math.max(w, weight[cell] / DESCENT));
     if (round >= ROUNDS && next.every((w, cell) => w === wanted[cell])) return flux;
@@ -111,21 +119,31 @@ function weightsFor(flux: Float64Array): Float64Array {
   return flux.map((electrons) => Math.max(1, electrons / FOLLOWED));
 }
 
+/** @param weight  of electrons in each cell, see `Thinning` */
+function engineFor({ table, field }: GapElectrons, weight: Float64Array): Flights {
+  const { faces, force } = field;
+  if (!Number.isFinite(faces[0]) || !Number.isFinite(faces[force.length])) throw new Error('a gap has two walls');
+  return new Flights(table, field, new Random(0), { slowBelow: slowBelow(table, field), weight });
+}
+
 /** Follows electrons from the cathode, one after the other with their offspring.
  *  @param first  number of the first, which tells their random numbers */
-function follow({ table, field, emissionEnergy, seed }: GapElectrons, count: number, first: number, weight: Float64Array): Float64Array {
+function follow(
+  engine: Flights,
+  { table, field, emissionEnergy, seed, stream = 0 }: GapElectrons,
+  count: number,
+  first: number,
+): Float64Array {
   const { faces, force } = field;
   const cells = force.length;
-  const [low, high] = [faces[0], faces[cells]];
-  if (!Number.isFinite(low) || !Number.isFinite(high)) throw new Error('a gap has two walls');
+  const low = faces[0];
   const processes = table.kinds.length;
-  const random = new Random(seed, [GAP_STREAM, first >>> 0]);
-  const engine = new Flights(table, field, random, { slowBelow: slowBelow(table, field), weight });
-  const { tally } = engine;
+  const { tally, random } = engine;
+  clearTally(tally);
   const electrons = new Electrons(256);
   const speed = Math.sqrt(emissionEnergy);
   for (let k = 0; k < count; k++) {
-    random.restart(seed, [GAP_STREAM, first + k]);
+    random.restart(seed, [GAP_STREAM, stream, first + k]);
     electrons.count = 0;
     const i = electrons.add(1);
     // the square of the cosine is uniform; one electron in each of `count` equal parts

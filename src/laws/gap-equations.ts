@@ -6,6 +6,7 @@ import { yieldAt, yieldSlopeAt } from '../surfaces/yield-law.ts';
 import { ELEMENTARY_CHARGE } from '../units/constants.ts';
 import { fluxAtFaces, linearFluxAtFaces, makeStencils, type Stencils } from './drift-diffusion.ts';
 import { emissionShare, emissionShareSlope } from './emission.ts';
+import type { FastElectrons } from './fast-electrons.ts';
 import { alongDrift, cellFactor } from './production.ts';
 
 /** One kind of charge carrier. Order everywhere: electrons, positive ions, negative ions. */
@@ -56,9 +57,26 @@ export interface FaceValues {
   /** share of the wall's ion flux that leaves as electrons, −∂Γ_e/∂Γ_i, at the left and right wall */
   emissionLeft: number;
   emissionRight: number;
+  /** the same as far as it leaves as part of the fluid: 0 at the wall whose electrons are followed as particles */
+  fluidEmissionLeft: number;
+  fluidEmissionRight: number;
   /** seed electrons leaving the left and right wall [1/(m² s)] */
   seedLeft: number;
   seedRight: number;
+  /** electrons emitted as particles, P [1/(m² s)], and φ of `FastElectrons` */
+  emitted: number;
+  growth: number;
+}
+
+/** Derivatives of the emission of particles at the state last linearised. */
+interface EmissionSlopes {
+  /** ∂P/∂Γ₊ at the cathode */
+  byIonFlux: number;
+  /** ∂P/∂E at the cathode, at constant densities */
+  byField: number;
+  /** ∂φ/∂V and ∂φ/∂E at the cathode */
+  growthByVoltage: number;
+  growthByField: number;
 }
 
 /** The continuity equations of all species in one gap, discretised in space, and their exact derivatives.
@@ -82,10 +100,14 @@ export class GapEquations {
   /** ∂Γ/∂n of cells f−2 … f+1 at [4f …], and ∂Γ/∂E, at the state last linearised */
   readonly byDensity: readonly Float64Array[];
   readonly byField: readonly Float64Array[];
+  /** electrons followed as particles; null: they follow the local field */
+  readonly fast: FastElectrons | null;
+  readonly emissionSlopes: EmissionSlopes = { byIonFlux: 0, byField: 0, growthByVoltage: 0, growthByField: 0 };
   /** does the field last linearised point one way everywhere (+1, −1), or not (0)? */
   direction = 0;
 
-  constructor(grid: Grid, layout: Layout, laws: GapLaws) {
+  constructor(grid: Grid, layout: Layout, laws: GapLaws, fast: FastElectrons | null = null) {
+    this.fast = fast;
     this.grid = grid;
     this.layout = layout;
     this.laws = laws;
@@ -181,7 +203,7 @@ export class GapEquations {
     this.#reduce(y, x);
     const faces = this.layout.cells + 1;
     const N = this.laws.density;
-    this.laws.ionisation.fill(x, faces, N, v.alpha);
+    if (!this.fast) this.laws.ionisation.fill(x, faces, N, v.alpha);
     if (this.laws.attachment) {
       this.laws.attachment.fill(x, faces, N, v.eta);
     }
@@ -204,8 +226,10 @@ export class GapEquations {
     let forward = 0;
     for (let f = 0; f < faces; f++) if (y[field + f] > 0) forward++;
     this.direction = forward === 0 ? -1 : forward === faces ? 1 : 0;
-    this.laws.ionisation.fillWithSlope(x, faces, N, v.alpha, this.alphaSlope);
-    signed(this.alphaSlope, y, field, faces, 1);
+    if (!this.fast) {
+      this.laws.ionisation.fillWithSlope(x, faces, N, v.alpha, this.alphaSlope);
+      signed(this.alphaSlope, y, field, faces, 1);
+    }
     if (this.laws.attachment) {
       this.laws.attachment.fillWithSlope(x, faces, N, v.eta, this.etaSlope);
       signed(this.etaSlope, y, field, faces, 1);
@@ -232,11 +256,28 @@ export class GapEquations {
     const leftShare = emissionShare(-y[field] / density);
     v.emissionLeft = yieldAt(leftYield, v.reducedField[0]) * leftShare;
     v.seedLeft = seedFlux * leftShare;
-    v.flux[0][0] += v.seedLeft - v.emissionLeft * v.flux[1][0];
+    const left = v.seedLeft - v.emissionLeft * v.flux[1][0];
     const rightShare = emissionShare(y[field + cells] / density);
     v.emissionRight = yieldAt(rightYield, v.reducedField[cells]) * rightShare;
     v.seedRight = seedFlux * rightShare;
-    v.flux[0][cells] -= v.seedRight + v.emissionRight * v.flux[1][cells];
+    const right = v.seedRight + v.emissionRight * v.flux[1][cells];
+    const { fast } = this;
+    v.fluidEmissionLeft = fast?.cathodeIsLeft === true ? 0 : v.emissionLeft;
+    v.fluidEmissionRight = fast?.cathodeIsLeft === false ? 0 : v.emissionRight;
+    if (fast === null || !fast.cathodeIsLeft) v.flux[0][0] += left;
+    if (fast === null || fast.cathodeIsLeft) v.flux[0][cells] -= right;
+    if (fast !== null) this.#emitParticles(y, fast, fast.cathodeIsLeft ? left : right, v);
+  }
+
+  /** Adds the flux of fast electrons to that of the fluid: from here on the electrons' flux is that of both. */
+  #emitParticles(y: Float64Array, fast: FastElectrons, emitted: number, v: FaceValues): void {
+    const { field, cells, voltage } = this.layout;
+    const growth = fast.growth(Math.abs(y[voltage]), Math.abs(y[fast.cathodeIsLeft ? field : field + cells]));
+    v.emitted = emitted;
+    v.growth = growth;
+    const { steady, growing } = fast;
+    const electrons = v.flux[0];
+    for (let f = 0; f <= cells; f++) electrons[f] += emitted * (steady[f] + growth * growing[f]);
   }
 
   #emitWithSlopes(y: Float64Array, v: FaceValues): void {
@@ -249,14 +290,24 @@ export class GapEquations {
     const xLeft = v.reducedField[0];
     const left = -emissionShareSlope(toLeft) / density;
     const yieldLeft = (-yieldSlopeAt(leftYield, xLeft) * emissionShare(toLeft)) / density;
-    this.byField[0][0] +=
-      (seedFlux - yieldAt(leftYield, xLeft) * ions[0]) * left - yieldLeft * ions[0] - v.emissionLeft * this.byField[1][0];
+    const leftByField = (seedFlux - yieldAt(leftYield, xLeft) * ions[0]) * left - yieldLeft * ions[0] - v.emissionLeft * this.byField[1][0];
     const toRight = y[field + cells] / density;
     const xRight = v.reducedField[cells];
     const right = emissionShareSlope(toRight) / density;
     const yieldRight = (yieldSlopeAt(rightYield, xRight) * emissionShare(toRight)) / density;
-    this.byField[0][cells] -=
+    const rightByField =
       (seedFlux + yieldAt(rightYield, xRight) * ions[cells]) * right + yieldRight * ions[cells] + v.emissionRight * this.byField[1][cells];
+    const { fast } = this;
+    if (fast === null || !fast.cathodeIsLeft) this.byField[0][0] += leftByField;
+    if (fast === null || fast.cathodeIsLeft) this.byField[0][cells] -= rightByField;
+    if (fast === null) return;
+    const slopes = this.emissionSlopes;
+    const V = y[this.layout.voltage];
+    const E = y[fast.cathodeIsLeft ? field : field + cells];
+    slopes.byIonFlux = fast.cathodeIsLeft ? -v.emissionLeft : v.emissionRight;
+    slopes.byField = fast.cathodeIsLeft ? leftByField : rightByField;
+    slopes.growthByVoltage = Math.sign(V) * fast.growthByVoltage(Math.abs(V), Math.abs(E));
+    slopes.growthByField = Math.sign(E) * fast.growthByField(Math.abs(V), Math.abs(E));
   }
 
   #sources(y: Float64Array, v: FaceValues, out: Float64Array): void {
@@ -265,6 +316,14 @@ export class GapEquations {
       ionisedRates(this.grid.widths, v.alpha, y, field, v.flux[0], v.flux[1], out, first, row + first);
     } else {
       attachedRates(this.grid.widths, v.alpha, v.eta, y, field, this.laws.density, v.flux, out, first, row);
+    }
+    if (this.fast !== null) {
+      const made = v.emitted * v.growth;
+      for (let i = 0; i < this.grid.cells; i++) {
+        const ions = made * this.fast.made[i];
+        out[first + i] += ions;
+        out[row + first + i] += ions;
+      }
     }
     const ei = this.laws.electronIonRecombination;
     if (ei > 0) recombine(ei, y, first, row + first, this.grid.cells, out);
@@ -290,6 +349,10 @@ function faceValues(faces: number, laws: GapLaws): FaceValues {
     flux: laws.species.map(array),
     emissionLeft: 0,
     emissionRight: 0,
+    fluidEmissionLeft: 0,
+    fluidEmissionRight: 0,
+    emitted: 0,
+    growth: 1,
     seedLeft: 0,
     seedRight: 0,
   };

@@ -1,5 +1,6 @@
 import type { Grid } from '../gap/grid.ts';
 import type { Layout } from '../gap/layout.ts';
+import type { FastElectrons } from '../laws/fast-electrons.ts';
 
 /** Share of the gap over which electrons released at t = 0 are spread, and the fewest cells. */
 const SPREAD = 0.02;
@@ -50,4 +51,16 @@ export function initialState(grid: Grid, layout: Layout, released: Released, vol
 
 function packet(s: number): number {
   return Math.cos(0.5 * Math.PI * s) ** 2;
+}
+
+/** Adds electrons released at the cathode that are followed as particles: at once they have crossed the gap, and left the ions they made and what has become
+ *  slow of them and theirs. */
+export function releaseParticles(grid: Grid, layout: Layout, fast: FastElectrons, electrons: number, y: Float64Array): void {
+  const { cells, first, row } = layout;
+  const perArea = electrons / grid.area;
+  for (let i = 0; i < cells; i++) {
+    const carried = (fast.steady[i + 1] + fast.growing[i + 1] - fast.steady[i] - fast.growing[i]) / grid.widths[i];
+    y[row + first + i] += perArea * fast.made[i];
+    y[first + i] += perArea * (fast.made[i] - carried);
+  }
 }

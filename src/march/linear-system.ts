@@ -1,5 +1,6 @@
 import type { Gauss } from '../gap/gauss.ts';
 import type { Layout } from '../gap/layout.ts';
+import type { FastElectrons } from '../laws/fast-electrons.ts';
 import type { GapEquations } from '../laws/gap-equations.ts';
 import { alongDrift, alongDriftSlope, cellFactor, cellFactorSlope } from '../laws/production.ts';
 import { BandMatrix } from '../numerics/band.ts';
@@ -36,6 +37,11 @@ export class LinearSystem {
   #integralOfCharge: number | null = null;
   /** answer of all unknowns to δj = 1 */
   readonly column: Float64Array;
+  /** answers to δP = 1 and δφ = 1 of electrons followed as particles, and what these do to the electrons' flux at the faces */
+  readonly emittedColumn: Float64Array;
+  readonly growthColumn: Float64Array;
+  readonly #emittedFlux: Float64Array;
+  readonly #growthFlux: Float64Array;
 
   constructor(equations: GapEquations, gauss: Gauss) {
     this.#equations = equations;
@@ -54,6 +60,11 @@ export class LinearSystem {
     this.#fieldInRow = equations.charges.map(() => new Float64Array(2 * cells));
     this.#b = new Float64Array(rows);
     this.column = new Float64Array(size);
+    const some = equations.fast !== null;
+    this.emittedColumn = new Float64Array(some ? size : 0);
+    this.growthColumn = new Float64Array(some ? size : 0);
+    this.#emittedFlux = new Float64Array(some ? cells + 1 : 0);
+    this.#growthFlux = new Float64Array(some ? cells + 1 : 0);
     this.#moments = momentsOf(equations.grid.widths, equations.grid.faceWeights);
   }
 
@@ -68,6 +79,7 @@ export class LinearSystem {
     const bad = this.#matrix.factor();
     if (bad >= 0) return Math.floor(bad / this.#equations.charges.length);
     this.#solveColumn();
+    if (this.#equations.fast !== null) this.#solveFastColumns(this.#equations.fast);
     return -1;
   }
 
@@ -146,8 +158,8 @@ export class LinearSystem {
           const reach = G[k] * this.#response[f];
           this.#fieldInRow[k][2 * i + side] = reach;
           for (let m = 0; m < species; m++) B[k * species + m] -= reach * c * eq.charges[m];
-          if (f === 0) B[k * species + 1] -= B[k * species] * eq.at.emissionLeft;
-          if (f === cells) B[k * species + 1] -= B[k * species] * eq.at.emissionRight;
+          if (f === 0) B[k * species + 1] -= B[k * species] * eq.at.fluidEmissionLeft;
+          if (f === cells) B[k * species + 1] -= B[k * species] * eq.at.fluidEmissionRight;
         }
         for (let k = 0; k < species; k++) {
           const rowIndex = species * i + this.#slots[k];
@@ -238,10 +250,11 @@ export class LinearSystem {
     return U[layout.leftField] * this.#equations.grid.spacing + this.#integralOfCharge;
   }
 
-  /** δE at the left wall for densities U, field right-hand side rE there and δj [A/m²]. */
-  fieldAtLeftWall(U: Float64Array, rE: number, deltaJ: number): number {
+  /** δE at the left wall for densities U, field right-hand side rE there and δj [A/m²].
+   *  @param fast  change of the flux of fast electrons there [1/(m² s)] */
+  fieldAtLeftWall(U: Float64Array, rE: number, deltaJ: number, fast = 0): number {
     const { byDensity, charges, layout } = this.#equations;
-    const { emissionLeft } = this.#equations.at;
+    const { fluidEmissionLeft } = this.#equations.at;
     let net = 0;
     let ions = 0;
     for (let k = charges.length - 1; k >= 0; k--) {
@@ -249,49 +262,113 @@ export class LinearSystem {
       const n = k * layout.row + layout.first;
       let d = p[2] * U[n] + p[3] * U[n + 1];
       if (k === 1) ions = d;
-      if (k === 0) d -= emissionLeft * ions;
+      if (k === 0) d -= fluidEmissionLeft * ions;
       net += charges[k] * d;
     }
-    return this.#response[0] * (rE + (deltaJ - ELEMENTARY_CHARGE * net) / VACUUM_PERMITTIVITY);
+    return this.#response[0] * (rE + (deltaJ - ELEMENTARY_CHARGE * (net - fast)) / VACUUM_PERMITTIVITY);
   }
 
-  /** Linear change of e Σ q Γ [A/m²] at the right wall for densities U of the last solve and δj [A/m²].
-   *  The change of the field is the one eliminated from the rows of the last cell, so that walls and cells balance to rounding. */
-  netCurrentAtRightWall(U: Float64Array, deltaJ: number): number {
-    const { byDensity, byField, charges, layout } = this.#equations;
-    const { emissionRight } = this.#equations.at;
+  /** The same at the right wall.
+   *  @param rate  right-hand side of the field there; null: that of the last solve */
+  fieldAtRightWall(U: Float64Array, rate: number | null, deltaJ: number, fast = 0): number {
+    const { cells } = this.#equations.layout;
+    const net = this.#netFluxAtRightWall(U) - fast;
+    return this.#response[cells] * ((rate ?? this.#rightRate) + (deltaJ - ELEMENTARY_CHARGE * net) / VACUUM_PERMITTIVITY);
+  }
+
+  /** Linear change of Σ q Γ of the fluid at the right wall at constant field. */
+  #netFluxAtRightWall(U: Float64Array): number {
+    const { byDensity, charges, layout } = this.#equations;
+    const { fluidEmissionRight } = this.#equations.at;
     const f = layout.cells;
     let net = 0;
-    let sigma = 0;
     let ions = 0;
     for (let k = charges.length - 1; k >= 0; k--) {
       const p = byDensity[k];
       const n = k * layout.row + layout.first + f;
       let d = p[4 * f] * U[n - 2] + p[4 * f + 1] * U[n - 1];
       if (k === 1) ions = d;
-      if (k === 0) d -= emissionRight * ions;
+      if (k === 0) d -= fluidEmissionRight * ions;
       net += charges[k] * d;
-      sigma += charges[k] * byField[k][f];
     }
+    return net;
+  }
+
+  /** Change of P for densities U, at constant field. */
+  emittedBy(U: Float64Array): number {
+    const { byDensity, layout, fast, emissionSlopes } = this.#equations;
+    const left = fast?.cathodeIsLeft === true;
+    const f = left ? 0 : layout.cells;
+    const n = layout.row + layout.first + f;
+    const p = byDensity[1];
+    const ions = left ? p[2] * U[n] + p[3] * U[n + 1] : p[4 * f] * U[n - 2] + p[4 * f + 1] * U[n - 1];
+    return emissionSlopes.byIonFlux * ions;
+  }
+
+  /** Change of the flux of fast electrons at a wall for changes of P and φ. */
+  fastFlux(face: number, deltaP: number, deltaGrowth: number): number {
+    return this.#emittedFlux[face] * deltaP + this.#growthFlux[face] * deltaGrowth;
+  }
+
+  /** Linear change of e Σ q Γ [A/m²] at the right wall for densities U of the last solve and δj [A/m²].
+   *  The change of the field is the one eliminated from the rows of the last cell, so that walls and cells balance to rounding.
+   *  @param fast  change of the flux of fast electrons there [1/(m² s)] */
+  netCurrentAtRightWall(U: Float64Array, deltaJ: number, fast = 0): number {
+    const { byField, charges, layout } = this.#equations;
+    const f = layout.cells;
+    let sigma = 0;
+    for (let k = 0; k < charges.length; k++) sigma += charges[k] * byField[k][f];
+    const net = this.#netFluxAtRightWall(U) - fast;
     const field = this.#response[f] * (this.#rightRate + (deltaJ - ELEMENTARY_CHARGE * net) / VACUUM_PERMITTIVITY);
     return ELEMENTARY_CHARGE * (net + sigma * field);
   }
 
   /** The same at the left wall. */
-  netCurrentAtLeftWall(U: Float64Array): number {
+  netCurrentAtLeftWall(U: Float64Array, fast = 0): number {
     const { byDensity, byField, charges, layout } = this.#equations;
-    const { emissionLeft } = this.#equations.at;
-    let net = 0;
+    const { fluidEmissionLeft } = this.#equations.at;
+    let net = -fast;
     let ions = 0;
     for (let k = charges.length - 1; k >= 0; k--) {
       const p = byDensity[k];
       const n = k * layout.row + layout.first;
       let d = p[2] * U[n] + p[3] * U[n + 1];
       if (k === 1) ions = d;
-      if (k === 0) d -= emissionLeft * ions;
+      if (k === 0) d -= fluidEmissionLeft * ions;
       net += charges[k] * (d + byField[k][0] * U[layout.leftField]);
     }
     return ELEMENTARY_CHARGE * net;
+  }
+
+  /** Answers to a unit of P and of φ: each changes the electrons' flux at all faces and the ions made in all cells. */
+  #solveFastColumns(fast: FastElectrons): void {
+    const { cells } = this.#equations.layout;
+    const { emitted, growth } = this.#equations.at;
+    for (let f = 0; f <= cells; f++) {
+      this.#emittedFlux[f] = fast.steady[f] + growth * fast.growing[f];
+      this.#growthFlux[f] = emitted * fast.growing[f];
+    }
+    this.#solveFastColumn(this.#emittedFlux, fast.made, growth, this.emittedColumn);
+    this.#solveFastColumn(this.#growthFlux, fast.made, emitted, this.growthColumn);
+  }
+
+  #solveFastColumn(flux: Float64Array, made: Float64Array, factor: number, column: Float64Array): void {
+    const { layout, charges, grid } = this.#equations;
+    const species = charges.length;
+    const b = this.#b;
+    const c = ELEMENTARY_CHARGE / VACUUM_PERMITTIVITY;
+    for (let k = 0; k < species; k++) {
+      const reach = this.#fieldInRow[k];
+      const slot = this.#slots[k];
+      for (let i = 0; i < layout.cells; i++) {
+        const ions = k < 2 ? factor * made[i] : 0;
+        const carried = k === 0 ? (flux[i + 1] - flux[i]) / grid.widths[i] : 0;
+        b[species * i + slot] = ions - carried - c * (reach[2 * i] * flux[i] + reach[2 * i + 1] * flux[i + 1]);
+      }
+    }
+    this.#matrix.solve(b);
+    for (let k = 0; k < species; k++) scatter(b, species, this.#slots[k], column, k * layout.row + layout.first, layout.cells);
+    column[layout.leftField] = this.fieldAtLeftWall(column, 0, 0, flux[0]);
   }
 
   #solveColumn(): void {
@@ -441,7 +518,7 @@ function assembleTwo(eq: GapEquations, a: number, response: Float64Array, fieldI
   const c = ELEMENTARY_CHARGE / VACUUM_PERMITTIVITY;
   const { entries } = matrix;
   const { alphaSlope } = eq;
-  const { alpha, emissionLeft, emissionRight } = eq.at;
+  const { alpha, fluidEmissionLeft, fluidEmissionRight } = eq.at;
   const electronFlux = eq.at.flux[0];
   const pe = eq.byDensity[0];
   const pi = eq.byDensity[1];
@@ -477,8 +554,8 @@ function assembleTwo(eq: GapEquations, a: number, response: Float64Array, fieldI
     let beiL = -geL * c;
     let biiL = -s - giL * c;
     if (i === 0) {
-      beiL -= beeL * emissionLeft;
-      biiL -= bieL * emissionLeft;
+      beiL -= beeL * fluidEmissionLeft;
+      biiL -= bieL * fluidEmissionLeft;
     }
 
     const madeR = along * half * mean;
@@ -490,8 +567,8 @@ function assembleTwo(eq: GapEquations, a: number, response: Float64Array, fieldI
     let beiR = -geR * c;
     let biiR = s - giR * c;
     if (f === cells) {
-      beiR -= beeR * emissionRight;
-      biiR -= bieR * emissionRight;
+      beiR -= beeR * fluidEmissionRight;
+      biiR -= bieR * fluidEmissionRight;
     }
     reachE[2 * i] = geL;
     reachE[2 * i + 1] = geR;

@@ -3,6 +3,7 @@ import type { Trip } from '../supply/trip.ts';
 import { type ErrorScale, errorNorm } from './error-norm.ts';
 import type { GapSystem } from './gap-system.ts';
 import { locate } from './locate.ts';
+import type { Particles } from './particles.ts';
 import type { Scheme } from './scheme.ts';
 import { Stepper } from './stepper.ts';
 
@@ -54,6 +55,8 @@ export interface MarchSettings {
   /** time in which electrons cross the gap at the highest voltage [s]: sets the first step and, far below it, the smallest one */
   readonly electronTransit: number;
   readonly ionTransit: number;
+  /** looks at electrons as particles; null where they follow the local field */
+  readonly particles: Particles | null;
 }
 
 /** Why a run could not go on. */
@@ -123,6 +126,7 @@ export class March {
     this.#h = 0.02 * settings.electronTransit;
     this.#stepper.start.set(initial);
     system.settle(this.#stepper.start);
+    settings.particles?.look(0, this.#stepper.start);
     this.#stepper.begin(0);
     this.#now = this.#read(0);
   }
@@ -163,6 +167,10 @@ export class March {
   /** One accepted step. @throws MarchFailure when no step, however small, is acceptable */
   advance(): void {
     const from = this.time;
+    if (this.#settings.particles?.look(from, this.#stepper.start)) {
+      this.#stepper.begin(from);
+      this.#now = this.#read(from);
+    }
     const target = this.#target(from);
     let h = this.#fit(this.#h, target - from);
     for (;;) {
@@ -221,7 +229,10 @@ export class March {
     const { system } = this;
     const stepper = this.#stepper;
     if (stepper.attempt(t, h) >= 0) return Infinity;
-    return errorNorm(system.grid, system.layout, this.#settings.errorScale, stepper.end, stepper.error);
+    const error = errorNorm(system.grid, system.layout, this.#settings.errorScale, stepper.end, stepper.error);
+    const { particles } = this.#settings;
+    // the controller takes errors for proportional to the fourth power of the step; the change of the field is to its first
+    return particles === null ? error : Math.max(error, particles.overreach(stepper.end) ** 4);
   }
 
   /** The first time inside the step just attempted at which the feed must change or the trip would act; null if none. */

@@ -1,6 +1,7 @@
 import type { Observer, Step } from '../march/march.ts';
 import { cathodeLayer } from '../observables/cathode-layer.ts';
 import { cathodeField } from '../observables/walls.ts';
+import { kineticsOf } from '../theory/kinetic.ts';
 import { type Prospects, predict, prospects, type Theory } from '../theory/predict.ts';
 import { VERSION } from '../version.ts';
 import { ArcWatch } from './arc-watch.ts';
@@ -121,6 +122,7 @@ export class Analysis {
     const voltage = this.#openGap.largest;
     const theory = predict(settings, voltage);
     const outlook = prospects(settings, voltage);
+    const kinetics = kineticsOf(settings, voltage);
     const onset: Onset = { ...this.#lag.onset(), growth_rate_per_s: this.#growth.rate() };
     const final = this.#final(stop);
     const findings = this.#findings(onset, final, theory, outlook);
@@ -133,6 +135,7 @@ export class Analysis {
       case_sha256: settings.sha256,
       verdict,
       theory,
+      ...(kinetics === null ? {} : { kinetics }),
       onset,
       oscillation: findings.oscillation,
       peak: { current_A: peak.current, time_s: peak.time, gap_voltage_V: peak.voltage },

@@ -1,3 +1,4 @@
+import type { Kinetics } from '../theory/kinetic.ts';
 import type { Theory } from '../theory/predict.ts';
 
 /** What a run found, as `run --json` prints it: SI, the unit in the key, null where a value does not apply. */
@@ -8,6 +9,8 @@ export interface Outcome {
   readonly case_sha256: string;
   readonly verdict: Verdict;
   readonly theory: Theory;
+  /** only where electrons are followed as particles */
+  readonly kinetics?: Kinetics;
   readonly onset: Onset;
   readonly oscillation: { readonly period_s: number; readonly amplitude_V: number } | null;
   readonly peak: { readonly current_A: number; readonly time_s: number; readonly gap_voltage_V: number };

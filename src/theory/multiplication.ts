@@ -1,3 +1,6 @@
+import type { Case } from '../case.ts';
+import { curveOf } from '../gases/curves.ts';
+import { yieldAt } from '../surfaces/yield-law.ts';
 import { TOWNSEND } from '../units/constants.ts';
 import { feedback } from './feedback.ts';
 
@@ -9,6 +12,19 @@ export interface Multiplication {
   readonly attachment: (x: number) => number;
   /** γ, electrons per ion that lands on the cathode */
   readonly ionYield: (x: number) => number;
+}
+
+/** What multiplies charge in this case, in front of the wall that is the cathode at this polarity (positive: the left one). */
+export function multiplicationOf(settings: Case, polarity: number): Multiplication {
+  const { ionisation, attachment } = settings.gas.coefficients;
+  const alpha = curveOf(ionisation.form);
+  const eta = attachment === null ? null : curveOf(attachment.form);
+  const cathode = polarity < 0 ? settings.electrodes.right : settings.electrodes.left;
+  return {
+    ionisation: (x) => alpha.valueAt(x),
+    attachment: (x) => (eta === null ? 0 : eta.valueAt(x)),
+    ionYield: (x) => yieldAt(cathode.ionYield, x),
+  };
 }
 
 /** The reduced fields [V m²] that the searches for thresholds look through: 1e-4 … 1e4 Td in steps of 2.3 %. Beyond 1e4 Td no

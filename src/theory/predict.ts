@@ -2,14 +2,15 @@ import type { Case } from '../case.ts';
 import type { PlanarGap } from '../gap/geometry.ts';
 import { curveOf } from '../gases/curves.ts';
 import type { Gas } from '../gases/gas.ts';
-import { sameYield, yieldAt } from '../surfaces/yield-law.ts';
+import { sameYield } from '../surfaces/yield-law.ts';
 import { BOLTZMANN, ELEMENTARY_CHARGE, TOWNSEND } from '../units/constants.ts';
 import { type Threshold, threshold } from './breakdown-voltage.ts';
 import { layerCurrentDensity, normalCathodeLayer } from './cathode-fall.ts';
 import { breakdownProbability, meanStatisticalLag } from './chance.ts';
 import { growthRate, ionDelay } from './growth-rate.ts';
+import { kineticGapOf } from './kinetic.ts';
 import { lowCurrentSlope } from './low-current-slope.ts';
-import { type Multiplication, uniformFeedback } from './multiplication.ts';
+import { type Multiplication, multiplicationOf, uniformFeedback } from './multiplication.ts';
 import { lowestOverPaths, type PaschenPoint, type PathThreshold, paschenMinimum } from './paschen.ts';
 import { emissionThatDistorts, riseTime } from './rise-time.ts';
 import { steadyAmplification } from './steady-current.ts';
@@ -71,23 +72,11 @@ export interface Prospects {
   } | null;
 }
 
-/** What multiplies charge in this case, in front of the wall that is the cathode at this polarity (positive: the left one). */
-export function multiplicationOf(settings: Case, polarity: number): Multiplication {
-  const { ionisation, attachment } = settings.gas.coefficients;
-  const alpha = curveOf(ionisation.form);
-  const eta = attachment === null ? null : curveOf(attachment.form);
-  const cathode = polarity < 0 ? settings.electrodes.right : settings.electrodes.left;
-  return {
-    ionisation: (x) => alpha.valueAt(x),
-    attachment: (x) => (eta === null ? 0 : eta.valueAt(x)),
-    ionYield: (x) => yieldAt(cathode.ionYield, x),
-  };
-}
-
 /** The feedback q of the space-charge-free gap as a function of its voltage [V], for either polarity. */
 export function feedbackOf(settings: Case): (voltage: number) => number {
   const { density } = settings.gas;
   const { spacing } = settings.gap;
+  if (settings.electrons !== undefined) return (voltage) => kineticGapOf(settings, voltage)?.feedback(voltage).value ?? 0;
   const column = density * spacing;
   const [positive, negative] = [multiplicationOf(settings, 1), multiplicationOf(settings, -1)];
   return (voltage) => uniformFeedback(voltage < 0 ? negative : positive, Math.abs(voltage) / column, column);
@@ -107,19 +96,20 @@ const known = new WeakMap<Gas, Known[]>();
 interface Known {
   readonly gap: PlanarGap;
   readonly electrodes: Case['electrodes'];
+  readonly electrons: Case['electrons'];
   positive?: Limits;
   negative?: Limits;
 }
 
-function knownLimits({ gas, gap, electrodes }: Case): Known {
+function knownLimits({ gas, gap, electrodes, electrons }: Case): Known {
   let list = known.get(gas);
   if (list === undefined) {
     list = [];
     known.set(gas, list);
   }
-  let found = list.find((k) => k.gap === gap && k.electrodes === electrodes);
+  let found = list.find((k) => k.gap === gap && k.electrodes === electrodes && k.electrons === electrons);
   if (found === undefined) {
-    found = { gap, electrodes };
+    found = { gap, electrodes, electrons };
     list.push(found);
     if (list.length > MOST_KNOWN) list.shift();
   }
@@ -138,15 +128,32 @@ export function limitsOf(settings: Case, polarity: number): Limits {
   if (before !== undefined) return before;
   const { gap, gas } = settings;
   const multiplication = multiplicationOf(settings, negative ? -1 : 1);
-  const limits: Limits = {
+  const local: Limits = {
     multiplication,
     threshold: threshold(multiplication, gas.density, gap.spacing),
     minimum: paschenMinimum(multiplication),
     lowest: lowestOverPaths(multiplication, gas.density, gap.spacing, gap.longestPath),
   };
+  const limits = withParticles(local, settings, negative ? -1 : 1);
   if (negative) found.negative = limits;
   else found.positive = limits;
   return limits;
+}
+
+/** The thresholds by particles where a case asks for them. Which of the longer paths breaks down first is taken from the local field; the Paschen minimum is
+ *  the local field's. */
+function withParticles(local: Limits, settings: Case, polarity: number): Limits {
+  const here = kineticGapOf(settings, polarity);
+  if (here === null) return local;
+  const { spacing } = settings.gap;
+  const paths: PathThreshold[] = here.threshold.breakdown === null ? [] : [{ voltage: here.threshold.breakdown, path: spacing }];
+  if (local.lowest !== null && local.lowest.path > spacing) {
+    const { path } = local.lowest;
+    const there = kineticGapOf(settings, polarity, path)?.threshold.breakdown ?? null;
+    if (there !== null) paths.push({ voltage: there, path });
+  }
+  const lowest = paths.reduce<PathThreshold | null>((best, next) => (best === null || next.voltage < best.voltage ? next : best), null);
+  return { ...local, threshold: here.threshold, lowest };
 }
 
 /** The `theory` block of the outcome.
@@ -167,7 +174,7 @@ export function predict(settings: Case, voltage: number): Theory {
     alpha_d: here.alpha * gap.spacing,
     feedback: here.feedback,
     growth_rate_per_s: here.growthRate,
-    steady_amplification: steadyAmplification(here.alpha, here.eta, gap.spacing, here.ionYield),
+    steady_amplification: here.amplification,
   };
 }
 
@@ -206,6 +213,7 @@ interface LocalState {
   readonly ionSpeed: number;
   readonly feedback: number;
   readonly growthRate: number | null;
+  readonly amplification: number | null;
 }
 
 function localState(settings: Case, voltage: number): LocalState {
@@ -218,6 +226,8 @@ function localState(settings: Case, voltage: number): LocalState {
   const ionYield = multiplication.ionYield(reducedField);
   const electronSpeed = driftSpeed(curveOf(gas.coefficients.electronMobility.form).valueAt(reducedField), reducedField);
   const ionSpeed = driftSpeed(curveOf(gas.coefficients.ionMobility.form).valueAt(reducedField), reducedField);
+  const delay = ionDelay(electronSpeed, ionSpeed);
+  const particles = kineticGapOf(settings, voltage);
   return {
     multiplication,
     reducedField,
@@ -226,8 +236,10 @@ function localState(settings: Case, voltage: number): LocalState {
     ionYield,
     electronSpeed,
     ionSpeed,
-    feedback: uniformFeedback(multiplication, reducedField, column),
-    growthRate: growthRate(alpha, eta, gap.spacing, [{ yield: ionYield, delay: ionDelay(electronSpeed, ionSpeed) }]),
+    feedback: particles?.feedback(voltage).value ?? uniformFeedback(multiplication, reducedField, column),
+    growthRate:
+      particles === null ? growthRate(alpha, eta, gap.spacing, [{ yield: ionYield, delay }]) : particles.growthRate(voltage, delay),
+    amplification: particles === null ? steadyAmplification(alpha, eta, gap.spacing, ionYield) : particles.amplification(voltage),
   };
 }
 

@@ -166,14 +166,14 @@ const ROWS: Row[] = [
   ['a coaxial gap', 'planar', 'coaxial', '3:13', 'gap.geometry', 'not-supported-yet', 'not supported yet', 'coaxial', null],
   ['a spherical gap', 'planar', 'spherical', '3:13', 'gap.geometry', 'not-supported-yet', 'not supported yet', 'spherical', null],
   [
-    'the kinetic closure',
+    'particles beside the local field',
     'title: Test',
-    'electrons: { closure: kinetic }',
-    '1:23',
-    'electrons.closure',
-    'not-supported-yet',
-    'not supported yet',
-    'kinetic',
+    'electrons: { particles: 20000 }',
+    '1:25',
+    'electrons.particles',
+    'inconsistent',
+    'particles only beside closure: kinetic',
+    'closure: local-field',
     null,
   ],
   [
@@ -595,5 +595,27 @@ describe('limits', () => {
     expect(problem('[1, 2]')).toMatchObject({ code: 'wrong-type', found: 'a list', line: 1, column: 1 });
     expect(problem('hello')).toMatchObject({ code: 'wrong-type', found: 'hello' });
     expect(problems('').map((p) => p.path)).toEqual(['gap', 'gas', 'electrodes', 'seed', 'supply', 'observe']);
+  });
+});
+
+describe('kinetic electrons', () => {
+  const kinetic = GOOD.replace('title: Test', 'title: Test\nelectrons: { closure: kinetic }');
+
+  it('need a gas with built-in cross-sections, by its name', () => {
+    expect(good(kinetic).case.electrons).toEqual({ closure: 'kinetic', emissionEnergy: 2, particles: 20000, seed: 1 });
+    for (const [gas, what] of [
+      ['name: xenon', 'xenon'],
+      ['mixture: { argon: 0.9, nitrogen: 0.1 }', 'a mixture'],
+    ] as const) {
+      const [found, ...others] = problems(kinetic.replace('name: argon', gas));
+      expect(others).toEqual([]);
+      expect(found).toMatchObject({ path: 'electrons.closure', code: 'inconsistent', found: `kinetic with ${what}`, line: 2, column: 23 });
+      expect(found.expected).toContain('(argon, nitrogen, helium, neon) for kinetic');
+    }
+  });
+
+  it('are not for pressure histories', () => {
+    const text = `${kinetic}\nhistory: { pressure: { ascent: { rate: 5 m/s } } }\n`;
+    expect(problems(text).map(({ path, found }) => [path, found])).toContainEqual(['electrons.closure', 'kinetic with a history']);
   });
 });

@@ -44,6 +44,7 @@ function checked(overrides: readonly string[]): string {
     voltage,
     theory: predict(loaded.case, voltage),
     prospects: prospects(loaded.case, voltage),
+    kinetics: null,
     cautions: prognosisCautions(loaded.case, []),
   };
   return checkText(answer, terminal).replace(/\s+/g, ' ');

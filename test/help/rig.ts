@@ -56,6 +56,7 @@ export function rigOf(settings: Case, observers: (system: GapSystem, energy: Ene
       errorScale: scales.errorScale(system.layout.species),
       electronTransit: scales.electronTransit,
       ionTransit: scales.ionTransit,
+      particles: null,
     },
     [energy, ...observers(system, energy)],
   );

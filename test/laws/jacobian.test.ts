@@ -4,6 +4,7 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import type { Case } from '../../src/case.ts';
 import { curveOf } from '../../src/gases/curves.ts';
+import { FastElectrons } from '../../src/laws/fast-electrons.ts';
 import { GapEquations } from '../../src/laws/gap-equations.ts';
 import { lawsOf } from '../../src/laws/of-case.ts';
 import { GapSystem } from '../../src/march/gap-system.ts';
@@ -205,6 +206,43 @@ describe('the linear solve of a step', () => {
         ),
         { numRuns: 60 },
       );
+    });
+  }
+});
+
+/** The same gap with fast electrons in front of one wall; profile and exponents are invented. */
+function withFastElectrons(settings: Case, cathodeIsLeft: boolean): GapSystem {
+  const { system: plain } = systemOf(settings);
+  const { grid, layout } = plain;
+  const fast = new FastElectrons(grid);
+  const random = noise(5);
+  const profile = (): Float64Array => Float64Array.from({ length: grid.cells }, () => (1 + random()) / grid.cells);
+  const [ions, slow] = [profile().map((n) => 12 * n), profile().map((n) => 5 * n)];
+  fast.set({ cathodeIsLeft, ions, slow, returned: 0.4, voltage: 240, cathodeField: 30e3, byVoltage: 5, byField: -1.7 });
+  return new GapSystem(new GapEquations(grid, layout, lawsOf(settings), fast), new Circuit(settings.supply));
+}
+
+describe('the linear solve with fast electrons', () => {
+  for (const name of ['an ideal supply', 'yields that depend on the field', 'recombination']) {
+    it(`inverts a − J to the accuracy of a central difference in front of either wall with ${name}`, () => {
+      for (const left of [true, false]) {
+        const system = withFastElectrons(settingsOf(name), left);
+        fc.assert(
+          fc.property(
+            fc.record({
+              distortion: fc.constantFrom(-0.4, 0.01, 0.5, 3),
+              voltage: fc.constantFrom(left ? 230 : -230, left ? 240 : -200),
+              density: fc.constantFrom(1e13, 1e15),
+              seed: fc.integer({ min: 0, max: 1000 }),
+            }),
+            fc.constantFrom(1e6, 1e9, 1e11),
+            (state, a) => {
+              expect(residualOf(system, roughState(system, state), a, state.seed)).toBeLessThan(1e-6);
+            },
+          ),
+          { numRuns: 60 },
+        );
+      }
     });
   }
 });

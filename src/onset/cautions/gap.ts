@@ -18,7 +18,7 @@ export function ofGap({ settings, voltage, theory, prospects, found }: Evidence,
   const { spacing, area, longestPath, longestPathGiven } = settings.gap;
   const V_s = theory.static_breakdown_voltage_V;
   const lengths = V_s === null ? theory.alpha_d : predict(settings, Math.sign(voltage || 1) * V_s).alpha_d;
-  if (V_s !== null && lengths < SHORT_GAP) {
+  if (settings.electrons === undefined && V_s !== null && lengths < SHORT_GAP) {
     raise(
       'short-gap',
       `At breakdown the gap is only ${lengths.toPrecision(2)} ionisation lengths wide: too few for α to be well defined.`,

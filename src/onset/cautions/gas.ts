@@ -101,11 +101,12 @@ function ofMixture({ settings: { gas } }: Evidence, raise: Raise): void {
 function ofPaschenCurve({ settings, theory }: Evidence, raise: Raise): void {
   const minimum = theory.paschen_minimum_pd_Pa_m;
   if (minimum !== null && theory.pd_Pa_m < minimum) {
-    raise(
-      'left-of-minimum',
-      'Left of the Paschen minimum electrons are not in equilibrium with the field: a local α(E/N), and with it the breakdown voltage, is only a guide here.',
-      theory.pd_Pa_m / minimum,
-    );
+    if (settings.electrons === undefined)
+      raise(
+        'left-of-minimum',
+        'Left of the Paschen minimum electrons are not in equilibrium with the field: a local α(E/N), and with it the breakdown voltage, is only a guide here.',
+        theory.pd_Pa_m / minimum,
+      );
     if (!settings.gap.longestPathGiven) {
       raise(
         'longer-path',

@@ -2,7 +2,8 @@ import type { Case } from '../../case.ts';
 import type { Surface } from '../../surfaces/surface.ts';
 import { yieldAt } from '../../surfaces/yield-law.ts';
 import { threshold } from '../../theory/breakdown-voltage.ts';
-import { multiplicationOf } from '../../theory/predict.ts';
+import { kineticGapOf } from '../../theory/kinetic.ts';
+import { multiplicationOf } from '../../theory/multiplication.ts';
 
 /** One end of what is known of the cathode's yield. */
 export interface YieldEnd {
@@ -44,7 +45,8 @@ function endOf(settings: Case, side: 'left' | 'right', given: number): YieldEnd 
   const there = withYield(settings, side, given);
   const { density } = settings.gas;
   const { spacing } = settings.gap;
-  const { breakdown } = threshold(multiplicationOf(there, side === 'right' ? -1 : 1), density, spacing);
+  const polarity = side === 'right' ? -1 : 1;
+  const { breakdown } = kineticGapOf(there, polarity)?.threshold ?? threshold(multiplicationOf(there, polarity), density, spacing);
   const atBreakdown = breakdown === null ? null : yieldAt(there.electrodes[side].ionYield, breakdown / (density * spacing));
   return { given, atBreakdown, breakdown };
 }

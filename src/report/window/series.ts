@@ -1,6 +1,6 @@
 import { threshold } from '../../theory/breakdown-voltage.ts';
+import { multiplicationOf } from '../../theory/multiplication.ts';
 import { lowestOverPaths, paschenMinimum } from '../../theory/paschen.ts';
-import { multiplicationOf } from '../../theory/predict.ts';
 import { BOLTZMANN } from '../../units/constants.ts';
 import type { BreakdownCurve, WindowSeries } from './data.ts';
 import type { WindowReport } from './report.ts';

@@ -1,0 +1,43 @@
+import type { Kinetics } from '../theory/kinetic.ts';
+import { percent, quantity } from './quantities.ts';
+
+/** What particles say beside the local field, as rows for people. */
+export function kineticRows(k: Kinetics): (readonly [label: string, value: string])[] {
+  const at = quantity(Math.abs(k.gap_voltage_V), 'V');
+  return [
+    [
+      'breakdown voltage V_s',
+      `${thresholdText(k)}; by the local field with the net yield ${orNone(k.local_field_breakdown_voltage_V, 'V')}${apart(k)}`,
+    ],
+    ['feedback q', `${within(k.feedback, k.feedback_error, '')} at ${at}; by the local field ${quantity(k.local_field_feedback, '')}`],
+    ['ions per electron', `${within(k.ions_per_electron, k.ions_per_electron_error, '')}, for each emitted; ± is one standard error`],
+    ['fall back on the cathode', `${within(k.returned_fraction, k.returned_fraction_error, '')} for each emitted`],
+    [
+      'yield',
+      `${quantity(k.emitted_per_ion, '')} electrons emitted per ion; less those that fall back, a net yield of ${quantity(k.net_per_ion, '')}, which is what breakdown measurements give with a local α`,
+    ],
+  ];
+}
+
+function thresholdText({ breakdown_voltage_V: voltage, breakdown_voltage_V_error: error }: Kinetics): string {
+  return voltage === null ? 'none' : within(voltage, error ?? 0, 'V');
+}
+
+function orNone(value: number | null, unit: string): string {
+  return value === null ? 'none' : quantity(value, unit);
+}
+
+/** How far the two thresholds are apart. */
+function apart({ breakdown_voltage_V: particles, local_field_breakdown_voltage_V: local }: Kinetics): string {
+  return particles === null || local === null ? '' : `, ${percent(particles / local - 1, true)} apart`;
+}
+
+function within(value: number, error: number, unit: string): string {
+  return `${quantity(value, unit)} ± ${quantity(error, unit)}`;
+}
+
+/** The same in one sentence, beside a run. */
+export function kineticSentence(k: Kinetics): string {
+  const local = k.local_field_breakdown_voltage_V === null ? 'none' : quantity(k.local_field_breakdown_voltage_V, 'V');
+  return `Electrons as particles: V_s ${thresholdText(k)} (local field with the net yield ${quantity(k.net_per_ion, '')}: ${local}), q ${within(k.feedback, k.feedback_error, '')}; the given yield counts electrons emitted, of which ${percent(k.returned_fraction)} as many fall back. Growth and lag carry the error of q − 1.`;
+}
