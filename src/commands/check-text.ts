@@ -200,7 +200,7 @@ function theoryRows({ loaded, voltage, theory, prospects }: CheckAnswer): Row[] 
     'transit of the gap',
     `electrons ${quantity(prospects.electronTransit, 's')}, positive ions ${quantity(prospects.ionTransit, 's')}`,
   ]);
-  if (prospects.breakdownProbability > 0) {
+  if (settings.electrons === undefined && prospects.breakdownProbability > 0) {
     const wait =
       prospects.meanStatisticalLag === null ? '' : `; mean wait for one from the seed ${quantity(prospects.meanStatisticalLag, 's')}`;
     rows.push(['chance of one electron', `${percent(prospects.breakdownProbability)} lead to breakdown${wait}`]);

@@ -11,11 +11,13 @@ import { checkText } from './check-text.ts';
 import type { CheckOptions } from './cli.ts';
 import type { Terminal } from './terminal.ts';
 
-/** Reads a case and says what it means and what theory expects; simulates nothing. */
-export function check(path: string, options: CheckOptions, terminal: Terminal): void {
+/** Reads a case and says what it means and what theory expects; simulates nothing in time. */
+export async function check(path: string, options: CheckOptions, terminal: Terminal): Promise<void> {
   const loaded = loadCase(path, options.set);
   const settings = loaded.case;
   const voltage = highestOpenGapVoltage(settings);
+  if (settings.electrons !== undefined)
+    await (await import('../scan/gap-session.ts')).followAhead(settings, voltage, new AbortController().signal);
   const theory = predict(settings, voltage);
   const cautions = prognosisCautions(
     settings,

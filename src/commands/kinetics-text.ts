@@ -12,6 +12,14 @@ export function kineticRows(k: Kinetics): (readonly [label: string, value: strin
     ['feedback q', `${within(k.feedback, k.feedback_error, '')} at ${at}; by the local field ${quantity(k.local_field_feedback, '')}`],
     ['ions per electron', `${within(k.ions_per_electron, k.ions_per_electron_error, '')}, for each emitted; ± is one standard error`],
     ['fall back on the cathode', `${within(k.returned_fraction, k.returned_fraction_error, '')} for each emitted`],
+    ...(k.breakdown_probability === null
+      ? []
+      : [
+          [
+            'chance of one electron',
+            `${within(k.breakdown_probability, k.breakdown_probability_error ?? 0, '')} lead to breakdown (1 − 1/q: ${quantity(Math.max(0, 1 - 1 / k.feedback), '')}); ${within(k.silent_fraction ?? 0, k.silent_fraction_error ?? 0, '')} make no ion`,
+          ] as const,
+        ]),
     [
       'yield',
       `${quantity(k.emitted_per_ion, '')} electrons emitted per ion; less those that fall back, a net yield of ${quantity(k.net_per_ion, '')}, which is what breakdown measurements give with a local α`,

@@ -1,6 +1,7 @@
 import { statSync } from 'node:fs';
 import type { Case } from '../case.ts';
 import { withDefaults } from '../onset/cautions/index.ts';
+import { highestOpenGapVoltage } from '../onset/highest-voltage.ts';
 import type { Outcome } from '../onset/outcome.ts';
 import { ResultFileError } from '../results/errors.ts';
 import { type PreparedRunFile, prepareRunFile, type RunWriter } from '../results/write.ts';
@@ -63,6 +64,8 @@ async function follow(
   progress: ProgressLine<Progress> | null,
 ): Promise<{ readonly outcome: Outcome; readonly failure: Failure | null }> {
   try {
+    if (loaded.case.electrons !== undefined)
+      await (await import('../scan/gap-session.ts')).followAhead(loaded.case, highestOpenGapVoltage(loaded.case), stop.signal);
     const outcome = await simulate(loaded.case, {
       interrupted: () => stop.exitCode !== null,
       progress: (p) => progress?.show(p),

@@ -2,16 +2,20 @@ import type { CollisionTable } from './collision-table.ts';
 import { expectedFlux, GAP_BATCHES, type GapYield, gapYieldOf, uniformGap } from './gap-yield.ts';
 import type { Measured } from './statistics.ts';
 
-/** A planar gap without space charge, whatever its voltage. */
-export interface ResponseGap {
+/** A planar gap without space charge, whatever its voltage, and the electrons at its cathode. */
+export interface NodeGap {
   readonly table: CollisionTable;
   /** [m] */
   readonly distance: number;
   /** [eV] */
   readonly emissionEnergy: number;
+  readonly seed: number;
+}
+
+/** The same with what its answers need. */
+export interface ResponseGap extends NodeGap {
   /** electrons emitted for one answer, at most */
   readonly particles: number;
-  readonly seed: number;
   /** ions per electron as a closed form has them at a voltage [V], above 0 where not 0: what is measured is the ratio to it */
   readonly reference: (voltage: number) => number;
   /** voltages [V] between which the answer matters most: elsewhere fewer electrons are followed */
@@ -39,8 +43,8 @@ interface Node {
 const STRIDE = 0.05;
 /** half the width of the window of ln V over which a straight line is fitted: what bends the ratio of particles to closed form is felt over more than that */
 const WINDOW = 0.175;
-/** answers whose electrons are followed within one window */
-const IN_WINDOW = 7;
+/** electrons followed at one voltage are all over this: some seven voltages lie in a window, and those at its ends count little */
+const IN_WINDOW = 5;
 /** ions per electron too few to matter to any discharge */
 const NO_IONS = 1e-6;
 const CELLS = 40;
@@ -99,6 +103,11 @@ export class GapResponse {
     return { voltage: Math.exp(logVoltage), found };
   }
 
+  /** Whether electrons have been followed at the voltage of a number. */
+  has(node: number): boolean {
+    return this.#nodes.has(node);
+  }
+
   /** Takes over what was found at a voltage elsewhere. */
   adopt(node: number, found: GapYield): void {
     const logVoltage = node * STRIDE;
@@ -139,7 +148,7 @@ export class GapResponse {
 const NOTHING: GapAnswer = { ionsPerElectron: { value: 0, error: 0 }, returned: { value: 1, error: 0 } };
 
 /** Follows electrons at the voltage of one number. */
-export function measureNode({ table, distance, emissionEnergy, seed }: ResponseGap, particles: number, node: number): GapYield {
+export function measureNode({ table, distance, emissionEnergy, seed }: NodeGap, particles: number, node: number): GapYield {
   const request = { table, field: uniformGap(Math.exp(node * STRIDE), distance, CELLS), emissionEnergy, particles, seed };
   const found = gapYieldOf({ ...request, expected: expectedFlux(request) });
   if (found === null) throw new Error('interrupted');
@@ -168,11 +177,11 @@ function lineAt(points: readonly (readonly [number, number, number])[], weights:
   return { value, error: Math.sqrt(variance) };
 }
 
-/** Between which voltages a feedback first reaches 1, from below. */
-export interface Bracket {
-  /** [V]; equal where the feedback is above 1 from the start */
-  readonly below: number;
-  readonly above: number;
+/** Where a feedback passes 1, as few electrons say. */
+export interface Passing {
+  /** [V] */
+  readonly guess: number;
+  readonly rising: boolean;
 }
 
 /** Looks upwards in coarse steps, by few electrons, for the lowest voltage at which feedback reaches 1, then for the next at which it falls below again.
@@ -181,28 +190,35 @@ export interface Bracket {
  *  @param to        where to end [V]
  *  @param upperFrom  voltage from which on it is worth looking whether feedback falls again [V] */
 export function coarseThreshold(
-  gap: Omit<ResponseGap, 'attention'>,
+  gap: NodeGap,
   emission: (voltage: number) => number,
   from: number,
   to: number,
   upperFrom: number,
-): { readonly rise: Bracket | null; readonly fall: Bracket | null } {
+): { readonly rise: Passing | null; readonly fall: Passing | null } {
   const { table, distance, emissionEnergy, seed } = gap;
-  const excess = (voltage: number): number => {
+  const logFeedback = (voltage: number): number => {
     const request = { table, field: uniformGap(voltage, distance, CELLS), emissionEnergy, particles: ROUGH, seed };
-    return emission(voltage) * (gapYieldOf(request)?.ionsPerElectron.value ?? 0) - 1;
+    return Math.log(Math.max(NO_IONS, emission(voltage) * (gapYieldOf(request)?.ionsPerElectron.value ?? 0)));
   };
-  let rise: Bracket | null = null;
-  let before = from;
+  let rise: Passing | null = null;
+  let [before, logBefore] = [from, Number.NaN];
   for (let voltage = from; voltage <= to; voltage *= COARSE) {
-    const q = excess(voltage);
-    if (rise === null && q >= 0) rise = { below: before, above: voltage };
+    const log = logFeedback(voltage);
+    const passes = rise === null ? log >= 0 : log < 0;
+    if (passes) {
+      // along a straight line of ln q over ln V
+      const share = Number.isNaN(logBefore) ? 1 : logBefore / (logBefore - log);
+      const passing: Passing = { guess: before * (voltage / before) ** share, rising: rise === null };
+      if (rise !== null) return { rise, fall: passing };
+      rise = passing;
+    }
     if (rise !== null && voltage < upperFrom) return { rise, fall: null };
-    if (rise !== null && q < 0) return { rise, fall: { below: before, above: voltage } };
-    before = voltage;
+    [before, logBefore] = [voltage, log];
   }
   return { rise, fall: null };
 }
 
+/** steps of the coarse search, and electrons at each */
 const COARSE = 1.2;
 const ROUGH = 128;

@@ -1,7 +1,9 @@
 import type { Case, KineticElectrons } from '../case.ts';
 import { curveOf } from '../gases/curves.ts';
-import { type Bracket, coarseThreshold, GapResponse } from '../kinetics/gap-response.ts';
+import { coarseThreshold, GapResponse, type Passing } from '../kinetics/gap-response.ts';
+import { uniformGap } from '../kinetics/gap-yield.ts';
 import { collisionsOf } from '../kinetics/of-case.ts';
+import { seedChanceOf } from '../kinetics/seed-chance.ts';
 import type { Measured } from '../kinetics/statistics.ts';
 import { rootBetween } from '../numerics/roots.ts';
 import { yieldAt } from '../surfaces/yield-law.ts';
@@ -17,8 +19,8 @@ export class KineticGap {
   readonly response: GapResponse;
   readonly #settings: Case;
   readonly #column: number;
-  readonly #rise: Bracket | null;
-  readonly #fall: Bracket | null;
+  readonly #rise: Passing | null;
+  readonly #fall: Passing | null;
   readonly #polarity: number;
   #threshold: Threshold | null = null;
 
@@ -41,7 +43,7 @@ export class KineticGap {
     const { rise, fall } = coarseThreshold(gap, emission, 1.2 * least, HIGHEST * this.#column, LEFT_BRANCH * this.#column);
     this.#rise = rise;
     this.#fall = fall;
-    const attention = rise === null ? { from: 0, to: 0 } : { from: rise.below / AROUND, to: rise.above * AROUND };
+    const attention = rise === null ? { from: 0, to: 0 } : { from: rise.guess / AROUND, to: rise.guess * AROUND };
     this.response = responses.get(key) ?? new GapResponse({ ...gap, attention });
     responses.set(key, this.response);
   }
@@ -108,6 +110,30 @@ export class KineticGap {
     };
   }
 
+  /** What becomes of single electrons from the cathode at a voltage [V]. */
+  chance(
+    voltage: number,
+  ): Pick<Kinetics, 'breakdown_probability' | 'breakdown_probability_error' | 'silent_fraction' | 'silent_fraction_error'> {
+    const emission = this.emissionAt(voltage);
+    const { table, distance, emissionEnergy, seed } = this.response.gap;
+    const applied = Math.abs(voltage);
+    if (!(applied > 0 && emission > 0 && emission <= 1)) {
+      return { breakdown_probability: null, breakdown_probability_error: null, silent_fraction: null, silent_fraction_error: null };
+    }
+    const found = seedChanceOf(
+      { table, field: uniformGap(applied, distance, 1), emissionEnergy, electrons: SINGLE_ELECTRONS, seed },
+      emission,
+    );
+    if (found === null) throw new Error('interrupted');
+    const silent = found.avalanches.sizes.reduce((count, n) => (n === 0 ? count + 1 : count), 0) / SINGLE_ELECTRONS;
+    return {
+      breakdown_probability: found.chance.probability.value,
+      breakdown_probability_error: found.chance.probability.error,
+      silent_fraction: silent,
+      silent_fraction_error: Math.sqrt((silent * (1 - silent)) / SINGLE_ELECTRONS),
+    };
+  }
+
   get threshold(): Threshold {
     this.#threshold ??= { breakdown: this.#crossing(this.#rise), upper: this.#crossing(this.#fall) };
     return this.#threshold;
@@ -123,33 +149,44 @@ export class KineticGap {
   }
 
   /** Where the smooth feedback passes 1, near where few electrons found it. */
-  #crossing(bracket: Bracket | null): number | null {
-    if (bracket === null) return null;
+  #crossing(passing: Passing | null): number | null {
+    if (passing === null) return null;
+    const sign = passing.rising ? 1 : -1;
     const excess = (logVoltage: number): number => {
       const q = this.feedback(Math.exp(logVoltage)).value;
-      return (q - 1) / (q + 1);
+      return (sign * (q - 1)) / (q + 1);
     };
-    let [low, high] = [Math.log(bracket.below), Math.log(bracket.above)];
-    const sign = Math.sign(excess(high)) || 1;
-    // noise of the few may have misled by a step
-    for (let k = 0; k < WIDENINGS && excess(low) * excess(high) > 0; k++) {
-      if (sign === Math.sign(excess(low)) && k % 2 === 0) low -= WIDER;
-      else high += WIDER;
+    const guess = Math.log(passing.guess);
+    let [low, high] = [guess - NEAR, guess + NEAR];
+    // the few may have misled further than that
+    for (let k = 0; k < WIDENINGS && excess(low) > 0; k++) low -= NEAR;
+    for (let k = 0; k < WIDENINGS && excess(high) < 0; k++) high += NEAR;
+    return excess(low) > 0 || excess(high) < 0 ? null : Math.exp(rootBetween(excess, low, high));
+  }
+
+  /** Voltages, by number, that the thresholds and the answer at one voltage [V] ask for and that have not been followed yet. */
+  nodesAround(voltage: number): number[] {
+    const wanted = [Math.abs(voltage) * (1 - SLOPE_STEP), Math.abs(voltage) * (1 + SLOPE_STEP)];
+    for (const passing of [this.#rise, this.#fall]) {
+      if (passing !== null) wanted.push(passing.guess * Math.exp(-NEAR), passing.guess * Math.exp(NEAR));
     }
-    if (excess(low) * excess(high) > 0) return null;
-    return Math.exp(rootBetween(excess, low, high));
+    const nodes = new Set(wanted.filter((v) => v > 0).flatMap((v) => GapResponse.nodesFor(v)));
+    return [...nodes].filter((node) => !this.response.has(node));
   }
 }
 
+/** followed one by one for their chance of breakdown */
+const SINGLE_ELECTRONS = 1000;
 /** share of a voltage up and down over which a slope is taken */
 const SLOPE_STEP = 0.03;
 /** E/N [V m²] up to which thresholds are looked for, and from which on feedback may fall with the voltage */
 const HIGHEST = 1e4 * TOWNSEND;
 const LEFT_BRANCH = 500 * TOWNSEND;
 /** around the threshold, where more electrons are followed */
-const AROUND = 1.15;
-const WIDENINGS = 6;
-const WIDER = 0.1;
+const AROUND = 1.3;
+/** how far around a guess a threshold is looked for, in ln V, and how often further */
+const NEAR = 0.03;
+const WIDENINGS = 8;
 
 /** Gaps already followed, by the electrons' settings: electrons of one take seconds. */
 const known = new WeakMap<KineticElectrons, { readonly gaps: Map<string, KineticGap>; readonly responses: Map<string, GapResponse> }>();
@@ -193,6 +230,12 @@ export interface Kinetics {
   readonly returned_fraction_error: number;
   readonly feedback: number;
   readonly feedback_error: number;
+  /** that one electron from the cathode leads to breakdown, from the sizes of single avalanches; null where an ion frees more than one electron */
+  readonly breakdown_probability: number | null;
+  readonly breakdown_probability_error: number | null;
+  /** of single electrons, those that make no ion */
+  readonly silent_fraction: number | null;
+  readonly silent_fraction_error: number | null;
   /** q of the local field with the net yield */
   readonly local_field_feedback: number;
   readonly breakdown_voltage_V: number | null;
@@ -232,6 +275,7 @@ export function kineticsOf(settings: Case, voltage: number): Kinetics | null {
     returned_fraction_error: returned.error,
     feedback: feedback.value,
     feedback_error: feedback.error,
+    ...gap.chance(voltage),
     local_field_feedback: uniformFeedback(net, Math.abs(voltage) / column, column),
     breakdown_voltage_V: breakdown,
     breakdown_voltage_V_error: breakdown === null ? null : gap.errorAt(breakdown),

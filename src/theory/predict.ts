@@ -196,7 +196,7 @@ export function prospects(settings: Case, voltage: number): Prospects {
     breakdownProbability: probability,
     meanStatisticalLag: meanStatisticalLag(seed.cathodeCurrent / ELEMENTARY_CHARGE, probability),
     streamerIntegral: streamerIntegral(here.alpha, here.eta, gap.spacing),
-    timeToSpaceCharge: timeToSpaceCharge(settings, here),
+    timeToSpaceCharge: settings.electrons === undefined ? timeToSpaceCharge(settings, here) : null,
     lowCurrentSlope: breakdownReducedField === null ? null : lowCurrentSlope(multiplication.ionisation, breakdownReducedField),
     normalCathodeFall: normalFall(settings, here),
   };
