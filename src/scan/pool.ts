@@ -180,12 +180,13 @@ class ThreadPool<Task, Result> implements Pool<Task, Result> {
       member.cause = cause ?? 'nothing';
     });
     thread.on('exit', (code) => this.#lose(member, code));
+    // waits there until the thread is ready
+    thread.postMessage(task.value);
   }
 
   #hear(member: Member<Task>, message: WorkerMessage): void {
     if (message.kind === 'ready') {
       member.ready = true;
-      for (const { value } of member.tasks) member.thread.postMessage(value);
       return;
     }
     const task = member.tasks.shift();
