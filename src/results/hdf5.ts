@@ -60,21 +60,11 @@ const longestAttribute = 32_000;
 
 /** Creates (or empties) an HDF5 file. The parent folder must exist. */
 export async function createHdf5(path: string): Promise<Hdf5Writer> {
-  const h5 = await library();
-  const file = guarded(() => new h5.File(path, 'w'));
-  return writerOn(file);
-}
-
-/** Begins to load the library, for a caller who will write later and has time now. What fails is said when it comes to writing. */
-export function prepareHdf5(): void {
-  library().catch(() => {});
-}
-
-/** Loaded when it is asked for: starting the library takes longer than most commands, which never write. */
-async function library(): Promise<typeof import('h5wasm/node')> {
+  // Loaded here: starting the library takes longer than most commands, which never write.
   const h5 = await import('h5wasm/node');
   (await h5.ready).activate_throwing_error_handler();
-  return h5;
+  const file = guarded(() => new h5.File(path, 'w'));
+  return writerOn(file);
 }
 
 function writerOn(file: File): Hdf5Writer {

@@ -1,6 +1,5 @@
 import { existsSync, statSync } from 'node:fs';
 import { ResultFileError } from '../results/errors.ts';
-import { prepareHdf5 } from '../results/hdf5.ts';
 import { deleteJournal, type Journal, type JournalHeader, openJournal, type Span } from '../results/journal.ts';
 import { claimOutput, type Output } from '../results/output.ts';
 import { readScanFile, type ScanFile } from '../results/scan-read.ts';
@@ -235,7 +234,7 @@ async function compute(request: ScanRequest, ledger: Ledger, watch: ScanWatch): 
   try {
     report();
     if (watch.stop.aborted) return 0;
-    const answers = pool.run(
+    await pool.run(
       () => {
         const position = order.next();
         return position === undefined ? undefined : share.indexAt(position);
@@ -247,9 +246,6 @@ async function compute(request: ScanRequest, ledger: Ledger, watch: ScanWatch): 
         report();
       },
     );
-    // while the workers start
-    prepareHdf5();
-    await answers;
   } finally {
     watch.stop.removeEventListener('abort', interrupt);
     await pool.close();
