@@ -3,7 +3,7 @@ import type { Coefficient, Provenance } from '../gases/gas.ts';
 import type { YieldEnd } from '../onset/cautions/yield-ends.ts';
 import type { Caution } from '../onset/outcome.ts';
 import type { Surface } from '../surfaces/surface.ts';
-import type { Kinetics } from '../theory/kinetic.ts';
+import type { CurvePoint, Kinetics } from '../theory/kinetic.ts';
 import type { Prospects, Theory } from '../theory/predict.ts';
 import { TOWNSEND, VACUUM_PERMITTIVITY } from '../units/constants.ts';
 import { printable } from '../units/printable.ts';
@@ -12,7 +12,7 @@ import type { LoadedCase } from './case-source.ts';
 import { cautionLines, lastLines } from './cautions-text.ts';
 import { gasUsed, type SetVoltage, yieldConsequences } from './check-spread.ts';
 import { coefficientsOf, notesOf } from './coefficients.ts';
-import { kineticRows } from './kinetics-text.ts';
+import { curveLines, kineticRows } from './kinetics-text.ts';
 import { columns, NO_BREAK, wrap } from './layout.ts';
 import { currentDensity, field, percent, pressure, pressureDistance, quantity, rate, reducedField } from './quantities.ts';
 import type { Terminal } from './terminal.ts';
@@ -27,6 +27,8 @@ export interface CheckAnswer {
   readonly prospects: Prospects;
   /** null where electrons follow the local field */
   readonly kinetics: Kinetics | null;
+  /** the breakdown curve by particles, if it was asked for */
+  readonly curve: readonly CurvePoint[] | null;
   readonly cautions: readonly Caution[];
 }
 
@@ -55,6 +57,7 @@ export function checkText(answer: CheckAnswer, terminal: Terminal): string {
     ...[...remarks(loaded), ...unusedStudies(loaded)].flatMap((note) => wrap(note, width, '  ', '  ').map(style.faint)),
     ...section(theoryTitle(voltage), theoryRows(answer)),
     ...(answer.kinetics === null ? [] : section('Electrons as particles', kineticRows(answer.kinetics))),
+    ...(answer.curve === null ? [] : ['', style.strong('Breakdown curve'), ...curveLines(answer.curve, width)]),
     '',
     style.strong('Where the numbers come from'),
     ...sourceLines(settings, voltage, width),

@@ -92,6 +92,7 @@ function programOf(terminal: Terminal, done: (exitCode: number) => void): Comman
     .addOption(setOption())
     .option('--json', 'one JSON object on stdout')
     .option('--quiet', 'print problems only')
+    .option('--curve', 'with kinetic electrons: the breakdown curve by particles around the pressure of the case')
     .addOption(new Option('--template', 'print a commented case to start from').conflicts(['schema']))
     .option('--schema', 'print the JSON Schema of case files')
     .helpOption('-h, --help', 'print this help')
@@ -240,6 +241,7 @@ export interface CheckOptions {
   readonly set: readonly string[];
   readonly json?: boolean;
   readonly quiet?: boolean;
+  readonly curve?: boolean;
   readonly template?: boolean;
   readonly schema?: boolean;
 }

@@ -1,5 +1,6 @@
-import type { Kinetics } from '../theory/kinetic.ts';
-import { percent, quantity } from './quantities.ts';
+import type { CurvePoint, Kinetics } from '../theory/kinetic.ts';
+import { columns } from './layout.ts';
+import { percent, pressureDistance, quantity } from './quantities.ts';
 
 /** What particles say beside the local field, as rows for people. */
 export function kineticRows(k: Kinetics): (readonly [label: string, value: string])[] {
@@ -48,4 +49,15 @@ function within(value: number, error: number, unit: string): string {
 export function kineticSentence(k: Kinetics): string {
   const local = k.local_field_breakdown_voltage_V === null ? 'none' : quantity(k.local_field_breakdown_voltage_V, 'V');
   return `Electrons as particles: V_s ${thresholdText(k)} (local field with the net yield ${quantity(k.net_per_ion, '')}: ${local}), q ${within(k.feedback, k.feedback_error, '')}; the given yield counts electrons emitted, of which ${percent(k.returned_fraction)} as many fall back. Growth and lag carry the error of q − 1.`;
+}
+
+/** The breakdown curve as a table. */
+export function curveLines(curve: readonly CurvePoint[], width: number): string[] {
+  const rows = curve.map((point) => [
+    `  ${pressureDistance(point.pd_Pa_m)}`,
+    point.breakdown_voltage_V === null ? 'none' : within(point.breakdown_voltage_V, point.breakdown_voltage_V_error ?? 0, 'V'),
+    orNone(point.local_field_breakdown_voltage_V, 'V'),
+    point.net_per_ion === null ? '' : quantity(point.net_per_ion, ''),
+  ]);
+  return columns([['  pressure × spacing', 'V_s by particles', 'local field', 'with net yield'], ...rows], [30, 20, 14], width);
 }

@@ -4,6 +4,7 @@ import { serve } from './serve.ts';
 export function serveJobs(): void {
   serve({
     'scan-point': async () => (await import('./point-job.ts')).pointJob,
+    'breakdown-curve': async () => (await import('./curve-job.ts')).curveJob,
     'gap-yield': async () => (await import('./gap-job.ts')).gapJob,
     swarm: async () => (await import('./swarm-job.ts')).swarmJob,
     'window-request': async () => (await import('./window-job.ts')).windowJob,

@@ -284,3 +284,40 @@ export function kineticsOf(settings: Case, voltage: number): Kinetics | null {
     net_per_ion: emitted * share,
   };
 }
+
+/** A point of the breakdown curve by particles, beside that of the local field. SI, unit in the key. */
+export interface CurvePoint {
+  readonly pd_Pa_m: number;
+  readonly breakdown_voltage_V: number | null;
+  readonly breakdown_voltage_V_error: number | null;
+  /** where the feedback falls below 1 again, if it does */
+  readonly upper_breakdown_voltage_V: number | null;
+  /** of the local field with the net yield at that point; with the yield of the case where particles find no breakdown */
+  readonly local_field_breakdown_voltage_V: number | null;
+  readonly net_per_ion: number | null;
+}
+
+/** The point of the curve at a multiple of a case's density, by a fifth of its particles. */
+export function curvePointOf(settings: Case, multiple: number): CurvePoint {
+  const { electrons, gas, gap } = settings;
+  if (electrons === undefined) throw new Error('electrons follow the local field');
+  const there: Case = {
+    ...settings,
+    gas: { ...gas, density: gas.density * multiple, pressure: gas.pressure * multiple },
+    electrons: { ...electrons, particles: Math.ceil(electrons.particles / 5) },
+  };
+  const kinetic = kineticGapOf(there, 1);
+  if (kinetic === null) throw new Error('electrons follow the local field');
+  const { breakdown, upper } = kinetic.threshold;
+  const emitting = multiplicationOf(there, 1);
+  const share = breakdown === null ? 1 : 1 - kinetic.response.at(breakdown).returned.value;
+  const net = { ...emitting, ionYield: (x: number): number => share * emitting.ionYield(x) };
+  return {
+    pd_Pa_m: there.gas.pressure * gap.spacing,
+    breakdown_voltage_V: breakdown,
+    breakdown_voltage_V_error: breakdown === null ? null : kinetic.errorAt(breakdown),
+    upper_breakdown_voltage_V: upper,
+    local_field_breakdown_voltage_V: threshold(net, there.gas.density, gap.spacing).breakdown,
+    net_per_ion: breakdown === null ? null : kinetic.emissionAt(breakdown) * share,
+  };
+}

@@ -45,6 +45,7 @@ function checked(overrides: readonly string[]): string {
     theory: predict(loaded.case, voltage),
     prospects: prospects(loaded.case, voltage),
     kinetics: null,
+    curve: null,
     cautions: prognosisCautions(loaded.case, []),
   };
   return checkText(answer, terminal).replace(/\s+/g, ' ');
