@@ -170,7 +170,7 @@ export class Particles {
   #limit(): number {
     if (this.#settings.emission * total(this.#ions) < WEAK_FEEDBACK) return FRESH_WEAK;
     // a jump of the source is a jump of the current: where electrons take few collisions, looks may be closer together
-    return FRESH * Math.min(1, Math.max(CLOSEST, this.#cost / USUAL_COST));
+    return this.#cost === 0 ? FRESH : FRESH * Math.min(1, Math.max(CLOSEST, this.#cost / USUAL_COST));
   }
 
   /** Whether another look in nearly the same field makes the answer better. */
