@@ -38,14 +38,11 @@ export function buildCase(input: CaseInput, fileTitle: string, builtIns: BuiltIn
   const title = defaults.or(input.title, 'title', fileTitle, fileTitle);
   const parts = partsOf(input.gas.mixture);
   const gasNames = parts?.map(({ gas }) => gas) ?? (input.gas.name === undefined ? [] : [input.gas.name]);
-  const left = surfaceOf(input.electrodes.left, gasNames, builtIns);
-  if (!input.electrodes.right) defaults.add('electrodes.right', 'same as left');
-  const right = input.electrodes.right ? surfaceOf(input.electrodes.right, gasNames, builtIns) : left;
   const withoutHash: Omit<Case, 'sha256'> = {
     title,
-    gap: gapOf(input.gap, defaults),
-    gas: gasOnce(input.gas, parts, builtIns, defaults),
-    electrodes: { left, right },
+    gap: kept(GAPS, input.gap, null, () => gapOf(input.gap, defaults)),
+    gas: kept(GASES, input.gas, null, () => gasOf(input.gas, parts, builtIns, defaults)),
+    electrodes: kept(ELECTRODES, input.electrodes, input.gas, () => electrodesOf(input.electrodes, gasNames, builtIns, defaults)),
     seed: {
       cathodeCurrent: input.seed.cathode_current,
       electrons: defaults.or(input.seed.electrons, 'seed.electrons', 0, '0'),
@@ -62,6 +59,22 @@ export function buildCase(input: CaseInput, fileTitle: string, builtIns: BuiltIn
     },
   };
   return deepFreeze({ ...withoutHash, sha256: hashCase(withoutHash) });
+}
+
+/** What was made of a section of the input, and what else it was made from. */
+type Kept<Part> = WeakMap<object, { readonly beside: object | null; readonly part: Part }>;
+const GAPS: Kept<PlanarGap> = new WeakMap();
+const GASES: Kept<Gas> = new WeakMap();
+const ELECTRODES: Kept<Case['electrodes']> = new WeakMap();
+
+/** A part of a case, made once for a section of the input: points of a scan share the sections that it does not vary (sections.ts), and so also what is
+ *  built, frozen and hashed of them, and the limits that theory keeps by gas, gap and electrodes. Defaults are noted when a part is made. */
+function kept<Part extends object>(known: Kept<Part>, section: object, beside: object | null, make: () => Part): Part {
+  const before = known.get(section);
+  if (before !== undefined && before.beside === beside) return before.part;
+  const part = deepFreeze(make());
+  known.set(section, { beside, part });
+  return part;
 }
 
 /** Nothing where electrons follow the local field: such a case is what it was before there was a choice. */
@@ -112,18 +125,6 @@ function dataOf(input: CaseInput['gas'], parts: readonly MixturePart[] | null, b
   return known(name, defaults.or(input.data, 'gas.data', standard, standard));
 }
 
-/** by the input they are made from: the points of a scan that does not vary the gas share it, so that it is built, frozen and hashed once */
-const GASES = new WeakMap<CaseInput['gas'], Gas>();
-
-/** The gas; its defaults are noted when it is made. */
-function gasOnce(input: CaseInput['gas'], parts: readonly MixturePart[] | null, builtIns: BuiltIns, defaults: Defaults): Gas {
-  const known = GASES.get(input);
-  if (known !== undefined) return known;
-  const gas = deepFreeze(gasOf(input, parts, builtIns, defaults));
-  GASES.set(input, gas);
-  return gas;
-}
-
 function gasOf(input: CaseInput['gas'], parts: readonly MixturePart[] | null, builtIns: BuiltIns, defaults: Defaults): Gas {
   const builtIn = dataOf(input, parts, builtIns, defaults);
   const isMixture = parts !== null && parts.length > 1;
@@ -144,6 +145,17 @@ function gasOf(input: CaseInput['gas'], parts: readonly MixturePart[] | null, bu
     breakdownUncertainty: uncertainty,
     kineticCrossSection: builtIn?.kineticCrossSection ?? null,
   };
+}
+
+function electrodesOf(
+  input: CaseInput['electrodes'],
+  gases: readonly string[],
+  builtIns: BuiltIns,
+  defaults: Defaults,
+): Case['electrodes'] {
+  const left = surfaceOf(input.left, gases, builtIns);
+  if (!input.right) defaults.add('electrodes.right', 'same as left');
+  return { left, right: input.right ? surfaceOf(input.right, gases, builtIns) : left };
 }
 
 /** @param gases  built-in ones, none where the case brings all its coefficients */

@@ -51,6 +51,38 @@ describe('the case at a point of a scan', () => {
     );
   });
 
+  it('is the same whatever points were asked for before', () => {
+    const axes: readonly (readonly [path: string, first: number, second: number])[] = [
+      ['gap.spacing', 0.01, 0.02],
+      ['gas.pressure', 100, 200],
+      ['electrodes.left.ion_yield', 0.02, 0.05],
+      ['supply.voltage.step', 300, 400],
+    ];
+    const [least, most] = [axes.map(([, first]) => first), axes.map(([, , second]) => second)];
+    const units = ['m', 'Pa', '1', 'V'];
+    const source = varied(
+      axes.map(([path, first, second], k) => `{ path: ${path}, values: [${text(first, units[k])}, ${text(second, units[k])}] }`),
+    );
+    const { at } = good(source);
+    fc.assert(
+      fc.property(fc.array(fc.constantFrom(0, 1), { minLength: 4, maxLength: 4 }), (places) => {
+        const values = places.map((place, k) => (place === 0 ? least[k] : most[k]));
+        const [asked, alone] = [at(values), good(source).at(values)];
+        if (!asked.ok || !alone.ok) throw new Error('no case');
+        expect(asked.case).toEqual(alone.case);
+      }),
+      { numRuns: 60 },
+    );
+  });
+
+  it('shares what is not varied', () => {
+    const { at } = good(varied(['{ path: supply.voltage.step, values: [300 V, 400 V] }']));
+    const [a, b] = [at([300]), at([400])];
+    if (!a.ok || !b.ok) throw new Error('no case');
+    expect(b.case.supply).not.toEqual(a.case.supply);
+    for (const part of ['gap', 'gas', 'electrodes'] as const) expect(b.case[part]).toBe(a.case[part]);
+  });
+
   it('holds exactly the number given', () => {
     const { at } = good(varied(['{ path: gas.pressure, values: [1 Torr] }', '{ path: gas.temperature, values: [20 °C] }']));
     fc.assert(
