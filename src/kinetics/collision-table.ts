@@ -101,12 +101,13 @@ export function collisionTable(set: CrossSectionSet, gas: GasState, angular: Ang
   };
 }
 
-/** Spans of energy for free flights, four to a factor of two: an electron that starts in one is followed up to its top with one bound on collisions. A top
+/** Spans of energy for free flights, eight to a factor of two: an electron that starts in one is followed up to its top with one bound on collisions. A top
  *  near the start means a low bound and few null collisions, but flights that end at the top for nothing: it lies one mean flight's gain above. */
 export interface Spans {
   /** [eV], by span */
   readonly top: Float64Array;
-  /** energies between which flights may start with this span, so that it need not be looked up again after every one [eV] */
+  /** energies between which flights may start with this span, so that it need not be looked up again after every one [eV]: a fifth below it, which costs
+   *  few null collisions */
   readonly bottom: Float64Array;
   readonly start: Float64Array;
   /** [1/s] and its inverse */
@@ -116,7 +117,7 @@ export interface Spans {
   readonly floor: number;
 }
 
-export const SPANS_PER_OCTAVE = 4;
+export const SPANS_PER_OCTAVE = 8;
 export const SPANS: number = OCTAVES * SPANS_PER_OCTAVE;
 const BINS_PER_SPAN = BINS_PER_OCTAVE / SPANS_PER_OCTAVE;
 
@@ -152,7 +153,7 @@ export function spansOf(table: CollisionTable, acceleration: number): Spans {
     let last = span + 1;
     while (last < SPANS && edge(last + 1) < upper + (2 * acceleration * Math.sqrt(upper)) / boundTo(last)) last++;
     top[span] = last >= SPANS - 1 ? Number.POSITIVE_INFINITY : edge(last + 1);
-    bottom[span] = edge(span) / 2;
+    bottom[span] = 0.8 * edge(span);
     start[span] = upper;
     bound[span] = last >= SPANS - 1 ? Math.max(highest, Number.MIN_VALUE) : boundTo(last);
     mean[span] = 1 / bound[span];

@@ -75,15 +75,8 @@ const OWN_STREAM = 0x67617077;
 
 const NOTHING = new Float64Array(0);
 
-/** what ends a flight */
-const COLLISION = 0;
-const SPAN_END = 1;
-const LOW_FACE = 2;
-const HIGH_FACE = 3;
-const TIME_END = 4;
-
 /** the upper bits of a 32-bit float less these: number of a span and of a bin */
-const SPAN_BITS = (127 + LOWEST) << 2;
+const SPAN_BITS = (127 + LOWEST) << 3;
 const BIN_BITS = (127 + LOWEST) << 7;
 
 /** An energy of this many kT of the gas and more does not notice that molecules move: their heating is 1/400 of recoil there. */
@@ -109,6 +102,8 @@ export class Flights {
   /** a vector handed to and fro */
   readonly #velocity = new Float64Array(3);
   readonly #other = new Float64Array(3);
+  /** numbers handed between the inner loop and what is around it */
+  readonly #held = new Float64Array(5);
   readonly #bits = new Float32Array(1);
   readonly #word: Int32Array;
   readonly #thinning: Thinning | null;
@@ -140,17 +135,12 @@ export class Flights {
     const random = this.random;
     const { faces } = this.#field;
     const { limits, lines, thresholds } = table;
-    const { top: tops, bottom: bottoms, start: starts, bound: bounds, mean: means, floor } = this.#spans;
+    const { top: tops, bottom: bottoms, start: starts, bound: bounds, mean: means } = this.#spans;
     const kinds = this.#kinds;
     const bits = this.#bits;
     const bitsAsWord = this.#word;
     const accelerations = this.#acceleration;
-    const bounded = this.#bounded;
-    const processes = thresholds.length;
     const warmBelow = WARM * thermalSpread(table) ** 2 * (table.mass / ELECTRON_MASS);
-    const spread = thermalSpread(table);
-    const share = massShare(table.mass);
-    const rest = 1 - share;
     const isotropic = table.angular === 'isotropic';
     const velocity = this.#velocity;
     const thinned = this.#thinning !== null;
@@ -158,6 +148,34 @@ export class Flights {
     const wanted = this.#thinning?.weight ?? NOTHING;
     const { inside: exponentialInside, width: exponentialWidth } = exponentialLayers;
     const { inside: normalInside, width: normalWidth } = normalLayers;
+    // The compiler asks numbers of the module, arguments and what functions return for their type at every use in the loop; the results of arithmetic it
+    // does not.
+    const unit = 1 * SPEED_OF_1_EV;
+    const end = 1 * until;
+    const spread = 1 * thermalSpread(table);
+    const share = 1 * massShare(table.mass);
+    const floor = this.#spans.floor | 0;
+    const processes = thresholds.length | 0;
+    const bounded = this.#bounded ? 1 : 0;
+    const spanBits = SPAN_BITS | 0;
+    const binBits = BIN_BITS | 0;
+    const lastSpan = (SPANS - 1) | 0;
+    const lastBin = (BINS - 1) | 0;
+    // what ends a flight: here, since numbers of the module are read anew each time
+    const COLLISION = 0;
+    const SPAN_END = 1;
+    const TIME_END = 2;
+    const LOW_FACE = 3;
+    const HIGH_FACE = 4;
+    // and what else leaves the inner loop
+    const DRAW = 5;
+    const FACES = 6;
+    const MOLECULE = 7;
+    const TURN = 8;
+    const CHANGE = 9;
+    const SLOW = 10;
+    const counts = tally.counts;
+    const held = this.#held;
     let { x: xs, y: ys, z: zs, ux: uxs, uy: uys, uz: uzs, time: times, weight: weights, cell: cells } = electrons;
     let elasticLoss = 0;
     let inelasticLoss = 0;
@@ -189,72 +207,245 @@ export class Flights {
       let sumWay = 0;
       let sumEnergy = 0;
       let gone = false;
+      // what was found outside of the inner loop, in `held`, and where it goes on with that
+      let found = COLLISION;
 
-      for (;;) {
-        if (energy > start || energy < bottom) {
-          bits[0] = energy;
-          let span = (bitsAsWord[0] >> 21) - SPAN_BITS;
-          if (span < floor) span = floor;
-          else if (span >= SPANS) span = SPANS - 1;
-          start = starts[span];
-          top = tops[span];
-          bottom = bottoms[span];
-          bound = bounds[span];
-          mean = means[span];
-        }
-        let end = COLLISION;
-        // random numbers are made here from whole ones: a function that returns any other allocates it
-        let word = random.word();
-        let layer = word & 255;
-        let place = word >>> 8;
-        const part = place * exponentialWidth[layer];
-        let dt = place < exponentialInside[layer] ? part * mean : random.exponentialRest(layer, part) * mean;
-        if (t + dt >= until) {
-          dt = until - t;
-          end = TIME_END;
-        }
-        const across = uy * uy + uz * uz;
-        let ux1 = ux + acceleration * dt;
-        let energy1 = ux1 * ux1 + across;
-        if (energy1 > top) {
-          ux1 = acceleration > 0 ? Math.sqrt(top - across) : -Math.sqrt(top - across);
-          dt = (ux1 - ux) / acceleration;
-          energy1 = top;
-          end = SPAN_END;
-        }
-        let dx = SPEED_OF_1_EV * (ux + 0.5 * acceleration * dt) * dt;
-        if (bounded && (x + dx < low || x + dx > high || ux * ux1 < 0)) {
-          const toLow = timeTo(low - x, ux, acceleration, false);
-          const toHigh = timeTo(high - x, ux, acceleration, true);
-          if (toLow < dt || toHigh < dt) {
-            const isLow = toLow < toHigh;
-            dt = isLow ? toLow : toHigh;
-            end = isLow ? LOW_FACE : HIGH_FACE;
-            dx = (isLow ? low : high) - x;
-            ux1 = ux + acceleration * dt;
-            energy1 = ux1 * ux1 + across;
+      while (!gone) {
+        let event = COLLISION;
+        // No function is called in the inner loop (`random.word` is put in its place), so that numbers stay in registers; what needs one leaves it.
+        for (;;) {
+          if (found !== MOLECULE) {
+            let dt: number;
+            let dx: number;
+            let ux1: number;
+            let energy1: number;
+            let flight = COLLISION;
+            if (found === FACES) {
+              dt = held[0];
+              dx = held[1];
+              ux1 = held[2];
+              energy1 = held[3];
+              flight = held[4] | 0;
+            } else {
+              if (found === DRAW) dt = held[0];
+              else {
+                if (energy > start || energy < bottom) {
+                  bits[0] = energy;
+                  let span = (bitsAsWord[0] >> 20) - spanBits;
+                  if (span < floor) span = floor;
+                  else if (span > lastSpan) span = lastSpan;
+                  start = starts[span];
+                  top = tops[span];
+                  bottom = bottoms[span];
+                  bound = bounds[span];
+                  mean = means[span];
+                }
+                const word = random.word();
+                const layer = word & 255;
+                const place = word >>> 8;
+                dt = place * exponentialWidth[layer] * mean;
+                if (place >= exponentialInside[layer]) {
+                  held[0] = layer;
+                  held[1] = place * exponentialWidth[layer];
+                  event = DRAW;
+                  break;
+                }
+              }
+              if (t + dt >= end) {
+                dt = end - t;
+                flight = TIME_END;
+              }
+              const across = uy * uy + uz * uz;
+              ux1 = ux + acceleration * dt;
+              energy1 = ux1 * ux1 + across;
+              if (energy1 > top) {
+                ux1 = acceleration > 0 ? Math.sqrt(top - across) : -Math.sqrt(top - across);
+                dt = (ux1 - ux) / acceleration;
+                energy1 = top;
+                flight = SPAN_END;
+              }
+              dx = unit * dt * (ux + 0.5 * acceleration * dt);
+              if (bounded === 1 && (x + dx < low || x + dx > high || ux * ux1 < 0)) {
+                held[0] = dt;
+                held[1] = dx;
+                held[2] = ux1;
+                held[3] = energy1;
+                held[4] = flight;
+                event = FACES;
+                break;
+              }
+            }
+            const gain = acceleration * dt;
+            const reach = unit * dt;
+            sumTime += dt;
+            sumWay += dx;
+            sumEnergy += dt * (energy + gain * (ux + gain * (1 / 3)));
+            x += dx;
+            y += uy * reach;
+            z += uz * reach;
+            t += dt;
+            ux = ux1;
+            energy = energy1;
+            if (flight !== COLLISION) {
+              found = COLLISION;
+              if (flight === SPAN_END) continue;
+              event = flight;
+              break;
+            }
+            trials++;
+          }
+
+          // velocity of the electron relative to the molecule
+          let gx = ux;
+          let gy = uy;
+          let gz = uz;
+          let relative = energy;
+          if (energy < warmBelow) {
+            if (found === MOLECULE) {
+              gx -= held[0];
+              gy -= held[1];
+              gz -= held[2];
+            } else {
+              let word = random.word();
+              let layer = word & 127;
+              let place = word >> 8;
+              const vx = place * normalWidth[layer];
+              if (Math.abs(place) >= normalInside[layer]) {
+                held[0] = vx;
+                held[3] = layer;
+                held[4] = 0;
+                event = MOLECULE;
+                break;
+              }
+              word = random.word();
+              layer = word & 127;
+              place = word >> 8;
+              const vy = place * normalWidth[layer];
+              if (Math.abs(place) >= normalInside[layer]) {
+                held[0] = vx;
+                held[1] = vy;
+                held[3] = layer;
+                held[4] = 1;
+                event = MOLECULE;
+                break;
+              }
+              word = random.word();
+              layer = word & 127;
+              place = word >> 8;
+              const vz = place * normalWidth[layer];
+              if (Math.abs(place) >= normalInside[layer]) {
+                held[0] = vx;
+                held[1] = vy;
+                held[2] = vz;
+                held[3] = layer;
+                held[4] = 2;
+                event = MOLECULE;
+                break;
+              }
+              gx -= vx * spread;
+              gy -= vy * spread;
+              gz -= vz * spread;
+            }
+            relative = gx * gx + gy * gy + gz * gz;
+          }
+          found = COLLISION;
+          bits[0] = relative;
+          let bin = (bitsAsWord[0] >> 16) - binBits;
+          if (bin < 0) bin = 0;
+          else if (bin > lastBin) bin = lastBin;
+          let draw = (random.word() >>> 0) * 2 ** -32 * bound;
+          if (draw >= limits[bin]) continue;
+          let at = 2 * bin * processes;
+          let p = 0;
+          // elastic scattering, the most likely one by far, has no threshold
+          const elastic = lines[at] + lines[at + 1] * relative;
+          if (draw >= elastic) {
+            draw -= elastic;
+            for (p = 1; p < processes; p++) {
+              at += 2;
+              if (relative <= thresholds[p]) continue;
+              const rate = lines[at] + lines[at + 1] * relative;
+              if (rate <= 0) continue;
+              if (draw < rate) break;
+              draw -= rate;
+            }
+            if (p === processes) continue;
+          }
+
+          collisions++;
+          counts[cell * processes + p] += weight;
+          const turns = p === 0 || kinds[p] === EXCITATION;
+          if (!turns || !isotropic) {
+            velocity[0] = gx;
+            velocity[1] = gy;
+            velocity[2] = gz;
+            held[0] = relative;
+            held[1] = p;
+            event = turns ? TURN : CHANGE;
+            break;
+          }
+          // relative speed after the collision, in a direction at random: G. Marsaglia, Choosing a point from the surface of a sphere, Ann. Math. Stat. 43,
+          // 645, 1972
+          let a: number;
+          let b: number;
+          let s: number;
+          do {
+            a = random.word() * 2 ** -31;
+            b = random.word() * 2 ** -31;
+            s = a * a + b * b;
+          } while (s >= 1);
+          const speed = Math.sqrt(p === 0 ? relative : Math.max(0, relative - thresholds[p] / share));
+          const f = 2 * speed * Math.sqrt(1 - s);
+          ux += share * (f * a - gx);
+          uy += share * (f * b - gy);
+          uz += share * (speed * (1 - 2 * s) - gz);
+          const before = energy;
+          energy = ux * ux + uy * uy + uz * uz;
+          if (p === 0) elasticLoss += weight * (before - energy);
+          else inelasticLoss += weight * (before - energy);
+          if (thinned && energy < slowBelow[cell]) {
+            event = SLOW;
+            break;
           }
         }
-        sumTime += dt;
-        sumWay += dx;
-        sumEnergy += dt * (energy + dt * acceleration * (ux + (acceleration * dt) / 3));
-        x += dx;
-        y += SPEED_OF_1_EV * uy * dt;
-        z += SPEED_OF_1_EV * uz * dt;
-        t += dt;
-        ux = ux1;
-        energy = energy1;
 
-        if (end !== COLLISION) {
-          if (end === SPAN_END) continue;
-          if (end === TIME_END) break;
+        if (event === TIME_END) break;
+        if (event === DRAW) {
+          held[0] = random.exponentialRest(held[0], held[1]) * mean;
+          found = DRAW;
+          continue;
+        }
+        if (event === MOLECULE) {
+          const axis = held[4];
+          for (let k = 0; k < 3; k++)
+            held[k] = spread * (k < axis ? held[k] : k === axis ? random.normalRest(held[3], held[k]) : random.normal());
+          found = MOLECULE;
+          continue;
+        }
+        if (event === FACES) {
+          const toLow = timeTo(low - x, ux, acceleration, false);
+          const toHigh = timeTo(high - x, ux, acceleration, true);
+          if (toLow < held[0] || toHigh < held[0]) {
+            const isLow = toLow < toHigh;
+            const dt = isLow ? toLow : toHigh;
+            const ux1 = ux + acceleration * dt;
+            held[0] = dt;
+            held[1] = (isLow ? low : high) - x;
+            held[2] = ux1;
+            held[3] = ux1 * ux1 + uy * uy + uz * uz;
+            held[4] = isLow ? LOW_FACE : HIGH_FACE;
+          }
+          found = FACES;
+          continue;
+        }
+        if (event === LOW_FACE || event === HIGH_FACE) {
           tally.time[cell] += weight * sumTime;
           tally.way[cell] += weight * sumWay;
           tally.energy[cell] += weight * sumEnergy;
           sumTime = 0;
           sumWay = 0;
           sumEnergy = 0;
-          if (end === LOW_FACE) {
+          if (event === LOW_FACE) {
             x = low;
             cell--;
           } else {
@@ -274,101 +465,26 @@ export class Flights {
           high = faces[cell + 1];
           acceleration = accelerations[cell];
           if (thinned && weight < 0.5 * wanted[cell]) {
-            if ((random.word() >>> 0) * 2 ** -32 * wanted[cell] >= weight) {
-              gone = true;
-              break;
-            }
+            gone = random.uniform() * wanted[cell] >= weight;
             weight = wanted[cell];
           }
           continue;
         }
-
-        // velocity of the molecule, and of the electron relative to it
-        trials++;
-        let vx = 0;
-        let vy = 0;
-        let vz = 0;
-        let gx = ux;
-        let gy = uy;
-        let gz = uz;
-        let relative = energy;
-        if (energy < warmBelow) {
-          word = random.word();
-          layer = word & 127;
-          place = word >> 8;
-          vx = place * normalWidth[layer];
-          vx = Math.abs(place) < normalInside[layer] ? vx * spread : random.normalRest(layer, vx) * spread;
-          word = random.word();
-          layer = word & 127;
-          place = word >> 8;
-          vy = place * normalWidth[layer];
-          vy = Math.abs(place) < normalInside[layer] ? vy * spread : random.normalRest(layer, vy) * spread;
-          word = random.word();
-          layer = word & 127;
-          place = word >> 8;
-          vz = place * normalWidth[layer];
-          vz = Math.abs(place) < normalInside[layer] ? vz * spread : random.normalRest(layer, vz) * spread;
-          gx -= vx;
-          gy -= vy;
-          gz -= vz;
-          relative = gx * gx + gy * gy + gz * gz;
-        }
-        bits[0] = relative;
-        let bin = (bitsAsWord[0] >> 16) - BIN_BITS;
-        if (bin < 0) bin = 0;
-        else if (bin >= BINS) bin = BINS - 1;
-        let draw = (random.word() >>> 0) * 2 ** -32 * bound;
-        if (draw >= limits[bin]) continue;
-        let p = 0;
-        for (let at = 2 * bin * processes; p < processes; p++, at += 2) {
-          if (relative <= thresholds[p]) continue;
-          const rate = lines[at] + lines[at + 1] * relative;
-          if (rate <= 0) continue;
-          if (draw < rate) break;
-          draw -= rate;
-        }
-        if (p === processes) continue;
-
-        collisions++;
-        tally.counts[cell * processes + p] += weight;
+        const p = held[1];
         const before = energy;
-        if (p === 0 || kinds[p] === EXCITATION) {
-          // relative speed after the collision, in a direction at random
-          const left = p === 0 ? relative : Math.max(0, relative - thresholds[p] / share);
-          let nx: number;
-          let ny: number;
-          let nz: number;
-          if (isotropic) {
-            // G. Marsaglia, Choosing a point from the surface of a sphere, Ann. Math. Stat. 43, 645, 1972
-            let a: number;
-            let b: number;
-            let s: number;
-            do {
-              a = random.word() * 2 ** -31;
-              b = random.word() * 2 ** -31;
-              s = a * a + b * b;
-            } while (s >= 1);
-            const f = 2 * Math.sqrt(1 - s);
-            nx = f * a;
-            ny = f * b;
-            nz = 1 - 2 * s;
-          } else {
-            velocity[0] = gx;
-            velocity[1] = gy;
-            velocity[2] = gz;
-            screenedDirection(velocity, random);
-            nx = velocity[0];
-            ny = velocity[1];
-            nz = velocity[2];
-          }
-          const speed = share * Math.sqrt(left);
-          ux = rest * ux + share * vx + speed * nx;
-          uy = rest * uy + share * vy + speed * ny;
-          uz = rest * uz + share * vz + speed * nz;
+        if (event === TURN) {
+          const speed = Math.sqrt(p === 0 ? held[0] : Math.max(0, held[0] - thresholds[p] / share));
+          const gx = velocity[0];
+          const gy = velocity[1];
+          const gz = velocity[2];
+          screenedDirection(velocity, random);
+          ux += share * (speed * velocity[0] - gx);
+          uy += share * (speed * velocity[1] - gy);
+          uz += share * (speed * velocity[2] - gz);
           energy = ux * ux + uy * uy + uz * uz;
           if (p === 0) elasticLoss += weight * (before - energy);
           else inelasticLoss += weight * (before - energy);
-        } else if (kinds[p] === IONISATION) {
+        } else if (event === CHANGE && kinds[p] === IONISATION) {
           if (electrons.count === electrons.capacity) {
             electrons.grow();
             ({ x: xs, y: ys, z: zs, ux: uxs, uy: uys, uz: uzs, time: times, weight: weights, cell: cells } = electrons);
@@ -384,15 +500,12 @@ export class Flights {
             electrons.keys[2 * born] = random.word();
             electrons.keys[2 * born + 1] = random.word();
           }
-          velocity[0] = gx;
-          velocity[1] = gy;
-          velocity[2] = gz;
           this.#ionise(electrons, born, thresholds[p], velocity);
           ux = velocity[0];
           uy = velocity[1];
           uz = velocity[2];
           energy = ux * ux + uy * uy + uz * uz;
-          inelasticLoss += weight * (before - Math.max(0, relative - thresholds[p]));
+          inelasticLoss += weight * (before - Math.max(0, held[0] - thresholds[p]));
           if (thinned && weight < 0.5 * wanted[cell]) {
             tally.time[cell] += weight * sumTime;
             tally.way[cell] += weight * sumWay;
@@ -400,22 +513,17 @@ export class Flights {
             sumTime = 0;
             sumWay = 0;
             sumEnergy = 0;
-            weights[born] = (random.word() >>> 0) * 2 ** -32 * wanted[cell] < weight ? wanted[cell] : 0;
-            if ((random.word() >>> 0) * 2 ** -32 * wanted[cell] >= weight) {
-              gone = true;
-              break;
-            }
+            weights[born] = random.uniform() * wanted[cell] < weight ? wanted[cell] : 0;
+            gone = random.uniform() * wanted[cell] >= weight;
             weight = wanted[cell];
           }
-        } else {
+        } else if (event === CHANGE) {
           inelasticLoss += weight * before;
           gone = true;
-          break;
         }
-        if (thinned && energy < slowBelow[cell]) {
+        if (!gone && thinned && energy < slowBelow[cell]) {
           tally.slow[cell] += weight;
           gone = true;
-          break;
         }
       }
 

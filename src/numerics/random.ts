@@ -12,10 +12,11 @@ const { inside: normalInside, width: normalWidth } = normalLayers;
  *  Sources: J. K. Salmon et al., Parallel random numbers: as easy as 1, 2, 3, SC11, 2011; D. Blackman and S. Vigna, Scrambled linear pseudorandom
  *  number generators, ACM Trans. Math. Softw. 47, 36, 2021; both with their authors' test vectors (from memory, H). */
 export class Random {
-  #a = 0;
-  #b = 0;
-  #c = 0;
-  #d = 0;
+  // Not #a: code that reads such names is longer, and seven times `word` is then more than the compiler puts in the place of calls in one loop.
+  private a = 0;
+  private b = 0;
+  private c = 0;
+  private d = 0;
 
   /** @param seed     whole number from 0 to 2⁵³ − 1
    *  @param streams  up to four whole numbers below 2³² that tell this stream from others of the same seed */
@@ -34,26 +35,26 @@ export class Random {
 
   /** Sets the four words of state, not all of them 0. */
   start(a: number, b: number, c: number, d: number): void {
-    this.#a = a | 0;
-    this.#b = b | 0;
-    this.#c = c | 0;
-    this.#d = d | 0;
-    if ((this.#a | this.#b | this.#c | this.#d) === 0) this.#a = 1; // the one state that it never leaves
+    this.a = a | 0;
+    this.b = b | 0;
+    this.c = c | 0;
+    this.d = d | 0;
+    if ((this.a | this.b | this.c | this.d) === 0) this.a = 1; // the one state that it never leaves
   }
 
   /** 32 random bits as a signed whole number. */
   word(): number {
-    const a = this.#a;
-    const d = this.#d;
+    const a = this.a;
+    const d = this.d;
     const sum = (a + d) | 0;
     const word = (((sum << 7) | (sum >>> 25)) + a) | 0;
-    const b = this.#b;
-    const c = this.#c ^ a;
+    const b = this.b;
+    const c = this.c ^ a;
     const e = d ^ b;
-    this.#b = b ^ c;
-    this.#a = a ^ e;
-    this.#c = c ^ (b << 9);
-    this.#d = (e << 11) | (e >>> 21);
+    this.b = b ^ c;
+    this.a = a ^ e;
+    this.c = c ^ (b << 9);
+    this.d = (e << 11) | (e >>> 21);
     return word;
   }
 
