@@ -198,8 +198,13 @@ export function coarseThreshold(
 ): { readonly rise: Passing | null; readonly fall: Passing | null } {
   const { table, distance, emissionEnergy, seed } = gap;
   const logFeedback = (voltage: number): number => {
-    const request = { table, field: uniformGap(voltage, distance, CELLS), emissionEnergy, particles: ROUGH, seed };
-    return Math.log(Math.max(NO_IONS, emission(voltage) * (gapYieldOf(request)?.ionsPerElectron.value ?? 0)));
+    const field = uniformGap(voltage, distance, CELLS);
+    const by = (particles: number): number => {
+      const found = gapYieldOf({ table, field, emissionEnergy, particles, seed });
+      return Math.log(Math.max(NO_IONS, emission(voltage) * (found?.ionsPerElectron.value ?? 0)));
+    };
+    const rough = by(ROUGH);
+    return Math.abs(rough) < DOUBTFUL ? by(MORE) : rough;
   };
   let rise: Passing | null = null;
   let [before, logBefore] = [from, Number.NaN];
@@ -219,6 +224,8 @@ export function coarseThreshold(
   return { rise, fall: null };
 }
 
-/** steps of the coarse search, and electrons at each */
+/** steps of the coarse search; electrons at each; |ln q| below which that is too few to say on which side of 1 it is; and then */
 const COARSE = 1.2;
 const ROUGH = 128;
+const DOUBTFUL = 0.3;
+const MORE = 1024;

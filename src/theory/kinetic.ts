@@ -40,7 +40,9 @@ export class KineticGap {
     const gap = { table, distance, emissionEnergy, particles, seed, reference };
     const least = table.thresholds.reduce((low, energy, p) => (table.kinds[p] === 'ionisation' ? Math.min(low, energy) : low), 1e9);
     const emission = (voltage: number): number => this.emissionAt(voltage);
-    const { rise, fall } = coarseThreshold(gap, emission, 1.2 * least, HIGHEST * this.#column, LEFT_BRANCH * this.#column);
+    // particles know of no E/N beyond which they mean nothing, but of energies beyond which cross-sections are not known
+    const highest = Math.max(HIGHEST * this.#column, table.set.range.to);
+    const { rise, fall } = coarseThreshold(gap, emission, 1.2 * least, highest, LEFT_BRANCH * this.#column);
     this.#rise = rise;
     this.#fall = fall;
     const attention = rise === null ? { from: 0, to: 0 } : { from: rise.guess / AROUND, to: rise.guess * AROUND };
