@@ -98,7 +98,14 @@ describe('electrons of a gap', () => {
   });
 
   test('are the same whatever the order of batches; errors shrink with their number', () => {
-    const request = { table: oneTorr, field: uniformGap(250, 0.005, 8), emissionEnergy: 2, particles: 800, seed: 3, expected: new Float64Array(8).fill(2) };
+    const request = {
+      table: oneTorr,
+      field: uniformGap(250, 0.005, 8),
+      emissionEnergy: 2,
+      particles: 800,
+      seed: 3,
+      expected: new Float64Array(8).fill(2),
+    };
     const backwards = Array.from({ length: 16 }, (_, k) => gapBatchOf(request, 15 - k)).reverse();
     const once = yieldOf(request);
     expect(combineGap(backwards)).toEqual(once);
