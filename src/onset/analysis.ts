@@ -195,7 +195,7 @@ export class Analysis {
       largestGapVoltage: this.#openGap.largestGapVoltage,
       stillCharging: final.stop === 'until' && this.#openGap.charging(),
       polarities: polaritiesOf(settings, this.#openGap.highest, this.#openGap.lowest),
-      thresholdOutsideData: x !== null && range !== null && (x < range.from || x > range.to),
+      thresholdOutsideData: settings.electrons === undefined && x !== null && range !== null && (x < range.from || x > range.to),
       overvoltage: theory.overvoltage,
       breakdownUncertainty: settings.gas.breakdownUncertainty,
     };

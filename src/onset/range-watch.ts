@@ -2,6 +2,8 @@ import type { GasCoefficients } from '../gases/gas.ts';
 import type { GapSystem } from '../march/gap-system.ts';
 import type { Observer, Step } from '../march/march.ts';
 
+const IONS: ReadonlySet<string> = new Set(['ionMobility', 'ionEnergy']);
+
 /** How much of the ionisation of a run was made at fields outside the validity of each coefficient. */
 export class RangeWatch implements Observer {
   readonly #system: GapSystem;
@@ -13,7 +15,10 @@ export class RangeWatch implements Observer {
 
   constructor(system: GapSystem, coefficients: GasCoefficients) {
     this.#system = system;
-    const ranged = Object.entries(coefficients).flatMap(([name, c]) => (c?.range ? [{ name, range: c.range }] : []));
+    // electrons that ionise as particles use none of the electrons' coefficients
+    const used =
+      system.equations.fast === null ? Object.entries(coefficients) : Object.entries(coefficients).filter(([name]) => IONS.has(name));
+    const ranged = used.flatMap(([name, c]) => (c?.range ? [{ name, range: c.range }] : []));
     this.#names = ranged.map((r) => r.name);
     this.#from = Float64Array.from(ranged, (r) => r.range.from * (1 - 1e-9));
     this.#to = Float64Array.from(ranged, (r) => r.range.to * (1 + 1e-9));
@@ -23,11 +28,12 @@ export class RangeWatch implements Observer {
   look(step: Step): boolean {
     const span = step.end.time - step.start.time;
     if (!(span > 0)) return false;
-    const { at } = this.#system.equations;
+    const { at, fast } = this.#system.equations;
     const { faceWeights, cells } = this.#system.grid;
     const electrons = at.flux[0];
     for (let f = 0; f <= cells; f++) {
-      const made = at.alpha[f] * Math.abs(electrons[f]) * faceWeights[f] * span;
+      const rate = fast === null ? at.alpha[f] * Math.abs(electrons[f]) : at.emitted * at.growth * fast.made[Math.min(f, cells - 1)];
+      const made = rate * faceWeights[f] * span;
       if (!(made > 0)) continue;
       this.#made += made;
       const x = at.reducedField[f];

@@ -98,6 +98,8 @@ export class SnapshotWatch implements Observer {
       faceMeans(equations.at.flux[k], this.#flux[k]);
     }
     profiles(grid, end.y, layout.field, equations.at.alpha, equations.at.flux[0], this.#cells);
+    const { fast, at } = equations;
+    if (fast !== null) for (let i = 0; i < layout.cells; i++) this.#cells.ionisationRate[i] = at.emitted * at.growth * fast.made[i];
     const negative = this.#density.length > 2 ? { negativeIonDensity: this.#density[2], negativeIonFlux: this.#flux[2] } : {};
     this.#take({
       time: end.time,

@@ -7,6 +7,7 @@ import { makeLayout } from '../../src/gap/layout.ts';
 import { collisionsOf } from '../../src/kinetics/of-case.ts';
 import { FastElectrons } from '../../src/laws/fast-electrons.ts';
 import { type ParticleSettings, Particles } from '../../src/march/particles.ts';
+import { prognosisCautions } from '../../src/onset/prognosis.ts';
 import { simulateNow } from '../../src/simulate.ts';
 
 function caseOf(overrides: readonly string[] = []): Case {
@@ -122,5 +123,24 @@ describe('a run with particles', () => {
     expect(kinetics?.breakdown_voltage_V).toBe(theory.static_breakdown_voltage_V);
     expect(kinetics?.emitted_per_ion).toBe(0.1);
     expect(kinetics?.net_per_ion).toBeCloseTo(0.1 * (1 - (kinetics?.returned_fraction ?? 0)), 1);
+  });
+
+  it('records the ionisation that particles make, and warns of energies beyond the cross-sections', () => {
+    let ions = 0;
+    let carried = 0;
+    simulateNow(caseOf(), {
+      snapshot: (s) => {
+        ions = s.ionisationRate.reduce((sum, rate) => sum + rate, 0);
+        carried = s.electronFlux[s.electronFlux.length - 1];
+      },
+    });
+    expect(ions).toBeGreaterThan(0);
+    expect(carried).toBeGreaterThan(0);
+    const codes = (voltage: string): string[] =>
+      prognosisCautions(caseOf([`supply.voltage.step=${voltage}`, 'gas.pressure=0.02 Torr']), [])
+        .filter(({ code }) => code === 'outside-range')
+        .map(({ text }) => text);
+    expect(codes('900 V')).toEqual([]);
+    expect(codes('1.5 kV')[0]).toContain('cross-sections are known up to 1000 eV');
   });
 });

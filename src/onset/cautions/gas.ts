@@ -1,5 +1,6 @@
 import { penningPairs } from '../../gases/levels.ts';
 import { penningText } from '../../gases/mixture.ts';
+import { collisionsOf } from '../../kinetics/of-case.ts';
 import { TOWNSEND } from '../../units/constants.ts';
 import { metres, percent, volts } from '../words.ts';
 import type { Evidence, Raise } from './evidence.ts';
@@ -47,7 +48,7 @@ export function ofGas(evidence: Evidence, raise: Raise): void {
   }
 }
 
-function ofData({ settings, prospects, found }: Evidence, raise: Raise): void {
+function ofData({ settings, voltage, prospects, found }: Evidence, raise: Raise): void {
   const outside = (found?.outside ?? []).filter((o) => o.share > OUTSIDE_SHARE);
   if (outside.length > 0) {
     const [worst, ...others] = outside;
@@ -57,6 +58,16 @@ function ofData({ settings, prospects, found }: Evidence, raise: Raise): void {
       `${percent(worst.share)} of the ionisation was made at E/N outside the data of ${words(worst.name)}${more}: extrapolated there.`,
       worst.share,
     );
+    return;
+  }
+  if (settings.electrons !== undefined) {
+    const { range } = collisionsOf(settings).set;
+    if (Math.abs(voltage) > range.to)
+      raise(
+        'outside-range',
+        `Electrons may reach ${volts(Math.abs(voltage)).replace(/V$/, 'eV')}, cross-sections are known up to ${range.to} eV: extrapolated beyond.`,
+        Math.abs(voltage),
+      );
     return;
   }
   const { breakdownReducedField: x } = prospects;
