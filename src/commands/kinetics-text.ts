@@ -48,7 +48,7 @@ function within(value: number, error: number, unit: string): string {
 /** The same in one sentence, beside a run. */
 export function kineticSentence(k: Kinetics): string {
   const local = k.local_field_breakdown_voltage_V === null ? 'none' : quantity(k.local_field_breakdown_voltage_V, 'V');
-  return `Electrons as particles: V_s ${thresholdText(k)} (local field with the net yield ${quantity(k.net_per_ion, '')}: ${local}), q ${within(k.feedback, k.feedback_error, '')}; the given yield counts electrons emitted, of which ${quantity(k.returned_fraction, '')} each fall back. Growth and lag carry the error of q − 1.`;
+  return `Electrons as particles: V_s ${thresholdText(k)} (local field with the net yield ${quantity(k.net_per_ion, '')}: ${local}), q ${within(k.feedback, k.feedback_error, '')}; the given yield counts electrons emitted, of which ${quantity(k.returned_fraction, '')} per electron emitted fall back. Growth and lag carry the error of q − 1.`;
 }
 
 /** The breakdown curve as a table. */

@@ -4,7 +4,7 @@ import { fileURLToPath } from 'node:url';
 
 const json = process.argv.includes('--json');
 const figures = {};
-for (const name of ['bench', 'scan', 'window', 'swarm', 'report']) {
+for (const name of ['bench', 'scan', 'window', 'swarm', 'kinetic', 'report']) {
   const path = fileURLToPath(new URL(`${name}.mjs`, import.meta.url));
   const { status, stdout } = spawnSync(process.execPath, [path, ...process.argv.slice(2)], {
     stdio: ['inherit', json ? 'pipe' : 'inherit', 'inherit'],
@@ -13,7 +13,7 @@ for (const name of ['bench', 'scan', 'window', 'swarm', 'report']) {
   if (status !== 0) process.exitCode = 1;
   else if (json) {
     const record = JSON.parse(stdout.toString());
-    // scans, windows and swarms speak of several walls: each under its own name
+    // scans, windows, swarms and kinetic cases speak of several walls: each under its own name
     Object.assign(figures, name === 'bench' || name === 'report' ? record : { [name]: record });
   }
 }
