@@ -1,4 +1,4 @@
-import { closeSync, fsyncSync, openSync, realpathSync, renameSync, rmSync, statSync } from 'node:fs';
+import { closeSync, fsyncSync, openSync, readSync, realpathSync, renameSync, rmSync, statSync } from 'node:fs';
 import { basename, dirname, resolve } from 'node:path';
 import { ResultFileError, resultFileError } from './errors.ts';
 import type { Lock } from './lock.ts';
@@ -115,12 +115,30 @@ function checkReplaceable(path: string, target: string): void {
 /** A part file whose writer died is written over; a file that only bears its name is not. */
 function checkPart(partPath: string): void {
   const status = statSync(partPath, { throwIfNoEntry: false });
-  if (!status || (status.isFile() && (status.size === 0 || isGapwakeResult(partPath)))) return;
+  if (!status || (status.isFile() && (status.size === 0 || isGapwakeResult(partPath) || beganAsResult(partPath)))) return;
   throw new ResultFileError(
     'foreign',
     partPath,
     'is in the way and is not an unfinished gapwake result; choose another output name or move it',
   );
+}
+
+/** What an HDF5 file begins with, and the size below which it holds nothing yet. */
+const SIGNATURE = '\x89HDF\r\n\x1a\n';
+const NOTHING_YET = 256;
+
+/** Whether a file that no reader understands was to be a result: its writer was killed while its parts went to the disk one by one. The name of the format is
+ *  written first, near the beginning, and stays there. */
+function beganAsResult(path: string): boolean {
+  const file = openSync(path, 'r');
+  try {
+    const head = Buffer.alloc(1024);
+    const length = readSync(file, head, 0, head.length, 0);
+    const text = head.toString('latin1', 0, length);
+    return text.startsWith(SIGNATURE) && (length < NOTHING_YET || /gapwake\.[a-z]+\/[0-9]/.test(text));
+  } finally {
+    closeSync(file);
+  }
 }
 
 function syncToDisk(path: string): void {

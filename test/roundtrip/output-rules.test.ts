@@ -1,10 +1,22 @@
 import { spawn, spawnSync } from 'node:child_process';
+import { createHash } from 'node:crypto';
 import { once } from 'node:events';
-import { chmodSync, lstatSync, mkdirSync, readdirSync, readFileSync, symlinkSync, utimesSync, writeFileSync } from 'node:fs';
+import fs, {
+  chmodSync,
+  existsSync,
+  lstatSync,
+  mkdirSync,
+  readdirSync,
+  readFileSync,
+  symlinkSync,
+  utimesSync,
+  writeFileSync,
+} from 'node:fs';
 import { join } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { describe, expect, test } from 'vitest';
 import { createHdf5 } from '../../src/results/hdf5.ts';
+import { claimOutput } from '../../src/results/output.ts';
 import { isGapwakeResult, readResultFormat, readRunFile } from '../../src/results/read.ts';
 import type { RunWriter } from '../../src/results/write.ts';
 import { openRunFile } from '../../src/results/write.ts';
@@ -248,6 +260,42 @@ describe('one writer', () => {
     await expect(open(join(place, 'run.h5'))).rejects.toEqual(error('foreign', path, /is in the way/));
     expect(readdirSync(place)).toEqual([name]);
     expect(readFileSync(path, 'utf8')).toBe('packages:\n  - one 1.2.3\n');
+  });
+
+  test('an HDF5 file of another program is no part file', async () => {
+    const place = folder();
+    await writeOther(join(place, 'run.part.h5'), { program: 'another', note: 'x'.repeat(300) });
+    await expect(open(join(place, 'run.h5'))).rejects.toEqual(error('foreign', join(place, 'run.part.h5'), /is in the way/));
+  });
+
+  test('a part file is recognised after each of the writes that bring it to the disk: a kill may come between any two', async () => {
+    const place = folder();
+    const part = join(place, 'run.part.h5');
+    const states = new Map<string, Buffer>();
+    // the library writes through this object
+    const { writeSync } = fs;
+    fs.writeSync = ((...given: Parameters<typeof writeSync>): number => {
+      const written = writeSync(...given);
+      if (existsSync(part)) {
+        const state = readFileSync(part);
+        states.set(createHash('sha256').update(state).digest('hex'), state);
+      }
+      return written;
+    }) as typeof writeSync;
+    try {
+      await writeRun(join(place, 'run.h5'), 40);
+    } finally {
+      fs.writeSync = writeSync;
+    }
+    expect(states.size).toBeGreaterThan(20);
+    let unreadable = 0;
+    for (const state of states.values()) {
+      writeFileSync(part, state);
+      if (!isGapwakeResult(part)) unreadable++;
+      claimOutput(join(place, 'run.h5')).discard();
+    }
+    // the states this is about are among them
+    expect(unreadable).toBeGreaterThan(1);
   });
 
   test.each([0, 300])('what a process killed after %i snapshots left is recognised and replaced', async (count) => {
