@@ -177,6 +177,70 @@ describe('energy', () => {
   });
 });
 
+describe('thresholds', () => {
+  test('a process that sets in with a step does not happen below it, also within one bin of energy, and takes its energy above', () => {
+    const step: CrossSectionSet = {
+      ...argon,
+      processes: [
+        { kind: 'elastic', name: 'elastic', threshold: 0, crossSection: () => 1e-21 },
+        { kind: 'excitation', name: 'step', threshold: 11.53, crossSection: (e) => (e > 11.53 ? 1e-19 : 0) },
+      ],
+    };
+    const table = collisionTable(step, { density, temperature: 0 }, 'isotropic');
+    for (const [energy, happens] of [
+      [11.529, false],
+      [11.531, true],
+    ] as const) {
+      const random = new Random(10);
+      const engine = new Flights(table, uniformForce(0), random);
+      const electrons = electronsOf(400, energy, random);
+      engine.run(electrons, 2e-9);
+      // but for those that lost a little by recoil before
+      if (happens) expect(engine.tally.counts[1]).toBeGreaterThan(350);
+      else {
+        expect(engine.tally.counts[1]).toBe(0);
+        expect(engine.tally.counts[0]).toBeGreaterThan(10);
+      }
+      let lowest = energy;
+      for (let i = 0; i < electrons.count; i++) lowest = Math.min(lowest, energyOf(electrons, i));
+      expect(lowest > 11).toBe(!happens);
+    }
+  });
+});
+
+describe('slow electrons', () => {
+  test.each([['isotropic' as const], ['screened-coulomb' as const]])(
+    'are given over after the collision that makes them slow, all of them and no other (%s)',
+    (angular) => {
+      const table = collisionTable(
+        elasticGas(20 * ELECTRON_MASS, () => 1e-19),
+        { density, temperature: 0 },
+        angular,
+      );
+      const thinning = { slowBelow: Float64Array.of(0.5), weight: Float64Array.of(1) };
+      let before = 0;
+      for (const until of [4e-9, 6e-9, 9e-9, 1e-6]) {
+        const random = new Random(11);
+        const engine = new Flights(table, uniformForce(0), random, thinning);
+        const electrons = electronsOf(300, 1, random);
+        for (let i = 0; i < 300; i++) electrons.keys[2 * i] = i;
+        engine.run(electrons, until);
+        let left = 0;
+        for (let i = 0; i < 300; i++) {
+          if (electrons.weight[i] === 0) continue;
+          left++;
+          expect(energyOf(electrons, i)).toBeGreaterThanOrEqual(0.5);
+        }
+        const [slow] = engine.tally.slow;
+        expect(slow + left).toBe(300);
+        expect(slow).toBeGreaterThan(before);
+        before = slow;
+      }
+      expect(before).toBe(300);
+    },
+  );
+});
+
 describe('cells', () => {
   const empty = collisionTable(
     elasticGas(4 * ATOMIC_MASS, () => 1e-40),
