@@ -201,7 +201,7 @@ describe('thresholds', () => {
         expect(engine.tally.counts[1]).toBe(0);
         expect(engine.tally.counts[0]).toBeGreaterThan(10);
       }
-      let lowest = energy;
+      let lowest: number = energy;
       for (let i = 0; i < electrons.count; i++) lowest = Math.min(lowest, energyOf(electrons, i));
       expect(lowest > 11).toBe(!happens);
     }
