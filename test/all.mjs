@@ -20,13 +20,14 @@ function check(name, command, args) {
   else failed++;
 }
 
-function tests(project) {
+function tests(project, workers) {
   const report = join(folder, `${project}.json`);
   const clean = run(`tests: ${project}`, 'npx', [
     'vitest',
     'run',
     '--project',
     project,
+    `--maxWorkers=${workers}`,
     '--reporter=default',
     '--reporter=json',
     `--outputFile.json=${report}`,
@@ -54,8 +55,9 @@ check('lint', 'npx', ['biome', 'check', '.']);
 check('layers', 'npx', ['depcruise', '--config', '.dependency-cruiser.cjs', 'src']);
 check('unused code', 'npx', ['knip']);
 check('build', 'npm', ['run', '--silent', 'build']);
-tests('fast');
-tests('long');
+tests('fast', 2);
+// these start programs and workers of their own
+tests('long', 1);
 rmSync(folder, { recursive: true, force: true });
 console.log(`\n${passed} passed, ${failed} failed`);
 process.exitCode = failed === 0 ? 0 : 1;
