@@ -187,6 +187,7 @@ export function prospects(settings: Case, voltage: number): Prospects {
   const breakdown = limits.threshold.breakdown;
   const breakdownReducedField = breakdown === null ? null : breakdown / (gas.density * gap.spacing);
   const probability = breakdownProbability(here.feedback);
+  let fall: { readonly layer: Prospects['normalCathodeFall'] } | undefined;
   return {
     breakdownReducedField,
     lowestPath: limits.lowest?.path ?? null,
@@ -198,7 +199,11 @@ export function prospects(settings: Case, voltage: number): Prospects {
     streamerIntegral: streamerIntegral(here.alpha, here.eta, gap.spacing),
     timeToSpaceCharge: settings.electrons === undefined ? timeToSpaceCharge(settings, here) : null,
     lowCurrentSlope: breakdownReducedField === null ? null : lowCurrentSlope(multiplication.ionisation, breakdownReducedField),
-    normalCathodeFall: normalFall(settings, here),
+    // a search of its own, which few ask for
+    get normalCathodeFall() {
+      fall ??= { layer: normalFall(settings, here) };
+      return fall.layer;
+    },
   };
 }
 

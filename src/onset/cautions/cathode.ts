@@ -13,7 +13,7 @@ export function ofCathode(evidence: Evidence, raise: Raise): void {
       found.largestCurrent,
     );
   }
-  const normal = prospects.normalCathodeFall?.currentDensity ?? 0;
+  const normal = found?.steadyGlow ? (prospects.normalCathodeFall?.currentDensity ?? 0) : 0;
   if (found?.steadyGlow && found.currentDensity < normal) {
     raise(
       'partly-covered',
