@@ -1,14 +1,5 @@
-import { ATOMIC_MASS, type CrossSectionSet, tabulated } from './cross-sections.ts';
-
-type Row = readonly [energy: number, value: number];
-
-function rows(threshold: number, list: readonly Row[]): (energy: number) => number {
-  return tabulated(
-    list.map(([energy]) => energy),
-    list.map(([, value]) => value * 1e-20),
-    threshold,
-  );
-}
+import { ATOMIC_MASS, type CrossSectionSet } from './cross-sections.ts';
+import { fromRows } from './rows.ts';
 
 /** Constants of Lotz for helium, 4.0e-14 cm² eV², 0.75 and 0.46, two electrons. */
 const LOTZ = { a: 4.0e-18, b: 0.75, c: 0.46, electrons: 2, binding: 24.587 };
@@ -24,7 +15,7 @@ export const helium: CrossSectionSet = {
       name: 'elastic',
       threshold: 0,
       // up to 6 eV Crompton, Elford and Robertson; above rounded by us
-      crossSection: rows(0, [
+      crossSection: fromRows(0, [
         [0.001, 4.97],
         [0.008, 5.18],
         [0.01, 5.21],
@@ -66,8 +57,7 @@ export const helium: CrossSectionSet = {
       kind: 'excitation',
       name: 'all excitation',
       threshold: 19.82,
-      crossSection: rows(19.82, [
-        [19.82, 0],
+      crossSection: fromRows(19.82, [
         [22, 0.035],
         [25, 0.07],
         [30, 0.1],
