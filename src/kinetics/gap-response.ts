@@ -199,12 +199,13 @@ export function coarseThreshold(
   const { table, distance, emissionEnergy, seed } = gap;
   const logFeedback = (voltage: number): number => {
     const field = uniformGap(voltage, distance, CELLS);
-    const by = (particles: number): number => {
+    const by = (particles: number): { readonly log: number; readonly cost: number } => {
       const found = gapYieldOf({ table, field, emissionEnergy, particles, seed });
-      return Math.log(Math.max(NO_IONS, emission(voltage) * (found?.ionsPerElectron.value ?? 0)));
+      const q = emission(voltage) * (found?.ionsPerElectron.value ?? 0);
+      return { log: Math.log(Math.max(NO_IONS, q)), cost: (found?.collisions ?? 0) / particles };
     };
     const rough = by(ROUGH);
-    return Math.abs(rough) < DOUBTFUL ? by(MORE) : rough;
+    return Math.abs(rough.log) < DOUBTFUL || rough.cost < CHEAP ? by(MORE).log : rough.log;
   };
   let rise: Passing | null = null;
   let [before, logBefore] = [from, Number.NaN];
@@ -224,8 +225,10 @@ export function coarseThreshold(
   return { rise, fall: null };
 }
 
-/** steps of the coarse search; electrons at each; |ln q| below which that is too few to say on which side of 1 it is; and then */
+/** steps of the coarse search, and electrons at each */
 const COARSE = 1.2;
-const ROUGH = 128;
-const DOUBTFUL = 0.3;
+const ROUGH = 64;
+/** |ln q| below which that is too few to say on which side of 1 it is, and collisions of an electron below which more cost next to nothing; and then */
+const DOUBTFUL = 0.4;
+const CHEAP = 300;
 const MORE = 1024;

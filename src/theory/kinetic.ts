@@ -1,9 +1,8 @@
 import type { Case, KineticElectrons } from '../case.ts';
 import { curveOf } from '../gases/curves.ts';
 import { coarseThreshold, GapResponse, type Passing } from '../kinetics/gap-response.ts';
-import { uniformGap } from '../kinetics/gap-yield.ts';
 import { collisionsOf } from '../kinetics/of-case.ts';
-import { seedChanceOf } from '../kinetics/seed-chance.ts';
+import { type SingleElectrons, singleElectrons } from '../kinetics/single-electrons.ts';
 import type { Measured } from '../kinetics/statistics.ts';
 import { rootBetween } from '../numerics/roots.ts';
 import { yieldAt } from '../surfaces/yield-law.ts';
@@ -23,6 +22,7 @@ export class KineticGap {
   readonly #fall: Passing | null;
   readonly #polarity: number;
   #threshold: Threshold | null = null;
+  readonly #chances = new Map<number, SingleElectrons>();
 
   /** @param polarity  positive: the left wall is the cathode
    *  @param distance  length of the path [m]
@@ -112,28 +112,19 @@ export class KineticGap {
     };
   }
 
-  /** What becomes of single electrons from the cathode at a voltage [V]. */
-  chance(
-    voltage: number,
-  ): Pick<Kinetics, 'breakdown_probability' | 'breakdown_probability_error' | 'silent_fraction' | 'silent_fraction_error'> {
+  /** What becomes of single electrons from the cathode at a voltage [V]; null where nothing is applied or an ion frees none, or more than one. */
+  chance(voltage: number): SingleElectrons | null {
     const emission = this.emissionAt(voltage);
-    const { table, distance, emissionEnergy, seed } = this.response.gap;
     const applied = Math.abs(voltage);
-    if (!(applied > 0 && emission > 0 && emission <= 1)) {
-      return { breakdown_probability: null, breakdown_probability_error: null, silent_fraction: null, silent_fraction_error: null };
-    }
-    const found = seedChanceOf(
-      { table, field: uniformGap(applied, distance, 1), emissionEnergy, electrons: SINGLE_ELECTRONS, seed },
-      emission,
-    );
-    if (found === null) throw new Error('interrupted');
-    const silent = found.avalanches.sizes.reduce((count, n) => (n === 0 ? count + 1 : count), 0) / SINGLE_ELECTRONS;
-    return {
-      breakdown_probability: found.chance.probability.value,
-      breakdown_probability_error: found.chance.probability.error,
-      silent_fraction: silent,
-      silent_fraction_error: Math.sqrt((silent * (1 - silent)) / SINGLE_ELECTRONS),
-    };
+    if (!(applied > 0 && emission > 0 && emission <= 1)) return null;
+    const known = this.#chances.get(applied) ?? singleElectrons(this.response.gap, applied, emission);
+    this.#chances.set(applied, known);
+    return known;
+  }
+
+  /** Takes over what was found at a voltage [V] elsewhere. */
+  adoptChance(voltage: number, found: SingleElectrons): void {
+    this.#chances.set(Math.abs(voltage), found);
   }
 
   get threshold(): Threshold {
@@ -177,8 +168,6 @@ export class KineticGap {
   }
 }
 
-/** followed one by one for their chance of breakdown */
-const SINGLE_ELECTRONS = 1000;
 /** share of a voltage up and down over which a slope is taken */
 const SLOPE_STEP = 0.03;
 /** E/N [V m²] up to which thresholds are looked for, and from which on feedback may fall with the voltage */
@@ -258,6 +247,7 @@ export function kineticsOf(settings: Case, voltage: number): Kinetics | null {
   const { ionsPerElectron, returned } = gap.response.at(Math.abs(voltage));
   const feedback = gap.feedback(voltage);
   const { breakdown } = gap.threshold;
+  const chance = gap.chance(voltage);
   const at = breakdown ?? voltage;
   const emitted = gap.emissionAt(at);
   const share = 1 - gap.response.at(Math.abs(at)).returned.value;
@@ -277,7 +267,10 @@ export function kineticsOf(settings: Case, voltage: number): Kinetics | null {
     returned_fraction_error: returned.error,
     feedback: feedback.value,
     feedback_error: feedback.error,
-    ...gap.chance(voltage),
+    breakdown_probability: chance?.breakdown.value ?? null,
+    breakdown_probability_error: chance?.breakdown.error ?? null,
+    silent_fraction: chance?.silent.value ?? null,
+    silent_fraction_error: chance?.silent.error ?? null,
     local_field_feedback: uniformFeedback(net, Math.abs(voltage) / column, column),
     breakdown_voltage_V: breakdown,
     breakdown_voltage_V_error: breakdown === null ? null : gap.errorAt(breakdown),

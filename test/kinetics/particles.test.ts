@@ -1,4 +1,4 @@
-/** Electrons as particles in a run: when they are looked at again, what is conserved, and that the same seed gives the same run. */
+/** When electrons are looked at again as particles during a run. */
 import { describe, expect, it } from 'vitest';
 import type { Case } from '../../src/case.ts';
 import { readCase } from '../../src/casefile/index.ts';
@@ -7,8 +7,6 @@ import { makeLayout } from '../../src/gap/layout.ts';
 import { collisionsOf } from '../../src/kinetics/of-case.ts';
 import { FastElectrons } from '../../src/laws/fast-electrons.ts';
 import { type ParticleSettings, Particles } from '../../src/march/particles.ts';
-import { prognosisCautions } from '../../src/onset/prognosis.ts';
-import { simulateNow } from '../../src/simulate.ts';
 
 function caseOf(overrides: readonly string[] = []): Case {
   const text = `
@@ -99,48 +97,5 @@ describe('looks at particles', () => {
     looks.look(0, state(0, 0));
     expect(looks.look(1e-6, state(13, 0))).toBe(false);
     expect(looks.look(1e-6, state(16, 0))).toBe(true);
-  });
-});
-
-describe('a run with particles', () => {
-  const outcome = simulateNow(caseOf());
-
-  it('conserves charge and energy to rounding', () => {
-    expect(outcome.numerics.charge_defect).toBeLessThan(1e-12);
-    const { source_J, gap_J } = outcome.energy;
-    expect(source_J).toBeGreaterThan(gap_J);
-  });
-
-  it('is the same for the same seed, and another for another', () => {
-    const wall = ({ numerics, ...rest }: ReturnType<typeof simulateNow>): unknown => ({ ...rest, numerics: { ...numerics, wall_s: 0 } });
-    expect(wall(simulateNow(caseOf()))).toEqual(wall(outcome));
-    const other = simulateNow(caseOf(['electrons.seed=2']));
-    expect(other.kinetics?.breakdown_voltage_V).not.toBe(outcome.kinetics?.breakdown_voltage_V);
-  });
-
-  it('says what particles found beside what the local field does with the net yield', () => {
-    const { kinetics, theory } = outcome;
-    expect(kinetics?.breakdown_voltage_V).toBe(theory.static_breakdown_voltage_V);
-    expect(kinetics?.emitted_per_ion).toBe(0.1);
-    expect(kinetics?.net_per_ion).toBeCloseTo(0.1 * (1 - (kinetics?.returned_fraction ?? 0)), 1);
-  });
-
-  it('records the ionisation that particles make, and warns of energies beyond the cross-sections', () => {
-    let ions = 0;
-    let carried = 0;
-    simulateNow(caseOf(), {
-      snapshot: (s) => {
-        ions = s.ionisationRate.reduce((sum, rate) => sum + rate, 0);
-        carried = s.electronFlux[s.electronFlux.length - 1];
-      },
-    });
-    expect(ions).toBeGreaterThan(0);
-    expect(carried).toBeGreaterThan(0);
-    const codes = (voltage: string): string[] =>
-      prognosisCautions(caseOf([`supply.voltage.step=${voltage}`, 'gas.pressure=0.02 Torr']), [])
-        .filter(({ code }) => code === 'outside-range')
-        .map(({ text }) => text);
-    expect(codes('900 V')).toEqual([]);
-    expect(codes('1.5 kV')[0]).toContain('cross-sections are known up to 1000 eV');
   });
 });
