@@ -25,6 +25,8 @@ export interface Bounds {
   readonly max?: number;
   /** completes "a length …" */
   readonly text: string;
+  /** in place of that of the dimension */
+  readonly example?: string;
 }
 
 /** A quantity that may be of several kinds: which one it was decides how it is converted. */
@@ -81,15 +83,20 @@ function refuse(ctx: z.RefinementCtx, message: string, params: IssueDetail): typ
   return z.NEVER;
 }
 
-function refuseQuantity(ctx: z.RefinementCtx, error: QuantityError, text: string | undefined): typeof z.NEVER {
-  const expected = text === undefined ? error.expected : error.expected.replace(/, e\.g\. /, ` ${text}, e.g. `);
+function refuseQuantity(ctx: z.RefinementCtx, error: QuantityError, bounds: Bounds | undefined): typeof z.NEVER {
+  const expected = withBounds(error.expected, bounds);
   return refuse(ctx, expected, { code: error.code, found: error.found, nearest: error.nearest, offset: error.column - 1 });
+}
+
+/** An expectation of a kind of quantity, with its bounds and their example. */
+function withBounds(expected: string, bounds: Bounds | undefined): string {
+  if (bounds === undefined) return expected;
+  return expected.replace(/, e\.g\. (.*)/, (_, example: string) => ` ${bounds.text}, e.g. ${bounds.example ?? example}`);
 }
 
 /** `a length above 0, e.g. 6 mm` */
 function wanted(dimensions: readonly DimensionName[], bounds: Bounds | undefined): string {
-  const text = expectation(dimensions);
-  return bounds ? text.replace(/, e\.g\. /, ` ${bounds.text}, e.g. `) : text;
+  return withBounds(expectation(dimensions), bounds);
 }
 
 /** A quantity of one kind; its value in SI. */
@@ -97,10 +104,10 @@ export function quantity(dimension: DimensionName, bounds?: Bounds): z.ZodType<n
   const expected = wanted([dimension], bounds);
   const schema = z
     .string({ error: () => expected })
-    .meta({ description: expected, examples: [DIMENSIONS[dimension].example] })
+    .meta({ description: expected, examples: [bounds?.example ?? DIMENSIONS[dimension].example] })
     .transform((text, ctx): number => {
       const read = parseAnyOf(text, [dimension]);
-      if (!read.ok) return refuseQuantity(ctx, read, bounds?.text);
+      if (!read.ok) return refuseQuantity(ctx, read, bounds);
       if (!isWithin(read.value, bounds)) return refuse(ctx, expected, { code: 'out-of-range' });
       return read.value;
     });
@@ -123,7 +130,7 @@ export function quantityOf(
         if (hint && parseAnyOf(text, [hint.on]).ok) {
           return refuse(ctx, hint.expected, { code: 'wrong-dimension', found: read.found, offset: read.column - 1 });
         }
-        return refuseQuantity(ctx, read, bounds?.text);
+        return refuseQuantity(ctx, read, bounds);
       }
       if (!isWithin(read.value, bounds)) return refuse(ctx, expected, { code: 'out-of-range' });
       return { value: read.value, dimension: read.dimension };

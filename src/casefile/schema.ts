@@ -216,6 +216,7 @@ function electronsSchema(): z.ZodType<ElectronsInput> {
         min: 0.1 * ELEMENTARY_CHARGE,
         max: 20 * ELEMENTARY_CHARGE,
         text: 'from 0.1 eV to 20 eV',
+        example: '2 eV',
       }).optional(),
       particles: pureNumber('a whole number', { min: 320, max: 1e7, text: 'from 320 to 1e7' }, 20000, true).optional(),
       seed: pureNumber('a whole number', { min: 0, max: 2 ** 53 - 1, text: 'from 0 to 2^53 - 1' }, 1, true).optional(),

@@ -20,10 +20,8 @@ export interface SeedElectrons {
   readonly field: ForceField;
   /** [eV]; electrons leave by the cosine law */
   readonly emissionEnergy: number;
-  /** how many electrons, and the number of the first: which one an electron is decides its random numbers, so that parts may be followed anywhere and
-   *  joined */
+  /** how many electrons; which one an electron is decides its random numbers */
   readonly electrons: number;
-  readonly first?: number;
   readonly seed: number;
   /** tells the random numbers of this gap from others of the same seed */
   readonly stream?: number;
@@ -50,7 +48,7 @@ const BLOCK = 16;
  *  @returns null when interrupted
  *  @throws Error for a field without walls or one that does not draw electrons to the anode everywhere */
 export function followAvalanches(request: SeedElectrons, interrupted: () => boolean = () => false, before?: Avalanches): Avalanches | null {
-  const { table, field, emissionEnergy, electrons: count, first = 0, seed, stream = 0, most } = request;
+  const { table, field, emissionEnergy, electrons: count, seed, stream = 0, most } = request;
   const { faces, force } = field;
   if (!Number.isFinite(faces[0]) || !Number.isFinite(faces[force.length])) throw new Error('a gap has two walls');
   if (!force.every((f) => f > 0)) throw new Error('an avalanche ends only where the field draws electrons to the anode everywhere');
@@ -64,7 +62,7 @@ export function followAvalanches(request: SeedElectrons, interrupted: () => bool
   for (let k = 0; k < count; k++) {
     if (k % BLOCK === 0 && interrupted()) return null;
     if (before !== undefined && sizes[k] <= before.most) continue;
-    random.restart(seed, [AVALANCHE_STREAM, stream, first + k]);
+    random.restart(seed, [AVALANCHE_STREAM, stream, k]);
     electrons.count = 0;
     const i = electrons.add(1);
     // the square of the cosine is uniform
@@ -81,21 +79,6 @@ export function followAvalanches(request: SeedElectrons, interrupted: () => bool
     if (electrons.count === 1 && tally.left[0] > returned) fellBack++;
   }
   return { sizes, most, fellBack, collisions: tally.events[0] + (before?.collisions ?? 0) };
-}
-
-/** Parts that were followed apart, in the order of their electrons. */
-export function joinAvalanches(parts: readonly Avalanches[]): Avalanches {
-  const { most } = parts[0];
-  if (parts.some((part) => part.most !== most)) throw new Error('parts were followed up to different sizes');
-  const sizes = new Int32Array(parts.reduce((sum, part) => sum + part.sizes.length, 0));
-  let [at, fellBack, collisions] = [0, 0, 0];
-  for (const part of parts) {
-    sizes.set(part.sizes, at);
-    at += part.sizes.length;
-    fellBack += part.fellBack;
-    collisions += part.collisions;
-  }
-  return { sizes, most, fellBack, collisions };
 }
 
 /** Distribution of ions made per electron emitted; errors are standard errors of independent electrons. */

@@ -1,3 +1,4 @@
+import { rootBetween } from '../numerics/roots.ts';
 import type { CollisionTable } from './collision-table.ts';
 import { expectedFlux, GAP_BATCHES, type GapYield, gapYieldOf, uniformGap } from './gap-yield.ts';
 import type { Measured } from './statistics.ts';
@@ -225,6 +226,25 @@ export function coarseThreshold(
   return { rise, fall: null };
 }
 
+/** Where a smooth feedback passes 1, near where few electrons found it [V]; null where it does not. */
+export function passes(feedback: (voltage: number) => number, passing: Passing | null): number | null {
+  if (passing === null) return null;
+  const sign = passing.rising ? 1 : -1;
+  const excess = (logVoltage: number): number => {
+    const q = feedback(Math.exp(logVoltage));
+    return (sign * (q - 1)) / (q + 1);
+  };
+  const guess = Math.log(passing.guess);
+  let [low, high] = [guess - NEAR, guess + NEAR];
+  // the few may have misled further than that
+  for (let k = 0; k < WIDENINGS && excess(low) > 0; k++) low -= NEAR;
+  for (let k = 0; k < WIDENINGS && excess(high) < 0; k++) high += NEAR;
+  return excess(low) > 0 || excess(high) < 0 ? null : Math.exp(rootBetween(excess, low, high));
+}
+
+/** how far around a guess a threshold is looked for, in ln V, and how often further */
+export const NEAR = 0.03;
+const WIDENINGS = 8;
 /** steps of the coarse search, and electrons at each */
 const COARSE = 1.2;
 const ROUGH = 64;

@@ -219,10 +219,3 @@ export function uniformGap(voltage: number, distance: number, cells: number): Fo
     force: new Float64Array(cells).fill(voltage / distance),
   };
 }
-
-/** Feedback q of a gap without space charge: every ion returns to the cathode and frees `emission` electrons there.
- *  The yield of emission counts every electron that is emitted, also one that falls back: it is larger than a net yield, as breakdown measurements with a
- *  local-field α give it, by one over the share that escapes. */
-export function particleFeedback({ ionsPerElectron: { value, error } }: GapYield, emission: number): Measured {
-  return { value: emission * value, error: emission * error };
-}

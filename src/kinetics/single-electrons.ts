@@ -1,3 +1,4 @@
+import { avalancheSizes } from './avalanches.ts';
 import type { NodeGap } from './gap-response.ts';
 import { uniformGap } from './gap-yield.ts';
 import { seedChanceOf } from './seed-chance.ts';
@@ -20,9 +21,5 @@ export function singleElectrons({ table, distance, emissionEnergy, seed }: NodeG
   const request = { table, field: uniformGap(voltage, distance, 1), emissionEnergy, electrons: ELECTRONS, seed };
   const found = seedChanceOf(request, emission);
   if (found === null) throw new Error('interrupted');
-  const silent = found.avalanches.sizes.reduce((count, n) => (n === 0 ? count + 1 : count), 0) / ELECTRONS;
-  return {
-    breakdown: found.chance.probability,
-    silent: { value: silent, error: Math.sqrt((silent * (1 - silent)) / ELECTRONS) },
-  };
+  return { breakdown: found.chance.probability, silent: avalancheSizes(found.avalanches, 0).shares[0] };
 }

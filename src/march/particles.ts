@@ -109,9 +109,8 @@ export class Particles {
   /** collisions for each electron of the last look */
   #cost = 0;
   #expected: Float64Array | null = null;
-  /** looks taken, and collisions followed in them */
+  /** looks taken */
   looks = 0;
-  collisions = 0;
 
   constructor(settings: ParticleSettings, fast: FastElectrons, grid: Grid, layout: Layout) {
     this.#settings = settings;
@@ -273,7 +272,6 @@ export class Particles {
     const found = gapYieldOf({ ...request, expected });
     if (found === null) throw new Error('interrupted');
     this.#expected = found.flux;
-    this.collisions += found.collisions;
     this.#cost = found.collisions / particles;
     return found;
   }

@@ -1,6 +1,6 @@
 import type { Case, KineticElectrons } from '../case.ts';
 import { curveOf } from '../gases/curves.ts';
-import { coarseThreshold, GapResponse, type Passing } from '../kinetics/gap-response.ts';
+import { coarseThreshold, GapResponse, NEAR, type Passing, passes } from '../kinetics/gap-response.ts';
 import { collisionsOf } from '../kinetics/of-case.ts';
 import { type SingleElectrons, singleElectrons } from '../kinetics/single-electrons.ts';
 import type { Measured } from '../kinetics/statistics.ts';
@@ -128,7 +128,8 @@ export class KineticGap {
   }
 
   get threshold(): Threshold {
-    this.#threshold ??= { breakdown: this.#crossing(this.#rise), upper: this.#crossing(this.#fall) };
+    const feedback = (voltage: number): number => this.feedback(voltage).value;
+    this.#threshold ??= { breakdown: passes(feedback, this.#rise), upper: passes(feedback, this.#fall) };
     return this.#threshold;
   }
 
@@ -139,22 +140,6 @@ export class KineticGap {
     const ratio = this.feedback(threshold * (1 + step)).value / this.feedback(threshold * (1 - step)).value;
     const slope = Math.log(ratio) / (2 * step * threshold);
     return Math.abs(error / value / slope);
-  }
-
-  /** Where the smooth feedback passes 1, near where few electrons found it. */
-  #crossing(passing: Passing | null): number | null {
-    if (passing === null) return null;
-    const sign = passing.rising ? 1 : -1;
-    const excess = (logVoltage: number): number => {
-      const q = this.feedback(Math.exp(logVoltage)).value;
-      return (sign * (q - 1)) / (q + 1);
-    };
-    const guess = Math.log(passing.guess);
-    let [low, high] = [guess - NEAR, guess + NEAR];
-    // the few may have misled further than that
-    for (let k = 0; k < WIDENINGS && excess(low) > 0; k++) low -= NEAR;
-    for (let k = 0; k < WIDENINGS && excess(high) < 0; k++) high += NEAR;
-    return excess(low) > 0 || excess(high) < 0 ? null : Math.exp(rootBetween(excess, low, high));
   }
 
   /** Voltages, by number, that the thresholds and the answer at one voltage [V] ask for and that have not been followed yet. */
@@ -175,10 +160,6 @@ const HIGHEST = 1e4 * TOWNSEND;
 const LEFT_BRANCH = 500 * TOWNSEND;
 /** around the threshold, where more electrons are followed */
 const AROUND = 1.3;
-/** how far around a guess a threshold is looked for, in ln V, and how often further */
-const NEAR = 0.03;
-const WIDENINGS = 8;
-
 /** Gaps already followed, by the electrons' settings: electrons of one take seconds. */
 const known = new WeakMap<KineticElectrons, { readonly gaps: Map<string, KineticGap>; readonly responses: Map<string, GapResponse> }>();
 

@@ -3,9 +3,9 @@ import { beforeAll, describe, expect, test } from 'vitest';
 import { argon } from '../../src/kinetics/argon.ts';
 import { type AvalancheSizes, avalancheSizes, type SeedElectrons } from '../../src/kinetics/avalanches.ts';
 import { collisionTable } from '../../src/kinetics/collision-table.ts';
-import { particleBreakdown } from '../../src/kinetics/gap-breakdown.ts';
 import { uniformGap } from '../../src/kinetics/gap-yield.ts';
 import { type SeedChance, seedChanceOf } from '../../src/kinetics/seed-chance.ts';
+import { thresholdOf } from './threshold.ts';
 
 const table = collisionTable(argon, { density: 3.294e22, temperature: 0 }, 'isotropic');
 const emission = 0.05;
@@ -19,7 +19,7 @@ function chanceAt(ratio: number, electrons: number, change: Partial<SeedElectron
 }
 
 beforeAll(() => {
-  const found = particleBreakdown({ table, distance: 0.01, emission, emissionEnergy: 2, particles: 12_800, seed: 1, from: 100, to: 1000 });
+  const found = thresholdOf({ table, distance: 0.01, emissionEnergy: 2, seed: 1 }, emission, 64_000, 100, 1000);
   if (found === null) throw new Error('no threshold');
   threshold = found.value;
 });

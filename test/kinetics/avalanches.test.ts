@@ -1,7 +1,7 @@
 /** Sizes of avalanches and the chance of one electron: against Furry's law where it is exact, closed forms of branching, and counting. */
 import { describe, expect, test } from 'vitest';
 import { argon } from '../../src/kinetics/argon.ts';
-import { type Avalanches, avalancheSizes, followAvalanches, joinAvalanches, type SeedElectrons } from '../../src/kinetics/avalanches.ts';
+import { type Avalanches, avalancheSizes, followAvalanches, type SeedElectrons } from '../../src/kinetics/avalanches.ts';
 import { collisionTable } from '../../src/kinetics/collision-table.ts';
 import type { CrossSectionSet } from '../../src/kinetics/cross-sections.ts';
 import { gapYieldOf, uniformGap } from '../../src/kinetics/gap-yield.ts';
@@ -149,10 +149,9 @@ describe('the chance of one electron', () => {
 });
 
 describe('electrons followed one by one', () => {
-  test('are the same in parts, in one piece, and when followed further', () => {
+  test('are the same however many there are, and when followed further', () => {
     const whole = follow({});
-    const parts = [follow({ electrons: 25 }), follow({ first: 25, electrons: 35 })];
-    expect(joinAvalanches(parts)).toEqual(whole);
+    expect(follow({ electrons: 25 }).sizes).toEqual(whole.sizes.slice(0, 25));
     const short = follow({ most: 20 });
     expect([...short.sizes]).toEqual(Array.from(whole.sizes, (n) => Math.min(n, 21)));
     expect(short.fellBack).toBe(whole.fellBack);
@@ -161,7 +160,6 @@ describe('electrons followed one by one', () => {
     expect([further?.sizes, further?.fellBack]).toEqual([whole.sizes, whole.fellBack]);
     expect(follow({ seed: 2 }).sizes).not.toEqual(whole.sizes);
     expect(follow({ stream: 1 }).sizes).not.toEqual(whole.sizes);
-    expect(() => joinAvalanches([whole, short])).toThrow(/different sizes/);
   });
 
   test('are counted once each', () => {

@@ -3,16 +3,8 @@ import { describe, expect, test } from 'vitest';
 import { argon } from '../../src/kinetics/argon.ts';
 import { type CollisionTable, collisionTable } from '../../src/kinetics/collision-table.ts';
 import { SPEED_OF_1_EV } from '../../src/kinetics/cross-sections.ts';
-import { particleBreakdown } from '../../src/kinetics/gap-breakdown.ts';
-import {
-  combineGap,
-  type GapElectrons,
-  type GapYield,
-  gapBatchOf,
-  gapYieldOf,
-  particleFeedback,
-  uniformGap,
-} from '../../src/kinetics/gap-yield.ts';
+import { combineGap, type GapElectrons, type GapYield, gapBatchOf, gapYieldOf, uniformGap } from '../../src/kinetics/gap-yield.ts';
+import { thresholdOf } from './threshold.ts';
 
 /** 1 Torr at 20 °C [1/m³] */
 const TORR = 3.294e22;
@@ -120,22 +112,21 @@ describe('electrons of a gap', () => {
 });
 
 describe('breakdown by particles', () => {
-  const gap = { table: oneTorr, distance: 0.01, emission: 0.05, emissionEnergy: 2, particles: 3200, seed: 1, from: 150, to: 2000 };
+  const gap = { table: oneTorr, distance: 0.01, emissionEnergy: 2, seed: 1 };
 
   test('is where every ion frees one electron that takes its place', () => {
-    const found = particleBreakdown(gap);
+    const found = thresholdOf(gap, 0.05, 16_000, 150, 2000);
     if (found === null) throw new Error('none found');
     expect(found.error).toBeLessThan(0.015 * found.value);
     // other random numbers
-    const q = particleFeedback(yieldOf({ field: uniformGap(found.value, 0.01, 40), particles: 3200, seed: 2 }), 0.05);
+    const { value, error } = yieldOf({ field: uniformGap(found.value, 0.01, 40), particles: 3200, seed: 2 }).ionsPerElectron;
     // 1 % in voltage is some 3 % in q here
-    expect(Math.abs(q.value - 1)).toBeLessThan(5 * Math.hypot(q.error, (4 * found.error) / found.value));
+    expect(Math.abs(0.05 * value - 1)).toBeLessThan(5 * Math.hypot(0.05 * error, (4 * found.error) / found.value));
   });
 
   test('is not found where it is not', () => {
-    expect(particleBreakdown({ ...gap, to: 160 })).toBeNull();
-    expect(particleBreakdown({ ...gap, from: 600, to: 1000 })).toBeNull();
+    expect(thresholdOf(gap, 0.05, 3200, 100, 160)).toBeNull();
     // too thin: no voltage makes 20 ions per electron
-    expect(particleBreakdown({ ...gap, distance: 0.001, from: 100, to: 2000 })).toBeNull();
+    expect(thresholdOf({ ...gap, distance: 0.001 }, 0.05, 3200, 100, 2000)).toBeNull();
   });
 });

@@ -1,28 +1,11 @@
 /** Short runs with electrons as particles: what is conserved, that the same seed gives the same run, what is recorded and warned of. */
 import { describe, expect, it } from 'vitest';
-import type { Case } from '../../src/case.ts';
-import { readCase } from '../../src/casefile/index.ts';
 import { prognosisCautions } from '../../src/onset/prognosis.ts';
 import { simulateNow } from '../../src/simulate.ts';
-
-function caseOf(overrides: readonly string[] = []): Case {
-  const text = `
-title: Thin argon
-gap: { geometry: planar, spacing: 5 mm, area: 4 cm^2 }
-gas: { name: argon, pressure: 1.2 Torr }
-electrodes: { left: { ion_yield: 0.1 } }
-seed: { cathode_current: 10 pA }
-supply: { voltage: { step: 180 V }, series_resistance: 100 kohm, parallel_capacitance: 20 pF }
-electrons: { closure: kinetic, particles: 640 }
-observe: { until: 20 us }
-`;
-  const read = readCase(text, 'thin.yaml', () => ({ ok: false, reason: 'no tables' }), overrides);
-  if (!read.ok) throw new Error(JSON.stringify(read.problems));
-  return read.case;
-}
+import { thinCase } from './thin-case.ts';
 
 describe('a run with particles', () => {
-  const outcome = simulateNow(caseOf());
+  const outcome = simulateNow(thinCase());
 
   it('conserves charge and energy to rounding', () => {
     expect(outcome.numerics.charge_defect).toBeLessThan(1e-12);
@@ -32,8 +15,8 @@ describe('a run with particles', () => {
 
   it('is the same for the same seed, and another for another', () => {
     const wall = ({ numerics, ...rest }: ReturnType<typeof simulateNow>): unknown => ({ ...rest, numerics: { ...numerics, wall_s: 0 } });
-    expect(wall(simulateNow(caseOf()))).toEqual(wall(outcome));
-    const other = simulateNow(caseOf(['electrons.seed=2']));
+    expect(wall(simulateNow(thinCase()))).toEqual(wall(outcome));
+    const other = simulateNow(thinCase(['electrons.seed=2']));
     expect(other.kinetics?.breakdown_voltage_V).not.toBe(outcome.kinetics?.breakdown_voltage_V);
   });
 
@@ -47,7 +30,7 @@ describe('a run with particles', () => {
   it('records the ionisation that particles make, and warns of energies beyond the cross-sections', () => {
     let ions = 0;
     let carried = 0;
-    simulateNow(caseOf(), {
+    simulateNow(thinCase(), {
       snapshot: (s) => {
         ions = s.ionisationRate.reduce((sum, rate) => sum + rate, 0);
         carried = s.electronFlux[s.electronFlux.length - 1];
@@ -56,7 +39,7 @@ describe('a run with particles', () => {
     expect(ions).toBeGreaterThan(0);
     expect(carried).toBeGreaterThan(0);
     const codes = (voltage: string): string[] =>
-      prognosisCautions(caseOf([`supply.voltage.step=${voltage}`, 'gas.pressure=0.02 Torr']), [])
+      prognosisCautions(thinCase([`supply.voltage.step=${voltage}`, 'gas.pressure=0.02 Torr']), [])
         .filter(({ code }) => code === 'outside-range')
         .map(({ text }) => text);
     expect(codes('900 V')).toEqual([]);

@@ -1,32 +1,15 @@
 /** When electrons are looked at again as particles during a run. */
 import { describe, expect, it } from 'vitest';
-import type { Case } from '../../src/case.ts';
-import { readCase } from '../../src/casefile/index.ts';
 import { makeGrid } from '../../src/gap/grid.ts';
 import { makeLayout } from '../../src/gap/layout.ts';
 import { collisionsOf } from '../../src/kinetics/of-case.ts';
 import { FastElectrons } from '../../src/laws/fast-electrons.ts';
 import { type ParticleSettings, Particles } from '../../src/march/particles.ts';
-
-function caseOf(overrides: readonly string[] = []): Case {
-  const text = `
-title: Thin argon
-gap: { geometry: planar, spacing: 5 mm, area: 4 cm^2 }
-gas: { name: argon, pressure: 1.2 Torr }
-electrodes: { left: { ion_yield: 0.1 } }
-seed: { cathode_current: 10 pA }
-supply: { voltage: { step: 180 V }, series_resistance: 100 kohm, parallel_capacitance: 20 pF }
-electrons: { closure: kinetic, particles: 640 }
-observe: { until: 20 us }
-`;
-  const read = readCase(text, 'thin.yaml', () => ({ ok: false, reason: 'no tables' }), overrides);
-  if (!read.ok) throw new Error(JSON.stringify(read.problems));
-  return read.case;
-}
+import { thinCase } from './thin-case.ts';
 
 /** A gap of 40 cells with particles, and its state with a field of −(V/d)(1 + tilt (1 − 2x/d)), which is V whatever the tilt. */
 function gapOf(particles: number) {
-  const settings = caseOf();
+  const settings = thinCase();
   const grid = makeGrid(settings.gap, 40, { left: true, right: false, length: 1e-3, ratio: 3 });
   const layout = makeLayout(grid.cells, 2);
   const fast = new FastElectrons(grid);

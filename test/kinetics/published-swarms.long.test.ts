@@ -7,7 +7,8 @@ import type { CrossSectionSet } from '../../src/kinetics/cross-sections.ts';
 import { neon } from '../../src/kinetics/neon.ts';
 import { nitrogen } from '../../src/kinetics/nitrogen.ts';
 import type { Measured } from '../../src/kinetics/statistics.ts';
-import { batchOf, combine, pilotOf, type SwarmPoint, swarmGas } from '../../src/kinetics/swarm.ts';
+import type { SwarmPoint } from '../../src/kinetics/swarm.ts';
+import { swarmPoint } from '../help/swarm-point.ts';
 
 /** points that several tests look at are computed once */
 const points = new Map<string, SwarmPoint>();
@@ -16,12 +17,7 @@ function pointOf(set: CrossSectionSet, td: number, batches: number, flights = 1e
   const key = `${set.name} ${td} ${batches} ${flights}`;
   const known = points.get(key);
   if (known !== undefined) return known;
-  const gas = swarmGas(set, 293.15, 'isotropic');
-  const field = td * 1e-21;
-  const plan = pilotOf(gas, field, 1, 0, flights);
-  if (plan.kind !== 'plan') throw new Error(plan.kind);
-  const sums = Array.from({ length: batches }, (_, batch) => batchOf(gas, field, plan, 1, 0, batch)).filter((batch) => batch !== null);
-  const point = combine(gas, field, plan, sums);
+  const point = swarmPoint(set, 293.15, td, batches, flights);
   points.set(key, point);
   return point;
 }

@@ -1,7 +1,8 @@
 /** Published numbers of electrons in a uniform field against the particle engine. */
 import type { CrossSectionSet } from '../../src/kinetics/cross-sections.ts';
 import type { Measured } from '../../src/kinetics/statistics.ts';
-import { batchOf, combine, pilotOf, type SwarmPoint, swarmGas } from '../../src/kinetics/swarm.ts';
+import type { SwarmPoint } from '../../src/kinetics/swarm.ts';
+import { swarmPoint } from '../help/swarm-point.ts';
 import { type Check, type PublishedStatus, within } from './check.ts';
 
 export interface SwarmRow {
@@ -28,12 +29,7 @@ export function swarmRows(set: CrossSectionSet, batches: number, flights: number
   const pointAt = (td: number): SwarmPoint => {
     const known = points.get(td);
     if (known !== undefined) return known;
-    const gas = swarmGas(set, 0, 'isotropic');
-    const field = td * 1e-21;
-    const plan = pilotOf(gas, field, 1, 0, flights);
-    if (plan.kind !== 'plan') throw new Error(plan.kind);
-    const sums = Array.from({ length: batches }, (_, batch) => batchOf(gas, field, plan, 1, 0, batch)).filter((batch) => batch !== null);
-    const point = combine(gas, field, plan, sums);
+    const point = swarmPoint(set, 0, td, batches, flights);
     points.set(td, point);
     return point;
   };
